@@ -1,0 +1,93 @@
+#pragma once
+#include <map>
+#include <optional>
+#include <stdexcept>
+#include <string>
+#include <string_view>
+#include <vector>
+
+#include "dutygauge/findings.hpp"
+#include "dutygauge/rating.hpp"
+#include "dutygauge/service.hpp"
+
+/// Case files: YAML to a Case of the structs below this level. No physics.
+namespace dutygauge::case_io {
+
+/// Where in a file something stands; both from 1, columns in characters. 0: nowhere.
+struct Position {
+  int line = 0, column = 0;
+};
+
+/// One mistake of a file.
+struct Mistake {
+  Position at;
+  std::string key;  ///< full dotted key, or empty
+  std::string what, expected, remedy;
+};
+
+/// A file that cannot be used, with everything that is wrong with it.
+class InputError : public std::runtime_error {
+ public:
+  InputError(std::string file, std::vector<Mistake> mistakes);
+  /// One line a mistake: "file:line:column: error: key: what; expected; what to do",
+  /// in file order, the first 20 and then how many more.
+  const std::vector<std::string>& lines() const { return lines_; }
+  const std::vector<Mistake>& mistakes() const { return mistakes_; }
+
+ private:
+  std::vector<Mistake> mistakes_;
+  std::vector<std::string> lines_;
+};
+
+/// One leaf of a case file: the text as written.
+struct Leaf {
+  std::string text;
+  bool quoted = false;
+  Position key_at, value_at;
+};
+
+/// A case file as text by dotted key ("exchanger.tubes.count"; list items by
+/// index: "fluid.table.rows.0.density"). Vary a case by changing leaves here.
+struct Document {
+  std::string file;  ///< name used in messages; "-" is standard input
+  std::map<std::string, Leaf> leaves;
+  std::map<std::string, Position> blocks;  ///< maps and lists, by dotted key
+  std::string sha256;                      ///< of the bytes read, hexadecimal
+};
+
+/// A case ready to be rated.
+struct Case {
+  std::string file, title, tag, sha256;
+  units::System display = units::System::metric;
+  rating::Problem problem;
+  service::Service service;
+  Inputs inputs;        ///< as typed, and assumed, in SI
+  Assumptions assumed;  ///< made while reading and deriving
+  Findings findings;    ///< the same
+};
+
+/// Reads YAML text strictly: one document, no anchors, aliases, tags, merges,
+/// doubled keys; bounded size, depth and count. Throws InputError.
+Document read_document(std::string_view text, std::string file);
+
+/// Reads a file (regular file or pipe, at most 4 MB), "-" for standard input.
+/// Throws InputError; the text says what the system said.
+Document read_file(const std::string& path);
+
+/// Checks every leaf against the field table and builds the case.
+/// Throws InputError with all mistakes at once.
+Case build(const Document& document);
+
+/// The JSON Schema (draft-07) of a case, from the field table.
+std::string schema();
+
+/// A commented starter case that rates as it stands, from the field table.
+std::string starter_case();
+
+/// What a case key means: one entry of the field table, for `explain` and help.
+struct FieldHelp {
+  std::string key, kind, expected, help;
+};
+std::optional<FieldHelp> explain(std::string_view key);
+
+}  // namespace dutygauge::case_io

@@ -1,0 +1,112 @@
+#pragma once
+#include <optional>
+#include <string>
+#include <vector>
+
+#include "dutygauge/findings.hpp"
+
+/// The exchanger as drawn, and what follows from it. Knows no fluid and no flow.
+namespace dutygauge::geometry {
+
+enum class FlowDirection { counter, parallel };
+
+/// The exchanger as the case gives it; one shell where not said otherwise. SI.
+struct Description {
+  char front_head = 'B', shell_type = 'E', rear_head = 'M';  ///< TEMA letters
+  bool vertical = false;
+  int shells_in_series = 1, shells_in_parallel = 1;
+  std::optional<FlowDirection> flow_direction;  ///< one-pass units
+
+  double shell_inside_diameter = 0;                         ///< [m]
+  std::optional<double> shell_nozzle_in, shell_nozzle_out;  ///< bores [m]
+  bool impingement_plate = false;
+
+  int tube_count = 0;                 ///< holes in one tubesheet
+  int plugged = 0;                    ///< holes plugged
+  std::vector<int> plugged_per_pass;  ///< where given by pass (sums to `plugged`)
+  int tube_passes = 1;
+  double tube_outside_diameter = 0, tube_wall = 0, tube_length = 0;  ///< [m]; straight, outer faces
+  std::optional<double> tubesheet_thickness;                         ///< [m]
+  double tube_pitch = 0;                                             ///< [m]
+  int layout = 30;                                                   ///< [deg]
+  std::string tube_material;                              ///< a name of the material table, or empty
+  std::optional<double> tube_conductivity;                ///< [W/m.K]
+  std::optional<double> tube_roughness;                   ///< [m]
+  std::optional<double> tube_nozzle_in, tube_nozzle_out;  ///< bores [m]
+
+  double baffle_cut = 0.25;  ///< window height / shell inside diameter [-]
+  std::optional<double> baffle_spacing, inlet_spacing, outlet_spacing;  ///< [m]
+  std::optional<int> baffle_count;                                      ///< along the whole shell
+  std::optional<double> baffle_thickness;                               ///< [m]
+
+  std::optional<double> tube_to_baffle, shell_to_baffle, bundle_to_shell;  ///< diametral [m]
+  std::optional<int> sealing_strip_pairs;
+  std::optional<int> pass_lanes_along_flow;
+  std::optional<double> pass_lane_width;  ///< [m]
+};
+
+/// Conductivity of the tube metal, linear between rows [K, W/m.K]; held at the ends.
+struct Conductivity {
+  std::vector<double> temperature, value;
+  double at(double metal_temperature) const;
+};
+
+/// What a film or pressure drop needs to know of the tube side of one shell.
+struct TubeSide {
+  double inside_diameter = 0;   ///< [m]
+  double outside_diameter = 0;  ///< [m]
+  double flow_area = 0;         ///< of one pass, open tubes only [m2]
+  double heated_length = 0;     ///< between channels: one pass, U-tubes both legs [m]
+  double friction_length = 0;   ///< of all passes, full length plus bends [m]
+  double roughness = 0;         ///< [m]
+  int passes = 1;
+  bool u_tubes = false;
+  double nozzle_in_area = 0, nozzle_out_area = 0;  ///< [m2]; 0: not given, no drop counted
+};
+
+/// What a film or pressure drop needs to know of the shell side of one shell.
+struct ShellSide {
+  char shell_type = 'E';
+  double inside_diameter = 0;                                           ///< D_s [m]
+  double tube_outside_diameter = 0;                                     ///< D_t [m]
+  double pitch = 0;                                                     ///< [m]
+  int layout = 30;                                                      ///< [deg]
+  int tube_count = 0;                                                   ///< holes, plugged ones too
+  double baffle_cut = 0;                                                ///< fraction of D_s
+  double central_spacing = 0, inlet_spacing = 0, outlet_spacing = 0;    ///< outlet with D_s/2 for U-tubes [m]
+  int baffles = 0;                                                      ///< N_b of one run
+  double tube_to_baffle = 0, shell_to_baffle = 0, bundle_to_shell = 0;  ///< diametral [m]
+  int sealing_strip_pairs = 0;
+  double pass_lane_half_width = 0;  ///< L_pl, of all lanes along the flow together [m]
+  double effective_length = 0;      ///< [m] tube length exposed to the shell
+  bool impingement_plate = false;
+  double nozzle_in_area = 0, nozzle_out_area = 0;  ///< [m2]; 0: not given, no drop counted
+};
+
+/// The exchanger ready to be rated.
+struct Exchanger {
+  Description as_described;
+  TubeSide tube_side;
+  ShellSide shell_side;
+  Conductivity wall_conductivity;
+  int shells_in_series = 1, shells_in_parallel = 1;
+  FlowDirection flow_direction = FlowDirection::counter;
+  double effective_length = 0;     ///< L_eff [m]
+  double tubesheet_thickness = 0;  ///< [m]
+  int tubes_open = 0;              ///< holes open to flow, one shell
+  double area_per_shell = 0;       ///< effective outside area [m2]
+  double area = 0;                 ///< of all shells [m2]
+};
+
+/// What cannot be built or rated, by key of the case file. Empty: `derive` may be called.
+Objections objections(const Description& description);
+
+/// Everything that follows from the drawing, by rating-procedure section 1; what
+/// was left out is filled by trade practice and listed as assumed.
+/// Needs: objections(description) is empty; throws std::invalid_argument otherwise.
+Checked<Exchanger> derive(const Description& description);
+
+/// Names of the tube materials known, for messages and `schema`.
+std::vector<std::string> tube_materials();
+
+}  // namespace dutygauge::geometry

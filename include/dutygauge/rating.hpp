@@ -1,0 +1,96 @@
+#pragma once
+#include <optional>
+#include <string>
+
+#include "dutygauge/arrangement.hpp"
+#include "dutygauge/findings.hpp"
+#include "dutygauge/fluids.hpp"
+#include "dutygauge/geometry.hpp"
+#include "dutygauge/overall.hpp"
+#include "dutygauge/shellside.hpp"
+#include "dutygauge/tubeside.hpp"
+
+/// The solvers: an exchanger and two streams to outlets, duty, films, drops.
+namespace dutygauge::rating {
+
+/// One stream as it enters the whole unit.
+struct Stream {
+  std::string name;
+  fluids::Fluid fluid;
+  double mass_flow = 0;           ///< of the whole unit [kg/s]
+  double inlet_temperature = 0;   ///< [K]
+  double inlet_pressure = 0;      ///< [Pa] absolute
+  double fouling_resistance = 0;  ///< on the surface it sits on [m2.K/W]
+};
+
+struct Methods {
+  shellside::Method shell_side = shellside::Method::bell_delaware;
+};
+
+/// What is to be rated.
+struct Problem {
+  geometry::Exchanger exchanger;
+  Stream shell_side, tube_side;
+  Methods methods;
+};
+
+/// Films, walls and U with both streams at given bulk temperatures.
+struct Local {
+  fluids::State tube_bulk, shell_bulk, tube_wall, shell_wall;
+  tubeside::Film tube_film;
+  shellside::Film shell_film;
+  overall::Resistances resistances;
+  overall::WallTemperatures walls;
+  double u_dirty = 0, u_clean = 0;  ///< [W/m2.K]
+  bool converged = false;
+};
+
+/// The outlet state of the unit, by mean properties.
+struct Outcome {
+  double duty = 0;                                             ///< [W]
+  double shell_outlet = 0, tube_outlet = 0;                    ///< [K]
+  double shell_mean = 0, tube_mean = 0;                        ///< bulk means [K]
+  double shell_capacity_rate = 0, tube_capacity_rate = 0;      ///< mean, whole streams [W/K]
+  double ntu_tube = 0, r_tube = 0, p_tube = 0;                 ///< referred to the tube side
+  double effectiveness = 0, ntu = 0, capacity_ratio = 0;       ///< on the smaller capacity rate
+  double log_mean = 0, f_correction = 0, mean_difference = 0;  ///< [K], [-], [K]
+  double duty_ntu = 0, duty_lmtd = 0;                          ///< the two routes at the solution [W]
+  double balance_error = 0;                                    ///< |Q_hot - Q_cold|/Q from enthalpies
+  Local local;                                                 ///< at the bulk means
+  tubeside::PressureDrop tube_drop;                            ///< one bank, all its shells in series
+  shellside::PressureDrop shell_drop;                          ///< the same
+};
+
+/// A rating, or why there is none.
+struct Rating {
+  std::optional<Outcome> outcome;
+  std::string no_result;    ///< why not, a sentence; empty with an outcome
+  double largest_duty = 0;  ///< what an endless surface in counterflow would do [W]
+  Findings findings;
+};
+
+/// Rates by mean properties (rating-procedure sections 2 to 5).
+Rating rate_mean(const Problem& problem);
+
+/// The surface that a duty needs, at the state of that duty (rating-procedure 6.3, 6.4).
+struct Needed {
+  double mean_difference = 0;  ///< F x LMTD at the duty [K]
+  double surface_margin = 0;   ///< installed / needed - 1
+  double fouling_spare = 0;    ///< further resistance it can carry, outside area [m2.K/W]
+};
+
+/// Empty when no surface is enough; `why` then says what stands in the way.
+struct Demand {
+  std::optional<Needed> needed;
+  std::string why;
+};
+Demand needed_for(const Problem& problem, double duty);
+
+/// The duty [W] that brings a side to an outlet temperature [K] (sign: positive
+/// in the direction of the exchange; negative when the outlet lies the other way).
+double duty_to_reach(const Stream& stream, double outlet_temperature, bool hot);
+
+/// The arrangement a problem is rated with.
+arrangement::Arrangement arrangement_of(const geometry::Exchanger& exchanger);
+
+}  // namespace dutygauge::rating
