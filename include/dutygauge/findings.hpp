@@ -18,7 +18,8 @@ enum class Ground { arithmetic, geometry, standard, method, judgement };
 struct Finding {
   std::string id;  ///< "module.what": stable; tests and JSON rely on it
   Severity severity = Severity::note;
-  std::string text;  ///< value, limit, unit, consequence, what to do
+  std::string text;  ///< what, why it matters, what to do; "{value}" and "{limit}" stand for the two
+                     ///< numbers below, which the reports show in the reader's units
   Ground ground = Ground::method;
   double value = 0, limit = 0;            ///< SI, temperatures in K
   units::Kind kind = units::Kind::ratio;  ///< of value and limit

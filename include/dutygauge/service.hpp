@@ -22,6 +22,7 @@ struct Demand {
 struct Service {
   std::vector<Demand> demands;
   std::optional<double> shell_side_allowable_drop, tube_side_allowable_drop;  ///< [Pa]
+  units::System words = units::System::metric;  ///< units of the verdict's sentence
 };
 
 /// Empty members: not defined for this service (rating-procedure section 6).
