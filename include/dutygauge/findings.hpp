@@ -23,7 +23,7 @@ struct Finding {
   Ground ground = Ground::method;
   double value = 0, limit = 0;            ///< SI, temperatures in K
   units::Kind kind = units::Kind::ratio;  ///< of value and limit
-  std::string source;                     ///< key of an entry in sources.hpp, or empty
+  std::string source = {};                ///< key of an entry in sources.hpp, or empty
 };
 using Findings = std::vector<Finding>;
 
@@ -32,10 +32,10 @@ struct Assumption {
   std::string key;   ///< full dotted key of the case file
   double value = 0;  ///< SI; unused where `word` is set
   units::Kind kind = units::Kind::ratio;
-  std::string word;                 ///< for values that are words ("liquid")
-  std::string why;                  ///< where the value comes from
-  std::optional<double> low, high;  ///< plausible span, SI
-  std::string look_in;              ///< the document that would settle it
+  std::string word = {};                      ///< for values that are words ("liquid")
+  std::string why;                            ///< where the value comes from
+  std::optional<double> low = {}, high = {};  ///< plausible span, SI
+  std::string look_in = {};                   ///< the document that would settle it
 };
 using Assumptions = std::vector<Assumption>;
 

@@ -69,26 +69,37 @@ struct Rating {
   Findings findings;
 };
 
-/// Rates by mean properties (rating-procedure sections 2 to 5).
+/// Rates by mean properties: one trial duty fixes the outlets, films and U are
+/// taken at the bulk means, and the arrangement closes the balance in one bracketed
+/// root. No outcome where a stream would leave the range of its fluid.
 Rating rate_mean(const Problem& problem);
 
-/// The surface that a duty needs, at the state of that duty (rating-procedure 6.3, 6.4).
+/// What a duty asks of the surface: outlets, films and U are those at that duty.
 struct Needed {
-  double mean_difference = 0;  ///< F x LMTD at the duty [K]
-  double surface_margin = 0;   ///< installed / needed - 1
-  double fouling_spare = 0;    ///< further resistance it can carry, outside area [m2.K/W]
+  double u_required = 0;      ///< duty / (installed area x F x LMTD at the duty) [W/m2.K]
+  double surface_margin = 0;  ///< installed / needed - 1
+  double fouling_spare = 0;   ///< further resistance it can carry, outside area [m2.K/W]
 };
 
-/// Empty when no surface is enough; `why` then says what stands in the way.
-struct Demand {
-  std::optional<Needed> needed;
-  std::string why;
-};
-Demand needed_for(const Problem& problem, double duty);
+/// Empty when no surface of this arrangement is enough; a finding then says what
+/// stands in the way and what would change it. Needs: duty > 0.
+Checked<std::optional<Needed>> needed_for(const Problem& problem, double duty);
 
-/// The duty [W] that brings a side to an outlet temperature [K] (sign: positive
-/// in the direction of the exchange; negative when the outlet lies the other way).
-double duty_to_reach(const Stream& stream, double outlet_temperature, bool hot);
+/// The largest duty [W] the two streams allow: endless surface in counterflow, or the
+/// end of a fluid's range.
+struct DutyLimit {
+  double duty = 0;
+  bool tube_side_governs = false;  ///< the side whose range of temperature is used up first
+  bool fluid_ends = false;         ///< by its fluid's range, not by the other inlet
+};
+DutyLimit duty_limit(const Problem& problem);
+
+/// The duty [W] that brings a stream to an outlet temperature [K] inside its usable
+/// range; negative when that means exchanging heat the other way round.
+double duty_to_reach(const Stream& stream, double outlet_temperature, bool is_hot);
+
+/// Whether the shell side is the hot one.
+bool shell_side_is_hot(const Problem& problem);
 
 /// The arrangement a problem is rated with.
 arrangement::Arrangement arrangement_of(const geometry::Exchanger& exchanger);

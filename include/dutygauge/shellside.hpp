@@ -45,6 +45,9 @@ struct Film {
 struct PressureDrop {
   double crossflow = 0, window = 0, ends = 0, nozzles = 0;
   double total() const { return crossflow + window + ends + nozzles; }
+  PressureDrop of_shells(int count) const {
+    return {crossflow * count, window * count, ends * count, nozzles * count};
+  }
 };
 
 /// Prepares a shell for a method. Needs: geometry::objections was empty.

@@ -23,6 +23,7 @@ struct Film {
 struct PressureDrop {
   double friction = 0, turns = 0, nozzles = 0;
   double total() const { return friction + turns + nozzles; }
+  PressureDrop of_shells(int count) const { return {friction * count, turns * count, nozzles * count}; }
 };
 
 /// Mean Nusselt number [-] without wall correction: laminar to turbulent, continuous in Re.

@@ -1,0 +1,42 @@
+#pragma once
+#include "dutygauge/rating.hpp"
+
+/// Internal to rating: a problem with everything prepared that no trial changes.
+namespace dutygauge::rating {
+
+struct Unit {
+  const Problem* problem = nullptr;
+  shellside::Bundle bundle;
+  overall::Tube tube{};
+  arrangement::Arrangement arrangement;
+  double tube_flow = 0, shell_flow = 0;                            ///< of one bank [kg/s]
+  fluids::TemperatureRange tube_wall_range{}, shell_wall_range{};  ///< where wall properties are taken
+  double direction = 1;                                            ///< +1 when the shell side is hot, else -1
+};
+
+Unit prepare(const Problem& problem);
+
+/// Bulk temperatures [K] of the two streams at one place.
+struct Bulk {
+  double tube, shell;
+};
+
+/// What drives the flux through the wall in `local`.
+struct FluxRule {
+  std::optional<double> fixed_u;  ///< flux = fixed_u (T_s - T_t); empty: the U found, fouled
+};
+
+/// Films, walls and U at one place, iterated until U and both walls stand still.
+Local local(const Unit& unit, const Bulk& bulk, const FluxRule& rule);
+
+/// One trial duty followed through the unit.
+struct Trial {
+  double tube_outlet = 0, shell_outlet = 0;
+  Bulk means{};
+  double tube_capacity_rate = 0, shell_capacity_rate = 0;
+  Local local;
+  double ntu = 0, r = 0;  ///< installed, referred to the tube side
+};
+Trial follow(const Unit& unit, double duty, const FluxRule& rule);
+
+}  // namespace dutygauge::rating
