@@ -38,6 +38,9 @@ std::optional<double> lmtd_correction(const Arrangement& arrangement, double cap
 /// Log-mean [K] of the terminal differences of counterflow; 0 if either is <= 0.
 double log_mean(double difference_1, double difference_2);
 
+/// Whether the functions above answer for it; they throw std::invalid_argument where not.
+bool is_built(const Arrangement& arrangement);
+
 /// Whether this arrangement is built; if not, the objection says what is.
 Objections objections(const Arrangement& arrangement);
 
