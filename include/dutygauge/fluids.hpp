@@ -50,7 +50,7 @@ struct TableModel {
   std::vector<double> density_slope, heat_capacity_slope, conductivity_slope;  ///< d/dT
   std::vector<double> log_viscosity_slope;                                     ///< d/d(1/T)
   std::vector<double> enthalpy;                                                ///< [J/kg] at the rows
-  double reach_beyond = 0;  ///< how far past its ends a result is still given [K]
+  TemperatureRange usable{};  ///< how far the end slopes are followed [K]
 };
 
 /// Water by IAPWS-IF97, R12-08 (viscosity), R15-11 (conductivity), in one phase.
@@ -85,13 +85,21 @@ TemperatureRange usable_temperatures(const Fluid& fluid, double pressure);
 /// ("it boils at 158.8 degC", "the table ends at 90 degC").
 std::string why_it_ends(const Fluid& fluid, double pressure, bool at_upper_end);
 
-/// Findings for a bulk temperature used by a result. `where` names it ("shell side, outlet").
+/// Findings for a bulk temperature used by a result: outside the range, close to a change of
+/// phase. `where` names it ("shell side, outlet"). Beyond the usable range: a `must`.
 Findings check_bulk(const Fluid& fluid, double temperature, double pressure, std::string_view where);
 
 /// Findings for a wall temperature (properties were taken at the end of the range).
 Findings check_wall(const Fluid& fluid, double temperature, double pressure, std::string_view where);
 
-// --- making fluids. Mistakes in the data come back as objections with keys relative to `fluid`.
+/// Findings for the two ends of a stream together: constant properties over a wide span.
+struct Span {
+  double inlet, outlet;  ///< [K]
+};
+Findings check_span(const Fluid& fluid, Span temperatures, std::string_view where);
+
+// --- making fluids. Mistakes in the data come back as objections with keys relative to `fluid`
+// ("table.rows.2.viscosity", rows counted from 1; the empty key is `fluid` itself).
 
 struct Made {
   Fluid fluid;
