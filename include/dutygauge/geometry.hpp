@@ -80,8 +80,51 @@ struct ShellSide {
   double pass_lane_half_width = 0;  ///< L_pl, of all lanes along the flow together [m]
   double effective_length = 0;      ///< [m] tube length exposed to the shell
   bool impingement_plate = false;
+  bool tubes_in_window = true;                     ///< false: drawn without tubes in the windows
   double nozzle_in_area = 0, nozzle_out_area = 0;  ///< [m2]; 0: not given, no drop counted
+
+  double tube_centre_circle() const {  ///< D_ctl, through the outermost tube centres [m]
+    return inside_diameter - bundle_to_shell - tube_outside_diameter;
+  }
 };
+
+/// How the tube rows lie to the crossflow, rows counted singly.
+///
+///     layout   row distance       gap divisor
+///     30       sqrt(3)/2 pitch    pitch
+///     60       pitch/2            sqrt(3)/2 pitch
+///     45       pitch/sqrt(2)      pitch/sqrt(2)
+///     90       pitch              pitch
+///
+/// The smallest gap across the flow lies on the diagonal while pitch/D_t < 1.71 (45)
+/// and < 3.7 (60); the divisors hold below that.
+/// Source: Taborek, HEDH 3.3 (1983) for 30, 45, 90; 60 is plain geometry.
+struct Rows {
+  double distance;     ///< along the flow [m]
+  double gap_divisor;  ///< in the crossflow area [m]
+};
+Rows rows(const ShellSide& shell);
+
+/// What one segmental baffle leaves open and what the flow meets there.
+///
+///     F_w = (theta_ctl - sin theta_ctl)/(2 pi),  theta_ctl = 2 acos((D_s/D_ctl)(1 - 2c))
+///     N_tcc = (D_s/L_pp)(1 - 2c)
+///     N_tcw = (0.8/L_pp)[c D_s - (D_s - D_ctl)/2], not below 0
+///     S_w = (D_s^2/8)(theta_ds - sin theta_ds) - N_t F_w pi D_t^2/4,  theta_ds = 2 acos(1 - 2c)
+///     D_w = 4 S_w/(pi D_t N_t F_w + D_s theta_ds/2)
+///
+/// Counts are not rounded. Windows without tubes (drawn so, or the cut does not
+/// reach the bundle): F_w = N_tcw = 0.
+/// Source: Taborek, HEDH 3.3 (1983).
+struct Window {
+  double angle;               ///< theta_ds, of the shell cut off by the baffle edge [rad]
+  double tube_fraction;       ///< F_w [-]
+  double rows_between_tips;   ///< N_tcc [-]
+  double rows;                ///< N_tcw [-]
+  double area;                ///< S_w [m2]
+  double hydraulic_diameter;  ///< D_w [m]
+};
+Window window(const ShellSide& shell);
 
 /// The exchanger ready to be rated.
 struct Exchanger {

@@ -1,0 +1,191 @@
+#include <fmt/core.h>
+
+#include <algorithm>
+#include <cmath>
+#include <numbers>
+#include <stdexcept>
+
+#include "parts.hpp"
+
+namespace dutygauge::geometry {
+namespace {
+
+using std::numbers::pi;
+
+double circle(double diameter) {
+  return 0.25 * pi * diameter * diameter;
+}
+
+void set_wall(const Description& d, Exchanger& exchanger) {
+  if (d.tube_conductivity) {
+    exchanger.wall_conductivity = {.temperature = {293.15}, .value = {*d.tube_conductivity}};
+    return;
+  }
+  for (const ConductivityPoint& point : find_material(d.tube_material)->conductivity) {
+    exchanger.wall_conductivity.temperature.push_back(point.celsius + 273.15);
+    exchanger.wall_conductivity.value.push_back(point.value);
+  }
+}
+
+void set_roughness(const Description& d, TubeSide& tubes, Assumptions& assumed) {
+  const Material* material = find_material(d.tube_material);
+  const Span usual = material ? material->roughness : unnamed_roughness();
+  tubes.roughness = d.tube_roughness.value_or(usual.value);
+  if (d.tube_roughness) return;
+  const std::string what =
+      material ? std::string(material->name) : "a tube of unnamed material, as drawn steel";
+  assumed.push_back({.key = "exchanger.tubes.roughness",
+                     .value = usual.value,
+                     .kind = units::Kind::length,
+                     .why = "usual for " + what,
+                     .low = usual.low,
+                     .high = usual.high,
+                     .look_in = "tube specification"});
+}
+
+/// The bore's area, or 0 with a word that its drop is left out.
+double nozzle_area(const std::optional<double>& bore, const char* key, Assumptions& assumed) {
+  if (bore) return circle(*bore);
+  assumed.push_back({.key = key,
+                     .kind = units::Kind::length,
+                     .word = "not counted",
+                     .why = "no bore given: the pressure drop of this nozzle is left out",
+                     .look_in = "nozzle list"});
+  return 0.0;
+}
+
+/// Needs the shell side, for the bends.
+TubeSide tube_side(const Description& d, const Exchanger& exchanger, Assumptions& assumed) {
+  TubeSide tubes;
+  tubes.inside_diameter = d.tube_outside_diameter - 2.0 * d.tube_wall;
+  tubes.outside_diameter = d.tube_outside_diameter;
+  tubes.passes = d.tube_passes;
+  tubes.u_tubes = has_u_tubes(d);
+  tubes.flow_area = circle(tubes.inside_diameter) * exchanger.tubes_open / d.tube_passes;
+  tubes.heated_length = exchanger.effective_length * (tubes.u_tubes ? 2.0 : 1.0);
+  tubes.friction_length = d.tube_length * d.tube_passes;
+  if (tubes.u_tubes) {
+    // The mean bend is 2/3 of the bundle circle: the integral over the half circle.
+    const double bundle = d.shell_inside_diameter - exchanger.shell_side.bundle_to_shell;
+    tubes.friction_length += 0.5 * d.tube_passes * (2.0 / 3.0) * bundle;
+  }
+  set_roughness(d, tubes, assumed);
+  tubes.nozzle_in_area = nozzle_area(d.tube_nozzle_in, "exchanger.tubes.nozzle_in", assumed);
+  tubes.nozzle_out_area = nozzle_area(d.tube_nozzle_out, "exchanger.tubes.nozzle_out", assumed);
+  return tubes;
+}
+
+ShellSide shell_side(const Description& d, const Baffles& baffles, double exposed_length,
+                     Assumptions& assumed) {
+  ShellSide shell;
+  shell.shell_type = d.shell_type;
+  shell.inside_diameter = d.shell_inside_diameter;
+  shell.tube_outside_diameter = d.tube_outside_diameter;
+  shell.pitch = d.tube_pitch;
+  shell.layout = d.layout;
+  shell.tube_count = d.tube_count;
+  shell.baffle_cut = d.baffle_cut;
+  shell.central_spacing = baffles.central;
+  shell.inlet_spacing = baffles.inlet;
+  // The last space of a U-tube bundle reaches into the bends (Thome, Engineering Data Book III, ch. 3).
+  shell.outlet_spacing = baffles.outlet + (has_u_tubes(d) ? 0.5 * d.shell_inside_diameter : 0.0);
+  shell.baffles = baffles.count;
+  shell.effective_length = exposed_length;
+  shell.impingement_plate = d.impingement_plate;
+  set_clearances(d, baffles, shell, assumed);
+  set_seals(d, shell, assumed);
+  shell.nozzle_in_area = nozzle_area(d.shell_nozzle_in, "exchanger.shell.nozzle_in", assumed);
+  shell.nozzle_out_area = nozzle_area(d.shell_nozzle_out, "exchanger.shell.nozzle_out", assumed);
+  return shell;
+}
+
+void assume_lengths_and_flow(const Description& d, double thickness, Assumptions& assumed) {
+  if (!d.tubesheet_thickness)
+    assumed.push_back({.key = "exchanger.tubes.tubesheet_thickness",
+                       .value = thickness,
+                       .kind = units::Kind::length,
+                       .why = "a twentieth of the shell diameter, at least 20 mm: common practice, no source",
+                       .look_in = "bundle drawing"});
+  if (!d.flow_direction && d.tube_passes == 1 && d.shell_type == 'E')
+    assumed.push_back({.key = "exchanger.flow_direction",
+                       .word = "counter",
+                       .why = "one-pass units are nearly always piped in counterflow",
+                       .look_in = "piping drawing"});
+}
+
+void report_plugging(const Description& d, Findings& findings) {
+  if (has_u_tubes(d) && d.plugged % 2 != 0)
+    findings.push_back(
+        {.id = "geometry.plugged_u_tube",
+         .severity = Severity::should,
+         .text = "{value} plugged holes are not whole U-tubes: a plugged U-tube counts as two holes. "
+                 "The rating takes the holes as given; check whether tubes or holes were counted",
+         .ground = Ground::geometry,
+         .value = static_cast<double>(d.plugged),
+         .limit = static_cast<double>(d.plugged + 1),
+         .kind = units::Kind::count});
+  if (d.plugged_per_pass.empty()) return;
+  const auto [fewest, most] = std::ranges::minmax(d.plugged_per_pass);
+  if (fewest == most) return;
+  const double per_pass = static_cast<double>(d.tube_count) / d.tube_passes;
+  const double open_mean = per_pass - static_cast<double>(d.plugged) / d.tube_passes;
+  findings.push_back(
+      {.id = "geometry.unequal_plugging",
+       // Passes alike within 5 % are what Kern (1950) asks of a tube layout.
+       .severity = most - fewest > 0.05 * per_pass ? Severity::should : Severity::note,
+       .text =
+           fmt::format("{{value}} tubes are plugged in one pass and {{limit}} in another, of about {:.0f} in "
+                       "each. The rating shares the open tubes evenly; in the worst pass the velocity is "
+                       "{:.0f} % higher and the pressure drop about {:.0f} %. Judge that pass by itself",
+                       per_pass, 100.0 * (open_mean / (per_pass - most) - 1.0),
+                       100.0 * (std::pow(open_mean / (per_pass - most), 1.8) - 1.0)),
+       .ground = Ground::geometry,
+       .value = static_cast<double>(most),
+       .limit = static_cast<double>(fewest),
+       .kind = units::Kind::count});
+}
+
+}  // namespace
+
+int nearest(double z) {
+  return static_cast<int>(std::floor(z + 0.5));
+}
+
+double tubesheet_thickness(const Description& d) {
+  return d.tubesheet_thickness.value_or(std::max(0.020, 0.05 * d.shell_inside_diameter));
+}
+
+double effective_length(const Description& d) {
+  return d.tube_length - (has_u_tubes(d) ? 1.0 : 2.0) * tubesheet_thickness(d);
+}
+
+Checked<Exchanger> build(const Description& d) {
+  Checked<Exchanger> out;
+  Exchanger& exchanger = out.value;
+  exchanger.as_described = d;
+  exchanger.shells_in_series = d.shells_in_series;
+  exchanger.shells_in_parallel = d.shells_in_parallel;
+  exchanger.flow_direction = d.flow_direction.value_or(FlowDirection::counter);
+  exchanger.tubesheet_thickness = tubesheet_thickness(d);
+  exchanger.effective_length = effective_length(d);
+  exchanger.tubes_open = d.tube_count - d.plugged;
+  exchanger.area_per_shell = pi * d.tube_outside_diameter * exchanger.effective_length * exchanger.tubes_open;
+  exchanger.area = exchanger.area_per_shell * d.shells_in_series * d.shells_in_parallel;
+
+  assume_lengths_and_flow(d, exchanger.tubesheet_thickness, out.assumed);
+  const Baffles baffles = place_baffles(d);
+  report_baffles(d, baffles, out);
+  exchanger.shell_side = shell_side(d, baffles, exchanger.effective_length, out.assumed);
+  exchanger.tube_side = tube_side(d, exchanger, out.assumed);
+  set_wall(d, exchanger);
+  report_plugging(d, out.findings);
+  return out;
+}
+
+Checked<Exchanger> derive(const Description& description) {
+  if (const Objections found = objections(description); !found.empty())
+    throw std::invalid_argument("this exchanger cannot be: " + found.front().key + ": " + found.front().what);
+  return build(description);
+}
+
+}  // namespace dutygauge::geometry

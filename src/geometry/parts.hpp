@@ -1,0 +1,83 @@
+#pragma once
+#include <span>
+#include <string_view>
+
+#include "dutygauge/geometry.hpp"
+
+/// Pieces of `derive` and `objections`, each with its own file.
+namespace dutygauge::geometry {
+
+inline bool has_u_tubes(const Description& d) {
+  return d.rear_head == 'U';
+}
+
+/// floor(z + 0.5): how this module rounds everywhere.
+int nearest(double z);
+
+// --- lengths (derive.cpp)
+
+/// As given, or max(20 mm, 0.05 D_s) [m]. Common practice, no source.
+double tubesheet_thickness(const Description& d);
+
+/// Tube length exposed to the shell [m]: less two tubesheets, with U-tubes one.
+double effective_length(const Description& d);
+
+/// Everything but the checks: needs the drawing's own numbers to be possible.
+Checked<Exchanger> build(const Description& d);
+
+// --- baffles (baffles.cpp)
+
+/// Baffles of one run, on the straight tubes.
+struct Baffles {
+  int count = 0;                              ///< N_b
+  double central = 0, inlet = 0, outlet = 0;  ///< spacings [m]
+  double length() const { return inlet + outlet + (count - 1) * central; }
+};
+
+/// In how many runs the baffles seen along the shell are shared: 1 (E, F), 2 (G, J), 4 (H).
+int runs_along(char shell_type);
+
+/// Length of one baffled run [m].
+double run_length(const Description& d);
+
+/// Needs a spacing or a count, each above zero; X shells have no baffles.
+Baffles place_baffles(const Description& d);
+
+/// What was assumed of the end spacings, and whether they close on the length.
+void report_baffles(const Description& d, const Baffles& baffles, Checked<Exchanger>& out);
+
+// --- clearances, strips, lanes (clearances.cpp)
+
+/// Fills the clearances of `shell`; its diameters must be set.
+void set_clearances(const Description& d, const Baffles& baffles, ShellSide& shell, Assumptions& assumed);
+
+/// Fills strips and lanes; the clearances must be set.
+void set_seals(const Description& d, ShellSide& shell, Assumptions& assumed);
+
+// --- materials (materials.cpp)
+
+struct Span {
+  double value, low, high;
+};
+
+struct ConductivityPoint {
+  double celsius, value;  ///< [degC, W/m.K]
+};
+
+struct Material {
+  std::string_view name;
+  std::string_view also;  ///< other names, each between semicolons
+  Span roughness;         ///< [m]
+  std::span<const ConductivityPoint> conductivity;
+};
+
+/// The material of that name in any case, or null.
+const Material* find_material(std::string_view name);
+
+/// The known name most like this one.
+std::string_view nearest_material(std::string_view name);
+
+/// Roughness where no material is named [m].
+Span unnamed_roughness();
+
+}  // namespace dutygauge::geometry
