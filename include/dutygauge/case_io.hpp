@@ -46,13 +46,20 @@ struct Leaf {
   Position key_at, value_at;
 };
 
+/// One map or list of a case file; stands where its key stands.
+struct Block {
+  Position at;
+  bool is_list = false;
+};
+
 /// A case file as text by dotted key ("exchanger.tubes.count"; list items by
 /// index: "fluid.table.rows.0.density"). Vary a case by changing leaves here.
 struct Document {
   std::string file;  ///< name used in messages; "-" is standard input
   std::map<std::string, Leaf> leaves;
-  std::map<std::string, Position> blocks;  ///< maps and lists, by dotted key
-  std::string sha256;                      ///< of the bytes read, hexadecimal
+  std::map<std::string, Block> blocks;  ///< maps and lists, by dotted key
+  std::string sha256;                   ///< of the bytes read, hexadecimal
+  std::vector<Mistake> mistakes;        ///< that did not stop the reading (doubled keys)
 };
 
 /// A case ready to be rated.
@@ -66,8 +73,9 @@ struct Case {
   Findings findings;    ///< the same
 };
 
-/// Reads YAML text strictly: one document, no anchors, aliases, tags, merges,
-/// doubled keys; bounded size, depth and count. Throws InputError.
+/// Reads YAML text strictly: one document, no anchors, aliases, tags, merges;
+/// bounded size, depth and count. Doubled keys are noted in `mistakes`, the first
+/// holds. Throws InputError.
 Document read_document(std::string_view text, std::string file);
 
 /// Reads a file (regular file or pipe, at most 4 MB), "-" for standard input.
@@ -77,6 +85,11 @@ Document read_file(const std::string& path);
 /// Checks every leaf against the field table and builds the case.
 /// Throws InputError with all mistakes at once.
 Case build(const Document& document);
+
+/// Reads a fluid alone: `spec` is what stands under `fluid:` in a case, in YAML flow
+/// style ("water", "{constant: {...}}"), for a stream that enters at `temperature` [K]
+/// and `pressure` [Pa]. Throws InputError.
+fluids::Made read_fluid_spec(std::string_view spec, double temperature, double pressure);
 
 /// The JSON Schema (draft-07) of a case, from the field table.
 std::string schema();
