@@ -6,6 +6,7 @@
 
 #include "dutygauge/report.hpp"
 #include "dutygauge/sources.hpp"
+#include "words.hpp"
 
 namespace dutygauge::report {
 namespace {
@@ -26,46 +27,6 @@ double in_json_unit(double si, Kind kind) {
 
 Json or_null(const std::optional<double>& value) {
   return value ? Json(*value) : Json(nullptr);
-}
-
-const char* word(Severity severity) {
-  switch (severity) {
-    case Severity::must:
-      return "must";
-    case Severity::should:
-      return "should";
-    case Severity::note:
-      break;
-  }
-  return "note";
-}
-
-const char* word(Ground ground) {
-  switch (ground) {
-    case Ground::arithmetic:
-      return "arithmetic";
-    case Ground::geometry:
-      return "geometry";
-    case Ground::standard:
-      return "standard";
-    case Ground::judgement:
-      return "judgement";
-    case Ground::method:
-      break;
-  }
-  return "method";
-}
-
-const char* word(tubeside::Regime regime) {
-  switch (regime) {
-    case tubeside::Regime::laminar:
-      return "laminar";
-    case tubeside::Regime::transition:
-      return "transition";
-    case tubeside::Regime::turbulent:
-      break;
-  }
-  return "turbulent";
 }
 
 // How many streams a shell divides its flow into, each with a crossflow area of its own.
@@ -212,7 +173,7 @@ Json assumed(const Assumptions& assumptions) {
       return value ? Json(units::typed(*value, one.kind)) : Json(nullptr);
     };
     list.push_back({{"key", one.key},
-                    {"value", one.word.empty() ? units::typed(one.value, one.kind) : one.word},
+                    {"value", as_typed(one, units::System::metric)},
                     {"why", one.why},
                     {"low", end(one.low)},
                     {"high", end(one.high)},
@@ -230,7 +191,7 @@ Json findings(const Findings& all) {
                     {"severity", word(one.severity)},
                     {"ground", word(one.ground)},
                     {"since", "base"},
-                    {"text", one.text},
+                    {"text", sentence(one, units::System::metric)},
                     {"value", in_json_unit(one.value, one.kind)},
                     {"limit", in_json_unit(one.limit, one.kind)},
                     {"unit", units::json_unit(one.kind)},
