@@ -1,5 +1,6 @@
 #pragma once
 #include <string>
+#include <vector>
 
 #include "dutygauge/findings.hpp"
 #include "dutygauge/service.hpp"
@@ -26,6 +27,11 @@ struct TextOptions {
 std::string text(const Result& result, const TextOptions& options);
 
 /// The JSON object of one file, schema_version 1, on one line, without newline.
+/// Throws std::logic_error where a number is not finite: null means "not defined".
 std::string json(const Result& result);
+
+/// The JSON object that stands for a file without a result: its base name and
+/// the messages, so that a reader of several files sees every one of them.
+std::string error_json(const std::string& file, const std::vector<std::string>& messages);
 
 }  // namespace dutygauge::report

@@ -1,0 +1,26 @@
+#include <algorithm>
+#include <filesystem>
+
+#include "dutygauge/explore.hpp"
+
+namespace dutygauge::explore {
+
+report::Result rate(const case_io::Case& a_case) {
+  service::Service service = a_case.service;
+  service.words = a_case.display;
+  report::Result result{.file = std::filesystem::path(a_case.file).filename().string(),
+                        .title = a_case.title,
+                        .tag = a_case.tag,
+                        .input_sha256 = a_case.sha256,
+                        .display = a_case.display,
+                        .assessment = service::assess(a_case.problem, service),
+                        .inputs = a_case.inputs,
+                        .assumed = a_case.assumed,
+                        .findings = a_case.findings};
+  const auto& judged = result.assessment.findings;
+  result.findings.insert(result.findings.end(), judged.begin(), judged.end());
+  std::ranges::stable_sort(result.findings, std::ranges::greater{}, &Finding::severity);
+  return result;
+}
+
+}  // namespace dutygauge::explore

@@ -1,0 +1,147 @@
+#include <fmt/core.h>
+
+#include <algorithm>
+#include <cmath>
+
+#include "sections.hpp"
+#include "words.hpp"
+
+namespace dutygauge::report {
+namespace {
+
+using service::Quantity;
+using units::Kind;
+
+// One row: what, number, unit, its limit, what is left to it, and the word for that.
+using Row = std::vector<std::string>;
+
+constexpr const char* no_limit = "none stated";
+
+const rating::Stream& stream_of(const rating::Problem& problem, Side side) {
+  return side == Side::shell ? problem.shell_side : problem.tube_side;
+}
+
+std::string at_least_or_most(bool at_least, const std::string& limit) {
+  return (at_least ? ">= " : "<= ") + limit;
+}
+
+void duty_rows(const Result& result, const rating::Outcome& outcome, std::vector<Row>& rows) {
+  const Figures figures(result.display);
+  const auto& margins = result.assessment.margins;
+  const Row duty = {"  duty", figures.number(outcome.duty, Kind::power), figures.unit(Kind::power)};
+  const auto add = [&](const std::string& limit, double fraction_left, std::string_view broken) {
+    rows.push_back(duty);
+    rows.back().insert(rows.back().end(), {limit, signed_percent(fraction_left),
+                                           std::string(limit_word(fraction_left, broken))});
+  };
+  if (margins.required_duty && margins.duty)
+    add(at_least_or_most(true, figures.number(*margins.required_duty, Kind::power)), *margins.duty, "short");
+  for (const auto& demand : result.assessment.service.demands)
+    if (demand.quantity == Quantity::duty && !demand.at_least)
+      add(at_least_or_most(false, figures.number(demand.limit, Kind::power)),
+          1.0 - outcome.duty / demand.limit, "over");
+  if (rows.back().front() != duty.front()) {
+    rows.push_back(duty);
+    rows.back().insert(rows.back().end(), {no_limit, "", ""});
+  }
+}
+
+// "close" for an outlet is within a tenth of its own change of temperature.
+std::string outlet_word(const service::Demand& demand, const rating::Outcome& outcome, double to_limit,
+                        double change) {
+  if (!service::holds(demand, outcome)) return demand.at_least ? "short" : "over";
+  return std::string(limit_word(std::max(0.0, to_limit) / std::max(change, 1e-9), ""));
+}
+
+void outlet_rows(const Result& result, const rating::Outcome& outcome, Side side, std::vector<Row>& rows) {
+  const Figures figures(result.display);
+  const auto& problem = result.assessment.problem;
+  const double outlet = side == Side::shell ? outcome.shell_outlet : outcome.tube_outlet;
+  const double change = std::abs(outlet - stream_of(problem, side).inlet_temperature);
+  const Row start = {"  " + stream_name(problem, side) + " outlet", figures.number(outlet, Kind::temperature),
+                     figures.unit(Kind::temperature)};
+  const auto quantity = side == Side::shell ? Quantity::shell_side_outlet : Quantity::tube_side_outlet;
+  bool limited = false;
+  for (const auto& demand : result.assessment.service.demands) {
+    if (demand.quantity != quantity) continue;
+    limited = true;
+    const double to_limit = demand.at_least ? outlet - demand.limit : demand.limit - outlet;
+    rows.push_back(start);
+    rows.back().insert(rows.back().end(),
+                       {at_least_or_most(demand.at_least, figures.number(demand.limit, Kind::temperature)),
+                        figures.difference(to_limit), outlet_word(demand, outcome, to_limit, change)});
+  }
+  if (limited) return;
+  rows.push_back(start);
+  rows.back().insert(rows.back().end(), {no_limit, "", ""});
+}
+
+void surface_rows(const Result& result, std::vector<Row>& rows) {
+  const Figures figures(result.display);
+  const auto& margins = result.assessment.margins;
+  if (!margins.required_duty) return;
+  if (!margins.surface) {
+    rows.push_back({"  surface margin", "none", "", ">= 0", "", "see RULES"});
+    return;
+  }
+  const auto surface = [&rows](const char* label, double fraction) {
+    rows.push_back({label, fmt::format("{:+.1f}", 100.0 * fraction), "%", ">= 0", "",
+                    std::string(limit_word(fraction, "short"))});
+  };
+  surface("  surface margin", *margins.surface);
+  if (margins.surface_clean) surface("  surface margin, if clean", *margins.surface_clean);
+  if (margins.fouling_spare)
+    rows.push_back({"  fouling margin left",
+                    figures.number(*margins.fouling_spare, Kind::fouling_resistance, 3),
+                    figures.unit(Kind::fouling_resistance), ">= 0", "",
+                    std::string(limit_word(*margins.surface, "short"))});
+}
+
+void drop_row(const Result& result, Side side, double drop, std::vector<Row>& rows) {
+  const Figures figures(result.display);
+  const auto& service = result.assessment.service;
+  const auto& allowable =
+      side == Side::shell ? service.shell_side_allowable_drop : service.tube_side_allowable_drop;
+  const auto kind = Kind::pressure_difference;
+  Row row = {"  " + stream_name(result.assessment.problem, side) + " pressure drop",
+             figures.number(drop, kind, 3),
+             figures.unit(kind),
+             no_limit,
+             "",
+             ""};
+  if (allowable) {
+    const double left = 1.0 - drop / *allowable;
+    row[3] = at_least_or_most(false, figures.number(*allowable, kind, 3));
+    row[4] = signed_percent(left);
+    row[5] = limit_word(left, "over");
+  }
+  rows.push_back(std::move(row));
+}
+
+void velocity_rows(const Result& result, const rating::Outcome& outcome, std::vector<Row>& rows) {
+  const Figures figures(result.display);
+  const auto& problem = result.assessment.problem;
+  const auto add = [&](Side side, const char* where, double velocity) {
+    rows.push_back({"  " + stream_name(problem, side) + where, figures.number(velocity, Kind::velocity, 3),
+                    figures.unit(Kind::velocity), no_limit, "", ""});
+  };
+  add(Side::shell, " across the bundle", outcome.local.shell_film.velocity);
+  add(Side::tube, " in the tubes", outcome.local.tube_film.velocity);
+}
+
+}  // namespace
+
+void how_much(Page& page, const Result& result) {
+  const auto& outcome = *result.assessment.rating.outcome;
+  std::vector<Row> rows = {{"HOW MUCH     running free, design fouling", "", "", "limit", "margin", ""}};
+  duty_rows(result, outcome, rows);
+  outlet_rows(result, outcome, Side::shell, rows);
+  outlet_rows(result, outcome, Side::tube, rows);
+  surface_rows(result, rows);
+  drop_row(result, Side::shell, outcome.shell_drop.total(), rows);
+  drop_row(result, Side::tube, outcome.tube_drop.total(), rows);
+  velocity_rows(result, outcome, rows);
+  page.table(rows, {Align::left, Align::right, Align::left, Align::right, Align::right, Align::left}, 0);
+}
+
+}  // namespace dutygauge::report

@@ -1,0 +1,262 @@
+#include <cmath>
+#include <nlohmann/json.hpp>
+#include <optional>
+#include <stdexcept>
+#include <string>
+
+#include "dutygauge/report.hpp"
+#include "dutygauge/sources.hpp"
+#include "words.hpp"
+
+namespace dutygauge::report {
+namespace {
+
+using Json = nlohmann::ordered_json;
+using units::Kind;
+
+constexpr int schema_version = 1;
+
+double celsius(double kelvin) {
+  return units::from_si(kelvin, "degC", Kind::temperature);
+}
+
+// SI as the result shows it: temperatures in degC, everything else as it is.
+double in_json_unit(double si, Kind kind) {
+  return kind == Kind::temperature ? celsius(si) : si;
+}
+
+Json or_null(const std::optional<double>& value) {
+  return value ? Json(*value) : Json(nullptr);
+}
+
+// How many streams a shell divides its flow into, each with a crossflow area of its own.
+int shell_streams(char shell_type) {
+  switch (shell_type) {
+    case 'G':
+    case 'J':
+      return 2;
+    case 'H':
+      return 4;
+    default:
+      return 1;
+  }
+}
+
+Json verdict(const service::Assessment& assessment) {
+  const auto& said = assessment.verdict;
+  return {{"service_met", said.met ? Json(*said.met) : Json(nullptr)},
+          {"grade", nullptr},
+          {"probability", nullptr},
+          {"limited_by", said.limited_by},
+          {"text", assessment.rating.outcome ? said.text : assessment.rating.no_result}};
+}
+
+Json thermal(const service::Assessment& assessment) {
+  if (!assessment.rating.outcome) return nullptr;
+  const auto& outcome = *assessment.rating.outcome;
+  const double area = assessment.problem.exchanger.area;
+  return {{"duty_W", outcome.duty},
+          {"duty_ntu_W", outcome.duty_ntu},
+          {"duty_lmtd_W", outcome.duty_lmtd},
+          {"shell_side_outlet_degC", celsius(outcome.shell_outlet)},
+          {"tube_side_outlet_degC", celsius(outcome.tube_outlet)},
+          {"effectiveness", outcome.effectiveness},
+          {"ntu", outcome.ntu},
+          {"capacity_ratio", outcome.capacity_ratio},
+          {"lmtd_K", outcome.log_mean},
+          {"f_correction", outcome.f_correction},
+          {"mtd_K", outcome.mean_difference},
+          {"area_m2", area},
+          {"u_clean_W_m2K", outcome.local.u_clean},
+          {"u_dirty_W_m2K", outcome.local.u_dirty},
+          {"u_required_W_m2K", or_null(assessment.margins.u_required)},
+          {"ua_W_K", outcome.local.u_dirty * area},
+          {"balance_error", outcome.balance_error}};
+}
+
+Json resistances(const service::Assessment& assessment) {
+  if (!assessment.rating.outcome) return nullptr;
+  const auto& r = assessment.rating.outcome->local.resistances;
+  return {{"tube_film", r.tube_film},
+          {"tube_fouling", r.tube_fouling},
+          {"wall", r.wall},
+          {"shell_fouling", r.shell_fouling},
+          {"shell_film", r.shell_film}};
+}
+
+Json tube_side(const service::Assessment& assessment) {
+  if (!assessment.rating.outcome) return nullptr;
+  const auto& outcome = *assessment.rating.outcome;
+  const auto& film = outcome.local.tube_film;
+  const auto& drop = outcome.tube_drop;
+  return {{"film_W_m2K", film.coefficient},
+          {"reynolds", film.reynolds},
+          {"prandtl", film.prandtl},
+          {"nusselt", film.nusselt},
+          {"regime", word(film.regime)},
+          {"velocity_m_s", film.velocity},
+          {"wall_degC", celsius(outcome.local.walls.tube_wetted)},
+          {"pressure_drop_Pa", drop.total()},
+          {"pressure_drop_parts_Pa",
+           {{"friction", drop.friction}, {"turns", drop.turns}, {"nozzles", drop.nozzles}}}};
+}
+
+Json second_opinion(const service::Assessment& assessment) {
+  if (!assessment.second_opinion) return nullptr;
+  const auto& other = *assessment.second_opinion;
+  return {{"method", "kern"},
+          {"film_W_m2K", other.local.shell_film.coefficient},
+          {"pressure_drop_Pa", other.shell_drop.total()},
+          {"duty_W", other.duty}};
+}
+
+double crossflow_area(const rating::Problem& problem, const shellside::Film& film) {
+  const auto& exchanger = problem.exchanger;
+  const double one_bank = problem.shell_side.mass_flow / exchanger.shells_in_parallel;
+  return one_bank / shell_streams(exchanger.shell_side.shell_type) / film.mass_flux;
+}
+
+Json shell_side(const service::Assessment& assessment) {
+  if (!assessment.rating.outcome) return nullptr;
+  const auto& outcome = *assessment.rating.outcome;
+  const auto& film = outcome.local.shell_film;
+  const auto& drop = outcome.shell_drop;
+  const bool factors = assessment.problem.methods.shell_side == shellside::Method::bell_delaware;
+  const auto factor = [factors](double value) { return factors ? Json(value) : Json(nullptr); };
+  return {{"film_W_m2K", film.coefficient},
+          {"ideal_film_W_m2K", factor(film.ideal)},
+          {"reynolds", film.reynolds},
+          {"prandtl", film.prandtl},
+          {"j_cut", factor(film.j_cut)},
+          {"j_leakage", factor(film.j_leakage)},
+          {"j_bypass", factor(film.j_bypass)},
+          {"j_spacing", factor(film.j_spacing)},
+          {"j_laminar", factor(film.j_laminar)},
+          {"crossflow_area_m2", crossflow_area(assessment.problem, film)},
+          {"velocity_m_s", film.velocity},
+          {"wall_degC", celsius(outcome.local.walls.shell_wetted)},
+          {"pressure_drop_Pa", drop.total()},
+          {"pressure_drop_parts_Pa",
+           {{"crossflow", drop.crossflow},
+            {"window", drop.window},
+            {"ends", drop.ends},
+            {"nozzles", drop.nozzles}}},
+          {"second_opinion", second_opinion(assessment)}};
+}
+
+Json margins(const service::Margins& margins) {
+  return {{"duty", or_null(margins.duty)},
+          {"surface", or_null(margins.surface)},
+          {"surface_clean", or_null(margins.surface_clean)},
+          {"fouling_spare_m2K_W", or_null(margins.fouling_spare)},
+          {"temperature_K", or_null(margins.temperature)}};
+}
+
+// What each state and each operating case says.
+Json state(const service::Assessment& assessment) {
+  return {{"verdict", verdict(assessment)},
+          {"thermal", thermal(assessment)},
+          {"tube_side", tube_side(assessment)},
+          {"shell_side", shell_side(assessment)},
+          {"margins", margins(assessment.margins)}};
+}
+
+Json solutions(const service::Assessment& assessment) {
+  if (!assessment.rating.outcome) return {{"mean", nullptr}};
+  return {{"mean", {{"duty_W", assessment.rating.outcome->duty}}}};
+}
+
+Json assumed(const Assumptions& assumptions) {
+  Json list = Json::array();
+  for (const auto& one : assumptions) {
+    const auto end = [&one](const std::optional<double>& value) {
+      return value ? Json(units::typed(*value, one.kind)) : Json(nullptr);
+    };
+    list.push_back({{"key", one.key},
+                    {"value", as_typed(one, units::System::metric)},
+                    {"why", one.why},
+                    {"low", end(one.low)},
+                    {"high", end(one.high)},
+                    {"effect", nullptr},
+                    {"look_in", one.look_in}});
+  }
+  return list;
+}
+
+Json findings(const Findings& all) {
+  Json list = Json::array();
+  for (const auto& one : all) {
+    const auto citation = sources::citation(one.source);
+    list.push_back({{"id", one.id},
+                    {"severity", word(one.severity)},
+                    {"ground", word(one.ground)},
+                    {"since", "base"},
+                    {"text", sentence(one, units::System::metric)},
+                    {"value", in_json_unit(one.value, one.kind)},
+                    {"limit", in_json_unit(one.limit, one.kind)},
+                    {"unit", units::json_unit(one.kind)},
+                    {"source", citation.empty() ? one.source : std::string(citation)}});
+  }
+  return list;
+}
+
+Json inputs(const Inputs& all) {
+  Json list = Json::array();
+  for (const auto& one : all) {
+    list.push_back({{"key", one.key},
+                    {"as_typed", one.as_typed},
+                    {"si", one.is_word ? Json(nullptr) : Json(in_json_unit(one.si, one.kind))},
+                    {"unit", one.is_word ? std::string_view{} : units::json_unit(one.kind)},
+                    {"line", one.line},
+                    {"origin", one.origin}});
+  }
+  return list;
+}
+
+// The library would print null for a NaN or an infinity, which means "not
+// defined" here. A number that got this far and is neither is a bug.
+void require_finite(const Json& json, const std::string& path) {
+  if (json.is_number_float() && !std::isfinite(json.get<double>()))
+    throw std::logic_error("the result holds a number that is not finite: " + path);
+  if (json.is_structured())
+    for (const auto& [key, value] : json.items()) require_finite(value, path + "/" + key);
+}
+
+std::string one_line(const Json& json) {
+  require_finite(json, "");
+  return json.dump(-1, ' ', false, Json::error_handler_t::replace);
+}
+
+}  // namespace
+
+std::string json(const Result& result) {
+  const auto& assessment = result.assessment;
+  const Json this_state = state(assessment);
+  return one_line({{"dutygauge", DUTYGAUGE_VERSION},
+                   {"schema_version", schema_version},
+                   {"input_sha256", result.input_sha256},
+                   {"case", {{"file", result.file}, {"title", result.title}, {"tag", result.tag}}},
+                   {"operating_case", "base"},
+                   {"verdict", verdict(assessment)},
+                   {"thermal", thermal(assessment)},
+                   {"resistances_m2K_W", resistances(assessment)},
+                   {"tube_side", tube_side(assessment)},
+                   {"shell_side", shell_side(assessment)},
+                   {"margins", margins(assessment.margins)},
+                   {"solutions", solutions(assessment)},
+                   {"states", {{"design_fouling", this_state}}},
+                   {"operating_cases", {{"base", this_state}}},
+                   {"assumed", assumed(result.assumed)},
+                   {"findings", findings(result.findings)},
+                   {"claims", Json::array()},
+                   {"inputs", inputs(result.inputs)}});
+}
+
+std::string error_json(const std::string& file, const std::vector<std::string>& lines) {
+  return one_line({{"dutygauge", DUTYGAUGE_VERSION},
+                   {"schema_version", schema_version},
+                   {"case", {{"file", file}}},
+                   {"error", lines}});
+}
+
+}  // namespace dutygauge::report

@@ -1,0 +1,192 @@
+#include <fmt/core.h>
+
+#include <algorithm>
+#include <cmath>
+#include <map>
+
+#include "dutygauge/sources.hpp"
+#include "sections.hpp"
+#include "words.hpp"
+
+namespace dutygauge::report {
+namespace {
+
+using units::Kind;
+
+constexpr std::size_t most_assumptions = 5, most_findings = 5, most_tasks = 3, most_named = 4;
+
+// "12 % lower", "3 % higher", "the same within 1 %".
+std::string against(double other, double ours) {
+  const double fraction = other / ours - 1.0;
+  if (std::abs(fraction) < 0.01) return "the same within 1 %";
+  return fmt::format("{:.0f} % {}", 100.0 * std::abs(fraction), fraction < 0.0 ? "lower" : "higher");
+}
+
+// Whether the stated service comes out the same with the other method; empty without a service.
+std::string same_answer(const service::Assessment& assessment) {
+  if (!assessment.verdict.met) return "";
+  const auto holds = [&](const service::Demand& d) { return service::holds(d, *assessment.second_opinion); };
+  const bool met = std::ranges::all_of(assessment.service.demands, holds);
+  if (met != *assessment.verdict.met)
+    return fmt::format(" By that method the service would {}be met: the answer hangs on the shell film.",
+                       met ? "" : "not ");
+  return fmt::format(" By that method the service is {} too.", met ? "met" : "missed");
+}
+
+std::size_t remarks_on_methods(const Findings& findings) {
+  return static_cast<std::size_t>(std::ranges::count_if(
+      findings, [](const Finding& f) { return f.ground == Ground::method && f.severity != Severity::note; }));
+}
+
+std::string_view tightest_line(const service::Assessment& assessment) {
+  const auto& demands = assessment.service.demands;
+  const auto found = std::ranges::find_if(demands, [&](const service::Demand& demand) {
+    return service::key_of(demand.quantity) == assessment.verdict.limited_by;
+  });
+  if (found == demands.end()) return "";
+  return found->quantity == service::Quantity::duty                ? "the duty"
+         : found->quantity == service::Quantity::shell_side_outlet ? "the shell-side outlet"
+                                                                   : "the tube-side outlet";
+}
+
+std::string where_the_difference_goes(const service::Assessment& assessment) {
+  std::vector<std::string> parts;
+  for (const auto& share : shares(assessment.problem, assessment.rating.outcome->local.resistances))
+    if (share.fraction >= 0.005)
+      parts.push_back(fmt::format("{:.0f} % across {}", 100.0 * share.fraction, share.across));
+  return "the temperature difference goes " + listed(parts);
+}
+
+// What a finding says to do: the words behind its last semicolon.
+std::string remedy_of(const std::string& text) {
+  const auto at = text.rfind("; ");
+  return at == std::string::npos ? "see RULES" : text.substr(at + 2);
+}
+
+std::vector<std::string> tasks_from_findings(const Result& result) {
+  std::vector<std::string> tasks;
+  for (const auto& finding : result.findings)
+    if (finding.severity != Severity::note)
+      tasks.push_back(fmt::format("Settle {}: {}", finding.id, remedy_of(sentence(finding, result.display))));
+  return tasks;
+}
+
+// One task for each document that would settle assumptions, the most telling first.
+std::vector<std::string> tasks_from_assumptions(const Assumptions& assumptions) {
+  std::vector<std::pair<std::string, std::vector<std::string>>> documents;
+  for (const auto& one : assumptions) {
+    if (one.look_in.empty()) continue;
+    auto found = std::ranges::find(documents, one.look_in, &decltype(documents)::value_type::first);
+    if (found == documents.end()) found = documents.insert(documents.end(), {one.look_in, {}});
+    found->second.push_back(plain_words(one.key));
+  }
+  std::ranges::stable_sort(documents, std::ranges::greater{}, [](const auto& d) { return d.second.size(); });
+  std::vector<std::string> tasks;
+  for (auto& [document, names] : documents) {
+    const std::size_t left_out = names.size() > most_named ? names.size() - most_named : 0;
+    if (left_out > 0) {
+      names.resize(most_named);
+      names.push_back(fmt::format("{} more", left_out));
+    }
+    tasks.push_back(fmt::format("Look in the {} for {}.", document, listed(names)));
+  }
+  return tasks;
+}
+
+std::vector<std::string> assumption_row(const Assumption& one, const Result& result, bool all) {
+  std::string why = one.why;
+  if (all && one.low && one.high)
+    why += fmt::format("; may lie between {} and {}", units::typed(*one.low, one.kind, result.display),
+                       units::typed(*one.high, one.kind, result.display));
+  if (all && !one.look_in.empty()) why += "; look in: " + one.look_in;
+  return {"  " + (all ? one.key : plain_words(one.key)), as_typed(one, result.display), why};
+}
+
+}  // namespace
+
+void how_sure(Page& page, const Result& result) {
+  const auto& assessment = result.assessment;
+  const std::size_t remarks = remarks_on_methods(result.findings);
+  if (!assessment.second_opinion && remarks == 0) return;
+  page.blank();
+  std::string name = "HOW SURE";
+  if (assessment.second_opinion) {
+    const auto& ours = *assessment.rating.outcome;
+    const auto& other = *assessment.second_opinion;
+    page.section(
+        name,
+        fmt::format("A second method for the shell (Kern) gives a film {}, a duty {}, a "
+                    "pressure drop {}.{}",
+                    against(other.local.shell_film.coefficient, ours.local.shell_film.coefficient),
+                    against(other.duty, ours.duty),
+                    against(other.shell_drop.total(), ours.shell_drop.total()), same_answer(assessment)));
+    name.clear();
+  }
+  if (remarks > 0)
+    page.section(name, fmt::format("A method is used where it is less certain in {} place{}: see RULES.",
+                                   remarks, remarks == 1 ? "" : "s"));
+}
+
+void what_limits(Page& page, const Result& result) {
+  const auto& assessment = result.assessment;
+  std::string name = "WHAT LIMITS";
+  if (const auto line = tightest_line(assessment); !line.empty()) {
+    page.section(name, fmt::format("{} is the tightest line of the service.", line));
+    name.clear();
+  }
+  page.section(name, where_the_difference_goes(assessment) + ".");
+}
+
+void assumed(Page& page, const Result& result, const TextOptions& options) {
+  if (result.assumed.empty()) return;
+  Assumptions shown = result.assumed;
+  // Those with a span are the ones that can move the result.
+  std::ranges::stable_sort(shown, std::ranges::greater{},
+                           [](const Assumption& a) { return a.low || a.high; });
+  const std::size_t left_out =
+      options.all || shown.size() <= most_assumptions ? 0 : shown.size() - most_assumptions;
+  shown.resize(shown.size() - left_out);
+  std::vector<std::vector<std::string>> rows = {{"ASSUMED", "as", "why"}};
+  for (const auto& one : shown) rows.push_back(assumption_row(one, result, options.all));
+  page.blank();
+  page.table(rows, {Align::left, Align::left, Align::left}, 0);
+  if (left_out > 0) page.line(fmt::format("  {} more: -v", left_out));
+}
+
+void rules(Page& page, const Result& result, const TextOptions& options) {
+  const auto& findings = result.findings;
+  if (findings.empty()) {
+    page.section("RULES", "no finding from the checks made.");
+    return;
+  }
+  const auto count = [&findings](Severity severity) {
+    return std::ranges::count(findings, severity, &Finding::severity);
+  };
+  page.section("RULES", fmt::format("{} must, {} should, {} note", count(Severity::must),
+                                    count(Severity::should), count(Severity::note)));
+  const std::size_t shown = options.all ? findings.size() : std::min(findings.size(), most_findings);
+  for (std::size_t i = 0; i < shown; ++i) {
+    const auto& finding = findings[i];
+    std::string said = fmt::format("{} ({})", sentence(finding, result.display), finding.id);
+    const auto citation = sources::citation(finding.source);
+    if (options.all && !citation.empty()) said += fmt::format(" [{}]", citation);
+    page.paragraph(fmt::format("  {:<8}", word(finding.severity)), said);
+  }
+  if (shown < findings.size()) page.line(fmt::format("  {} more: -v", findings.size() - shown));
+}
+
+void next_steps(Page& page, const Result& result) {
+  auto tasks = tasks_from_findings(result);
+  const auto& margins = result.assessment.margins;
+  if (margins.surface.value_or(0.0) < 0.0 && margins.surface_clean.value_or(-1.0) >= 0.0)
+    tasks.insert(tasks.begin(),
+                 fmt::format("Clean it, or agree a lower fouling: without deposits the surface margin is {}.",
+                             signed_percent(*margins.surface_clean)));
+  for (auto& task : tasks_from_assumptions(result.assumed)) tasks.push_back(std::move(task));
+  if (tasks.empty()) tasks.emplace_back("Nothing stands open in this rating.");
+  tasks.resize(std::min(tasks.size(), most_tasks));
+  for (std::size_t i = 0; i < tasks.size(); ++i)
+    page.paragraph(fmt::format("{:<13}{} ", i == 0 ? "NEXT" : "", i + 1), tasks[i]);
+}
+
+}  // namespace dutygauge::report

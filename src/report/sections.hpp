@@ -1,0 +1,20 @@
+#pragma once
+#include "dutygauge/report.hpp"
+#include "page.hpp"
+
+/// The sections of the text page, in the order in which they stand.
+namespace dutygauge::report {
+
+void heading(Page& page, const Result& result);
+void answer(Page& page, const Result& result);
+void how_much(Page& page, const Result& result);
+void how_sure(Page& page, const Result& result);
+void what_limits(Page& page, const Result& result);
+void assumed(Page& page, const Result& result, const TextOptions& options);
+void rules(Page& page, const Result& result, const TextOptions& options);
+void next_steps(Page& page, const Result& result);
+
+/// Films, resistances, factors and parts of the pressure drops in words; the inputs; the sources.
+void details(Page& page, const Result& result);
+
+}  // namespace dutygauge::report
