@@ -3,7 +3,7 @@
 #include "water.hpp"
 
 // Temperature from pressure and enthalpy in regions 1 and 2 of IAPWS-IF97.
-// Source of every number: IAPWS R7-97(2012), tables 6, 19 to 23 and equation 21.
+// Source of every number: IAPWS R7-97(2012), tables 6 and 19 to 22, equations 11 and 21 to 24.
 
 namespace dutygauge::fluids::water {
 namespace {
