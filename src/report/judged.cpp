@@ -1,8 +1,9 @@
 #include <fmt/core.h>
 
 #include <algorithm>
+#include <cctype>
 #include <cmath>
-#include <map>
+#include <iterator>
 
 #include "dutygauge/sources.hpp"
 #include "sections.hpp"
@@ -57,17 +58,23 @@ std::string where_the_difference_goes(const service::Assessment& assessment) {
   return "the temperature difference goes " + listed(parts);
 }
 
-// What a finding says to do: the words behind its last semicolon.
-std::string remedy_of(const std::string& text) {
-  const auto at = text.rfind("; ");
-  return at == std::string::npos ? "see RULES" : text.substr(at + 2);
+// What a finding says to do: its last clause. Where it has but one, the finding itself is the task.
+std::string task_from(const Finding& finding, units::System system) {
+  const std::string text = sentence(finding, system);
+  const auto at = std::max(text.rfind("; ") + 1, text.rfind(". ") + 1);  // npos + 1 is 0
+  if (at == 0) return fmt::format("Decide on {}, under RULES.", finding.id);
+  std::string clause = text.substr(at + 1);
+  clause.front() = static_cast<char>(std::toupper(static_cast<unsigned char>(clause.front())));
+  return fmt::format("{} ({}).", clause, finding.id);
 }
 
 std::vector<std::string> tasks_from_findings(const Result& result) {
   std::vector<std::string> tasks;
-  for (const auto& finding : result.findings)
-    if (finding.severity != Severity::note)
-      tasks.push_back(fmt::format("Settle {}: {}", finding.id, remedy_of(sentence(finding, result.display))));
+  for (const auto& finding : result.findings) {
+    if (finding.severity == Severity::note) continue;
+    auto task = task_from(finding, result.display);
+    if (std::ranges::find(tasks, task) == tasks.end()) tasks.push_back(std::move(task));
+  }
   return tasks;
 }
 
@@ -182,7 +189,10 @@ void next_steps(Page& page, const Result& result) {
     tasks.insert(tasks.begin(),
                  fmt::format("Clean it, or agree a lower fouling: without deposits the surface margin is {}.",
                              signed_percent(*margins.surface_clean)));
-  for (auto& task : tasks_from_assumptions(result.assumed)) tasks.push_back(std::move(task));
+  auto look_ups = tasks_from_assumptions(result.assumed);
+  // One place is kept for what a drawing or a list would settle.
+  if (!look_ups.empty()) tasks.resize(std::min(tasks.size(), most_tasks - 1));
+  std::ranges::move(look_ups, std::back_inserter(tasks));
   if (tasks.empty()) tasks.emplace_back("Nothing stands open in this rating.");
   tasks.resize(std::min(tasks.size(), most_tasks));
   for (std::size_t i = 0; i < tasks.size(); ++i)

@@ -1,0 +1,43 @@
+#include <fmt/core.h>
+
+#include "command.hpp"
+#include "dutygauge/case_io.hpp"
+#include "dutygauge/cli.hpp"
+
+namespace dutygauge::cli {
+namespace {
+
+void expect_no_argument(const Call& call) {
+  if (!call.arguments.empty())
+    throw CallError(
+        fmt::format("'{}' is one word too many; this command takes none", call.arguments.front()));
+}
+
+}  // namespace
+
+int run_new(const Call& call, Streams streams) {
+  expect_no_argument(call);
+  deliver(call, case_io::starter_case(), streams.out);
+  return done;
+}
+
+int run_schema(const Call& call, Streams streams) {
+  expect_no_argument(call);
+  deliver(call, case_io::schema(), streams.out);
+  return done;
+}
+
+int run_explain(const Call& call, Streams streams) {
+  if (call.arguments.size() != 1)
+    throw CallError("explain takes one key of the case file, such as exchanger.baffles.cut");
+  const std::string& key = call.arguments.front();
+  const auto entry = case_io::explain(key);
+  if (!entry) throw CallError(fmt::format("no key '{}' in a case file; 'dutygauge new' shows them all", key));
+  deliver(call,
+          fmt::format("{}\n  {}\n  kind: {}\n  expected: {}\n", entry->key, entry->help, entry->kind,
+                      entry->expected),
+          streams.out);
+  return done;
+}
+
+}  // namespace dutygauge::cli
