@@ -1,6 +1,7 @@
 #pragma once
 #include <optional>
 #include <string>
+#include <vector>
 
 #include "dutygauge/arrangement.hpp"
 #include "dutygauge/findings.hpp"
@@ -23,8 +24,15 @@ struct Stream {
   double fouling_resistance = 0;  ///< on the surface it sits on [m2.K/W]
 };
 
+/// How the outlets are found.
+enum class Solution {
+  mean,   ///< properties at the streams' mean temperatures, closed form of the arrangement
+  march,  ///< along the two streams' paths, with local properties, films and walls
+};
+
 struct Methods {
   shellside::Method shell_side = shellside::Method::bell_delaware;
+  Solution solution = Solution::march;
 };
 
 /// What is to be rated.
@@ -45,8 +53,25 @@ struct Local {
   bool converged = false;
 };
 
-/// The outlet state of the unit, by mean properties.
+/// One place along a tube pass of a march.
+struct ProfilePoint {
+  int shell = 1, pass = 1;                 ///< of the train along the shell stream; tube pass
+  double position = 0;                     ///< along the tube stream's own way through this stretch, 0 to 1
+  double tube = 0, shell_side = 0, wall = 0;  ///< bulk of both streams, mean metal [K]
+  double u = 0;                            ///< [W/m2.K]
+  double flux = 0;                         ///< from shell to tube side [W/m2]
+};
+
+/// What leaves one shell of a train.
+struct ShellEnd {
+  int position = 1;  ///< along the shell stream
+  double shell_outlet = 0, tube_outlet = 0;  ///< [K]
+};
+
+/// The outlet state of the unit. Found by a march, films and resistances are those that
+/// the whole unit shows: weighted with the flux, so that U A F LMTD is the duty.
 struct Outcome {
+  Solution solution = Solution::mean;
   double duty = 0;                                             ///< [W]
   double shell_outlet = 0, tube_outlet = 0;                    ///< [K]
   double shell_mean = 0, tube_mean = 0;                        ///< bulk means [K]
@@ -56,9 +81,11 @@ struct Outcome {
   double log_mean = 0, f_correction = 0, mean_difference = 0;  ///< [K], [-], [K]
   double duty_ntu = 0, duty_lmtd = 0;                          ///< the two routes at the solution [W]
   double balance_error = 0;                                    ///< |Q_hot - Q_cold|/Q from enthalpies
-  Local local;                                                 ///< at the bulk means
-  tubeside::PressureDrop tube_drop;                            ///< one bank, all its shells in series
-  shellside::PressureDrop shell_drop;                          ///< the same
+  Local local;                            ///< at the bulk means; a march puts its films, U and walls in
+  tubeside::PressureDrop tube_drop;       ///< one bank, all its shells in series
+  shellside::PressureDrop shell_drop;     ///< the same
+  std::vector<ProfilePoint> profile;      ///< march only
+  std::vector<ShellEnd> between_shells;   ///< along the shell stream; march only
 };
 
 /// A rating, or why there is none.
@@ -66,13 +93,26 @@ struct Rating {
   std::optional<Outcome> outcome;
   std::string no_result;    ///< why not, a sentence; empty with an outcome
   double largest_duty = 0;  ///< what an endless surface in counterflow would do [W]
+  std::optional<double> mean_duty, march_duty;  ///< of the solutions that were found [W]
   Findings findings;
 };
+
+/// Rates by the solution the problem names, and reports the duty of the other beside it.
+Rating rate(const Problem& problem);
 
 /// Rates by mean properties: one trial duty fixes the outlets, films and U are
 /// taken at the bulk means, and the arrangement closes the balance in one bracketed
 /// root. No outcome where a stream would leave the range of its fluid.
 Rating rate_mean(const Problem& problem);
+
+/// Rates along the paths of the two streams. Every stretch of a stream is cut into
+/// slices with the heat balance held in enthalpy (collocation of order 4); films, walls
+/// and properties are those of each place, and slices are doubled until the duty moves
+/// by less than 1e-5. With constant properties it tends to the closed form. The shell
+/// stream is continuous along its run: what few baffles cost is not in it.
+/// No outcome where a stream leaves the range of its fluid, or where the temperatures
+/// do not settle.
+Rating rate_march(const Problem& problem);
 
 /// What a duty asks of the surface: outlets, films and U are those at that duty.
 struct Needed {

@@ -45,14 +45,15 @@ overall::WallTemperatures walls_of(const Local& at, const Bulk& bulk, const Flux
 
 }  // namespace
 
-Local local(const Unit& unit, const Bulk& bulk, const FluxRule& rule) {
-  const Problem& problem = *unit.problem;
-  Local at;
-  at.tube_bulk = fluids::state(problem.tube_side.fluid, bulk.tube, problem.tube_side.inlet_pressure);
-  at.shell_bulk = fluids::state(problem.shell_side.fluid, bulk.shell, problem.shell_side.inlet_pressure);
+void start_walls(Local& at, const Bulk& bulk) {
   at.walls = {bulk.tube, bulk.shell, 0.5 * (bulk.tube + bulk.shell)};
+}
+
+double settle(const Unit& unit, const Bulk& bulk, const FluxRule& rule, int passes, Local& at) {
+  const Problem& problem = *unit.problem;
   double relaxation = 1.0, last_step = HUGE_VAL;
-  for (int pass = 0; pass < most_passes && !at.converged; ++pass) {
+  at.converged = false;
+  for (int pass = 0; pass < passes && !at.converged; ++pass) {
     at.tube_wall = wall_state(problem.tube_side, unit.tube_wall_range, at.walls.tube_wetted);
     at.shell_wall = wall_state(problem.shell_side, unit.shell_wall_range, at.walls.shell_wetted);
     at.tube_film = tubeside::film(problem.exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall);
@@ -71,6 +72,16 @@ Local local(const Unit& unit, const Bulk& bulk, const FluxRule& rule) {
     at.walls.shell_wetted += relaxation * (next.shell_wetted - at.walls.shell_wetted);
     at.walls.metal_mean += relaxation * (next.metal_mean - at.walls.metal_mean);
   }
+  return last_step;
+}
+
+Local local(const Unit& unit, const Bulk& bulk, const FluxRule& rule) {
+  const Problem& problem = *unit.problem;
+  Local at;
+  at.tube_bulk = fluids::state(problem.tube_side.fluid, bulk.tube, problem.tube_side.inlet_pressure);
+  at.shell_bulk = fluids::state(problem.shell_side.fluid, bulk.shell, problem.shell_side.inlet_pressure);
+  start_walls(at, bulk);
+  settle(unit, bulk, rule, most_passes, at);
   return at;
 }
 

@@ -26,6 +26,13 @@ struct FluxRule {
   std::optional<double> fixed_u;  ///< flux = fixed_u (T_s - T_t); empty: the U found, fouled
 };
 
+/// Walls at the bulk temperatures: where the iteration of `settle` begins.
+void start_walls(Local& at, const Bulk& bulk);
+
+/// Improves films, walls and U at one place, bulk states given, by at most `passes` passes;
+/// returns the last step of a wall [K].
+double settle(const Unit& unit, const Bulk& bulk, const FluxRule& rule, int passes, Local& at);
+
 /// Films, walls and U at one place, iterated until U and both walls stand still.
 Local local(const Unit& unit, const Bulk& bulk, const FluxRule& rule);
 

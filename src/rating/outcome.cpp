@@ -1,0 +1,81 @@
+#include "outcome.hpp"
+
+#include <fmt/core.h>
+
+#include <algorithm>
+#include <cmath>
+#include <iterator>
+
+namespace dutygauge::rating {
+namespace {
+
+void append(Findings& findings, Findings more) {
+  findings.insert(findings.end(), std::make_move_iterator(more.begin()), std::make_move_iterator(more.end()));
+}
+
+void check_stream(const Stream& stream, std::string_view side, double outlet, double wall,
+                  Findings& findings) {
+  append(findings, fluids::check_bulk(stream.fluid, stream.inlet_temperature, stream.inlet_pressure,
+                                      fmt::format("{} inlet", side)));
+  append(findings,
+         fluids::check_bulk(stream.fluid, outlet, stream.inlet_pressure, fmt::format("{} outlet", side)));
+  append(findings,
+         fluids::check_wall(stream.fluid, wall, stream.inlet_pressure, fmt::format("{} wall", side)));
+}
+
+Findings check_outcome(const Unit& unit, const Outcome& outcome) {
+  const Problem& problem = *unit.problem;
+  Findings findings = shellside::check_bundle(unit.bundle);
+  append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
+  append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
+                                        outcome.local.tube_bulk, outcome.local.tube_wall));
+  check_stream(problem.shell_side, "shell side", outcome.shell_outlet, outcome.local.walls.shell_wetted,
+               findings);
+  check_stream(problem.tube_side, "tube side", outcome.tube_outlet, outcome.local.walls.tube_wetted,
+               findings);
+  return findings;
+}
+
+
+}  // namespace
+
+void fill_streams(const Trial& trial, double duty, Outcome& outcome) {
+  outcome.duty = duty;
+  outcome.shell_outlet = trial.shell_outlet;
+  outcome.tube_outlet = trial.tube_outlet;
+  outcome.shell_mean = trial.means.shell;
+  outcome.tube_mean = trial.means.tube;
+  outcome.shell_capacity_rate = trial.shell_capacity_rate;
+  outcome.tube_capacity_rate = trial.tube_capacity_rate;
+}
+
+void fill_dimensionless(const Unit& unit, const Trial& trial, Outcome& outcome) {
+  const Problem& problem = *unit.problem;
+  const double shell_in = problem.shell_side.inlet_temperature, tube_in = problem.tube_side.inlet_temperature;
+  outcome.ntu_tube = trial.ntu;
+  outcome.r_tube = trial.r;
+  outcome.p_tube = arrangement::effectiveness(unit.arrangement, trial.r, trial.ntu);
+  const double larger = std::max(1.0, trial.r);  // C_tube over the smaller of the two
+  outcome.effectiveness = outcome.p_tube * larger;
+  outcome.ntu = trial.ntu * larger;
+  outcome.capacity_ratio = std::min(trial.r, 1.0 / trial.r);
+  outcome.duty_ntu = outcome.p_tube * trial.tube_capacity_rate * std::abs(shell_in - tube_in);
+  outcome.log_mean = arrangement::log_mean(unit.direction * (shell_in - trial.tube_outlet),
+                                           unit.direction * (trial.shell_outlet - tube_in));
+  outcome.f_correction = arrangement::lmtd_correction(unit.arrangement, trial.r, trial.ntu).value_or(0.0);
+  outcome.mean_difference = outcome.f_correction * outcome.log_mean;
+  outcome.duty_lmtd = trial.local.u_dirty * problem.exchanger.area * outcome.mean_difference;
+}
+
+/// Why a stream cannot even enter: its inlet lies where its fluid has no properties.
+std::string inlet_fault(const Stream& stream, std::string_view side) {
+  const auto usable = fluids::usable_temperatures(stream.fluid, stream.inlet_pressure);
+  const bool above = stream.inlet_temperature > usable.high;
+  if (!above && stream.inlet_temperature >= usable.low) return {};
+  return fmt::format("the {} inlet, {}, lies outside what is known of {}: {}", side,
+                     units::typed(stream.inlet_temperature, units::Kind::temperature), stream.fluid.name,
+                     fluids::why_it_ends(stream.fluid, stream.inlet_pressure, above));
+}
+
+
+}  // namespace dutygauge::rating
