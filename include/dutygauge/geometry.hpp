@@ -10,12 +10,16 @@ namespace dutygauge::geometry {
 
 enum class FlowDirection { counter, parallel };
 
+/// How the first tube pass runs beside the shell stream.
+enum class FirstTubePass { against_shell_flow, with_shell_flow };
+
 /// The exchanger as the case gives it; one shell where not said otherwise. SI.
 struct Description {
   char front_head = 'B', shell_type = 'E', rear_head = 'M';  ///< TEMA letters
   bool vertical = false;
   int shells_in_series = 1, shells_in_parallel = 1;
   std::optional<FlowDirection> flow_direction;  ///< one-pass units
+  FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
 
   double shell_inside_diameter = 0;                         ///< [m]
   std::optional<double> shell_nozzle_in, shell_nozzle_out;  ///< bores [m]
@@ -134,6 +138,7 @@ struct Exchanger {
   Conductivity wall_conductivity;
   int shells_in_series = 1, shells_in_parallel = 1;
   FlowDirection flow_direction = FlowDirection::counter;
+  FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
   double effective_length = 0;     ///< L_eff [m]
   double tubesheet_thickness = 0;  ///< [m]
   int tubes_open = 0;              ///< holes open to flow, one shell

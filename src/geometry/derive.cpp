@@ -166,6 +166,7 @@ Checked<Exchanger> build(const Description& d) {
   exchanger.shells_in_series = d.shells_in_series;
   exchanger.shells_in_parallel = d.shells_in_parallel;
   exchanger.flow_direction = d.flow_direction.value_or(FlowDirection::counter);
+  exchanger.first_tube_pass = d.first_tube_pass;
   exchanger.tubesheet_thickness = tubesheet_thickness(d);
   exchanger.effective_length = effective_length(d);
   exchanger.tubes_open = d.tube_count - d.plugged;

@@ -12,7 +12,9 @@ namespace {
 constexpr int most_iterations = 80;
 constexpr int wall_passes = 2;  ///< of the walls between two solutions of the temperatures
 
-std::size_t index(int i) { return static_cast<std::size_t>(i); }
+std::size_t index(int i) {
+  return static_cast<std::size_t>(i);
+}
 
 /// One stream seen by the march: enthalpies are counted from its inlet.
 struct Side {
@@ -46,8 +48,7 @@ constexpr double end_weights[3] = {1.0 / 6.0, 4.0 / 6.0, 1.0 / 6.0};
 
 }  // namespace
 
-March::March(const Unit& unit, int slices)
-    : unit_(unit), network_(connect(unit.problem->exchanger, slices)) {
+March::March(const Unit& unit, int slices) : unit_(unit), network_(connect(unit.problem->exchanger, slices)) {
   const int points = network_.points();
   enthalpy_.resize(network_.lines.size() * index(points), 0.0);
   states_.resize(enthalpy_.size());
@@ -74,13 +75,13 @@ void March::meet(int tube_line, int tube_point, int shell_line, int shell_point,
 
 /// Temperatures and properties of both streams at every point, from the enthalpies.
 void March::update_states() {
-  const Side tube(unit_.problem->tube_side, unit_.tube_flow), shell(unit_.problem->shell_side, unit_.shell_flow);
+  const Side tube(unit_.problem->tube_side, unit_.tube_flow),
+      shell(unit_.problem->shell_side, unit_.shell_flow);
   inside_range_ = true;
   for (std::size_t i = 0; i < enthalpy_.size(); ++i) {
     const bool tube_side = network_.lines[i / index(network_.points())].tube_side;
     const Side& side = tube_side ? tube : shell;
-    states_[i] =
-        fluids::state(side.stream.fluid, side.temperature(enthalpy_[i]), side.stream.inlet_pressure);
+    states_[i] = fluids::state(side.stream.fluid, side.temperature(enthalpy_[i]), side.stream.inlet_pressure);
     states_[i].enthalpy -= side.inlet_enthalpy;
     const double slack = 1e-9 * std::abs(side.highest - side.lowest);
     if (enthalpy_[i] < side.lowest - slack || enthalpy_[i] > side.highest + slack) {
@@ -118,7 +119,8 @@ bool March::solve_enthalpies(std::vector<double>& solution) const {
     const int first = static_cast<int>(l) * points;
     const double flow = line.flow * (line.tube_side ? unit_.tube_flow : unit_.shell_flow);
     entries.emplace_back(first, first, 1.0);
-    for (const Feed& feed : line.feeds) entries.emplace_back(first, feed.line * points + points - 1, -feed.share);
+    for (const Feed& feed : line.feeds)
+      entries.emplace_back(first, feed.line * points + points - 1, -feed.share);
     for (int s = 0; s < slices; ++s) {
       const int start = first + 2 * s;
       for (int k = 1; k <= 2; ++k) {
@@ -148,7 +150,8 @@ void March::add_heat(int row, int at, bool tube_side, double factor, Triplets& e
     const Meeting& meeting = meetings_[index(m)];
     const fluids::State& t = states_[index(meeting.tube_unknown)];
     const fluids::State& s = states_[index(meeting.shell_unknown)];
-    const double conductance = (tube_side ? 1.0 : -1.0) * factor * meeting.at.u_dirty * meeting.area * bank_area;
+    const double conductance =
+        (tube_side ? 1.0 : -1.0) * factor * meeting.at.u_dirty * meeting.area * bank_area;
     entries.emplace_back(row, meeting.shell_unknown, -conductance / s.heat_capacity);
     entries.emplace_back(row, meeting.tube_unknown, conductance / t.heat_capacity);
     right[row] += conductance * ((s.temperature - s.enthalpy / s.heat_capacity) -

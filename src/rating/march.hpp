@@ -47,7 +47,8 @@ class March {
   void update_states();
   double update_films();
   bool solve_enthalpies(std::vector<double>& solution) const;
-  void add_heat(int row, int at, bool tube_side, double factor, Triplets& entries, Eigen::VectorXd& right) const;
+  void add_heat(int row, int at, bool tube_side, double factor, Triplets& entries,
+                Eigen::VectorXd& right) const;
 
   const Unit& unit_;
   Network network_;

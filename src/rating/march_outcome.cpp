@@ -14,7 +14,7 @@ constexpr double duty_tolerance = 1e-5;
 
 /// Integrals over the surface of one bank, each divided by the surface.
 struct Means {
-  double flux = 0, difference = 0;  ///< [W/m2], [K]
+  double flux = 0, difference = 0;       ///< [W/m2], [K]
   overall::Resistances difference_over;  ///< temperature difference across each layer [K]
   overall::WallTemperatures walls{0, 0, 0};
   double shell_ideal_ratio = 0;
@@ -36,7 +36,8 @@ void add(Means& means, const Unit& unit, const Meeting& meeting) {
   means.walls.tube_wetted += w * at.walls.tube_wetted;
   means.walls.shell_wetted += w * at.walls.shell_wetted;
   means.walls.metal_mean += w * at.walls.metal_mean;
-  const auto tube = tubeside::pressure_drop(unit.problem->exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall);
+  const auto tube =
+      tubeside::pressure_drop(unit.problem->exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall);
   const auto shell = shellside::pressure_drop(unit.bundle, unit.shell_flow, at.shell_bulk, at.shell_wall);
   means.tube_drop.friction += w * tube.friction;
   means.tube_drop.turns += w * tube.turns;
@@ -86,27 +87,27 @@ void fill_profile(const Unit& unit, const March& march, Outcome& outcome) {
   for (const Meeting& meeting : march.meetings()) {
     const Line& line = network.lines[static_cast<std::size_t>(meeting.tube_unknown / points)];
     const Local& at = meeting.at;
-    outcome.profile.push_back(
-        {.shell = line.shell + 1,
-         .pass = line.pass,
-         .position = static_cast<double>(meeting.tube_unknown % points) / (points - 1),
-         .tube = at.tube_bulk.temperature,
-         .shell_side = at.shell_bulk.temperature,
-         .wall = at.walls.metal_mean,
-         .u = at.u_dirty,
-         .flux = at.u_dirty * (at.shell_bulk.temperature - at.tube_bulk.temperature)});
+    outcome.profile.push_back({.shell = line.shell + 1,
+                               .pass = line.pass,
+                               .position = static_cast<double>(meeting.tube_unknown % points) / (points - 1),
+                               .tube = at.tube_bulk.temperature,
+                               .shell_side = at.shell_bulk.temperature,
+                               .wall = at.walls.metal_mean,
+                               .u = at.u_dirty,
+                               .flux = at.u_dirty * (at.shell_bulk.temperature - at.tube_bulk.temperature)});
   }
   for (std::size_t k = 0; k < network.shell_end.size(); ++k)
     outcome.between_shells.push_back(
         {.position = static_cast<int>(k) + 1,
-         .shell_outlet = outlet_after(unit.problem->shell_side,
-                                      march.mixed_enthalpy(network.shell_end[k]) * unit.problem->shell_side.mass_flow),
-         .tube_outlet = outlet_after(unit.problem->tube_side,
-                                     march.mixed_enthalpy(network.tube_end[k]) * unit.problem->tube_side.mass_flow)});
+         .shell_outlet = outlet_after(unit.problem->shell_side, march.mixed_enthalpy(network.shell_end[k]) *
+                                                                    unit.problem->shell_side.mass_flow),
+         .tube_outlet = outlet_after(unit.problem->tube_side, march.mixed_enthalpy(network.tube_end[k]) *
+                                                                  unit.problem->tube_side.mass_flow)});
 }
 
 double duty_of(const Unit& unit, const March& march) {
-  return unit.direction * unit.problem->tube_side.mass_flow * march.mixed_enthalpy(march.network().tube_outlet);
+  return unit.direction * unit.problem->tube_side.mass_flow *
+         march.mixed_enthalpy(march.network().tube_outlet);
 }
 
 Outcome outcome_of(const Unit& unit, const March& march) {
@@ -136,7 +137,8 @@ Outcome outcome_of(const Unit& unit, const March& march) {
 std::string outside_fault(const Problem& problem, const March::Outside& outside) {
   const Stream& stream = outside.tube_side ? problem.tube_side : problem.shell_side;
   return fmt::format(
-      "on its way through the exchanger the {} stream leaves the range of {}: {}; change its flow, its pressure or "
+      "on its way through the exchanger the {} stream leaves the range of {}: {}; change its flow, its "
+      "pressure or "
       "an inlet temperature, or describe the fluid further",
       outside.tube_side ? "tube-side" : "shell-side", stream.fluid.name,
       fluids::why_it_ends(stream.fluid, stream.inlet_pressure, outside.above));
@@ -150,7 +152,8 @@ MarchResult march_through(const Unit& unit, const Local& start) {
   for (int slices = first_slices; slices <= most_slices; slices *= 2) {
     March march(unit, slices);
     if (!march.run(start)) {
-      result.fault = "the temperatures along the exchanger do not settle: properties or films change too strongly";
+      result.fault =
+          "the temperatures along the exchanger do not settle: properties or films change too strongly";
       return result;
     }
     if (!march.inside_range()) {

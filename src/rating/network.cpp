@@ -218,8 +218,7 @@ class Builder {
       first_shell[index(pass - 1)] = bundle(false, passes + 1 - pass, shell_before);
       if (pass == passes) entries_.back().shell = members(first_shell[index(pass - 1)]);
       shell_before = mixed(first_shell[index(pass - 1)]);
-      network_.fields.push_back(
-          {first_tube[index(pass - 1)], first_shell[index(pass - 1)], area_ / passes});
+      network_.fields.push_back({first_tube[index(pass - 1)], first_shell[index(pass - 1)], area_ / passes});
     }
     network_.tube_end[index(shell_)] = tubes_before;
     network_.shell_end[index(shell_)] = shell_before;
@@ -240,7 +239,8 @@ class Builder {
 
   Feeds mixed(int first) const {
     Feeds feeds;
-    for (int i = 0; i < network_.points(); ++i) feeds.push_back({first + i, point_weight(i, network_.slices)});
+    for (int i = 0; i < network_.points(); ++i)
+      feeds.push_back({first + i, point_weight(i, network_.slices)});
     return feeds;
   }
 

@@ -46,8 +46,8 @@ struct Network {
   std::vector<Line> lines;
   std::vector<Zone> zones;
   std::vector<Field> fields;
-  std::vector<Feed> tube_outlet, shell_outlet;             ///< what leaves the bank
-  std::vector<std::vector<Feed>> tube_end, shell_end;      ///< what leaves each shell, along the shell stream
+  std::vector<Feed> tube_outlet, shell_outlet;         ///< what leaves the bank
+  std::vector<std::vector<Feed>> tube_end, shell_end;  ///< what leaves each shell, along the shell stream
 
   int points() const { return 2 * slices + 1; }
 };

@@ -23,20 +23,6 @@ void check_stream(const Stream& stream, std::string_view side, double outlet, do
          fluids::check_wall(stream.fluid, wall, stream.inlet_pressure, fmt::format("{} wall", side)));
 }
 
-Findings check_outcome(const Unit& unit, const Outcome& outcome) {
-  const Problem& problem = *unit.problem;
-  Findings findings = shellside::check_bundle(unit.bundle);
-  append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
-  append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
-                                        outcome.local.tube_bulk, outcome.local.tube_wall));
-  check_stream(problem.shell_side, "shell side", outcome.shell_outlet, outcome.local.walls.shell_wetted,
-               findings);
-  check_stream(problem.tube_side, "tube side", outcome.tube_outlet, outcome.local.walls.tube_wetted,
-               findings);
-  return findings;
-}
-
-
 }  // namespace
 
 void fill_streams(const Trial& trial, double duty, Outcome& outcome) {
@@ -77,5 +63,17 @@ std::string inlet_fault(const Stream& stream, std::string_view side) {
                      fluids::why_it_ends(stream.fluid, stream.inlet_pressure, above));
 }
 
+Findings check_outcome(const Unit& unit, const Outcome& outcome) {
+  const Problem& problem = *unit.problem;
+  Findings findings = shellside::check_bundle(unit.bundle);
+  append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
+  append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
+                                        outcome.local.tube_bulk, outcome.local.tube_wall));
+  check_stream(problem.shell_side, "shell side", outcome.shell_outlet, outcome.local.walls.shell_wetted,
+               findings);
+  check_stream(problem.tube_side, "tube side", outcome.tube_outlet, outcome.local.walls.tube_wetted,
+               findings);
+  return findings;
+}
 
 }  // namespace dutygauge::rating

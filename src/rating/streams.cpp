@@ -20,7 +20,6 @@ double capacity_rate(const Stream& stream, double outlet, double duty) {
          fluids::state(stream.fluid, stream.inlet_temperature, stream.inlet_pressure).heat_capacity;
 }
 
-
 }  // namespace
 
 double outlet_after(const Stream& stream, double heat_gained) {
@@ -95,6 +94,5 @@ DutyLimit duty_limit(const Problem& problem) {
   if (tube.duty < shell.duty) return {tube.duty, true, tube.fluid_ends};
   return {shell.duty, false, shell.fluid_ends};
 }
-
 
 }  // namespace dutygauge::rating
