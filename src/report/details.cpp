@@ -110,10 +110,10 @@ void sources_used(Page& page, const Result& result) {
   for (const auto* stream : {&result.assessment.problem.shell_side, &result.assessment.problem.tube_side})
     keys.insert(stream->fluid.source);
   std::string name = "SOURCES";
-  page.blank();
   for (const auto& key : keys) {
     const auto citation = sources::citation(key);
     if (citation.empty()) continue;
+    if (!name.empty()) page.blank();
     page.section(name, citation);
     name.clear();
   }

@@ -81,8 +81,9 @@ std::string sentence(const Finding& finding, units::System system) {
   return text;
 }
 
-std::string as_typed(const Assumption& assumption, units::System system) {
-  return assumption.word.empty() ? units::typed(assumption.value, assumption.kind, system) : assumption.word;
+std::string as_typed(const Assumption& assumption, units::System system, int significant) {
+  if (!assumption.word.empty()) return assumption.word;
+  return units::typed(assumption.value, assumption.kind, system, significant);
 }
 
 std::string plain_words(std::string_view key) {

@@ -25,7 +25,7 @@ std::string_view word(tubeside::Regime regime);
 std::string sentence(const Finding& finding, units::System system);
 
 /// The value of an assumption as it would be typed.
-std::string as_typed(const Assumption& assumption, units::System system);
+std::string as_typed(const Assumption& assumption, units::System system, int significant);
 
 /// A key in plain words: "exchanger.clearances.tube_to_baffle" is "clearances tube to baffle".
 std::string plain_words(std::string_view key);
