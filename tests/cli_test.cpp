@@ -160,6 +160,8 @@ TEST_CASE("cli: an unknown command or option is named with the nearest") {
   CHECK(option.status == Status::input_at_fault);
   CHECK(contains(option.err, "unknown option '--jsno'; did you mean '--json'?"));
   CHECK(option.out.empty());
+  CHECK(contains(run({"--versoin"}).err, "did you mean '--version'?"));
+  CHECK(contains(run({"--json", "rate", "x.yaml"}).err, "stand behind it"));
 }
 
 TEST_CASE("cli: options are not abbreviated, not doubled, and keep their values to themselves") {
@@ -283,6 +285,8 @@ TEST_CASE("cli: --out writes a whole file and replaces none without --force") {
   std::size_t files = 0;
   for ([[maybe_unused]] const auto& entry : fs::directory_iterator(folder.path())) ++files;
   CHECK(files == 2);
+  CHECK(run({"rate", folder.path("missing.yaml"), "-o", folder.path("nothing.txt")}).out.empty());
+  CHECK_FALSE(fs::exists(folder.path("nothing.txt")));
 }
 
 TEST_CASE("cli: a result that cannot be written is status 4") {
