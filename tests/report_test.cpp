@@ -348,5 +348,5 @@ TEST_CASE("report: page one holds five findings and five assumptions, -v all of 
 
 TEST_CASE("report: the next steps say where to look") {
   const auto page = report::text(invented_result(), {});
-  CHECK(page.find("Look in the bundle drawing for clearances tube to baffle.") != std::string::npos);
+  CHECK(page.find("Look in the bundle drawing for clearance tube to baffle.") != std::string::npos);
 }

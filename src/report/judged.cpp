@@ -15,11 +15,12 @@ namespace {
 using units::Kind;
 
 constexpr std::size_t most_assumptions = 5, most_findings = 5, most_tasks = 3, most_named = 4;
+constexpr std::string_view unchecked = "Tube vibration and mechanical strength are not checked.";
 
-// "12 % lower", "3 % higher", "the same within 1 %".
+// "12 % lower", "3 % higher", "2.8 times as high", "within 1 %".
 std::string against(double other, double ours) {
   const double fraction = other / ours - 1.0;
-  if (std::abs(fraction) < 0.01) return "the same within 1 %";
+  if (std::abs(fraction) < 0.01) return "within 1 %";
   if (fraction >= 1.0) return fmt::format("{:.1f} times as high", other / ours);
   return fmt::format("{:.0f} % {}", 100.0 * std::abs(fraction), fraction < 0.0 ? "lower" : "higher");
 }
@@ -40,15 +41,15 @@ std::size_t remarks_on_methods(const Findings& findings) {
       findings, [](const Finding& f) { return f.ground == Ground::method && f.severity != Severity::note; }));
 }
 
-std::string_view tightest_line(const service::Assessment& assessment) {
+std::string tightest_line(const service::Assessment& assessment) {
   const auto& demands = assessment.service.demands;
   const auto found = std::ranges::find_if(demands, [&](const service::Demand& demand) {
     return service::key_of(demand.quantity) == assessment.verdict.limited_by;
   });
   if (found == demands.end()) return "";
-  return found->quantity == service::Quantity::duty                ? "The duty"
-         : found->quantity == service::Quantity::shell_side_outlet ? "The shell-side outlet"
-                                                                   : "The tube-side outlet";
+  if (found->quantity == service::Quantity::duty) return "duty";
+  const bool shell = found->quantity == service::Quantity::shell_side_outlet;
+  return stream_name(assessment.problem, shell ? Side::shell : Side::tube) + " outlet";
 }
 
 std::string where_the_difference_goes(const service::Assessment& assessment) {
@@ -150,7 +151,7 @@ void what_limits(Page& page, const Result& result) {
   const auto& assessment = result.assessment;
   std::string name = "WHAT LIMITS";
   if (const auto line = tightest_line(assessment); !line.empty()) {
-    page.section(name, fmt::format("{} is the tightest line of the service.", line));
+    page.section(name, fmt::format("The {} is the tightest line of the service.", line));
     name.clear();
   }
   page.section(name, where_the_difference_goes(assessment) + ".");
@@ -175,10 +176,10 @@ void assumed(Page& page, const Result& result, const TextOptions& options) {
 void rules(Page& page, const Result& result, const TextOptions& options) {
   const auto& findings = result.findings;
   if (findings.empty()) {
-    page.section("RULES", "no finding from the checks made.");
+    page.section("RULES", "No finding from the checks made. " + std::string(unchecked));
     return;
   }
-  page.section("RULES", counted(findings) + ".");
+  page.section("RULES", counted(findings) + ". " + std::string(unchecked));
   const std::size_t shown = options.all ? findings.size() : std::min(findings.size(), most_findings);
   for (std::size_t i = 0; i < shown; ++i) {
     const auto& finding = findings[i];

@@ -90,6 +90,11 @@ std::string plain_words(std::string_view key) {
   for (const std::string_view block : {"exchanger.", "streams."})
     if (key.starts_with(block)) key.remove_prefix(block.size());
   std::string words(key);
+  for (const std::string_view block : {"tube", "baffle", "clearance"}) {
+    if (!key.starts_with(std::string(block) + "s.")) continue;
+    const std::string leaf(key.substr(block.size() + 2));
+    words = leaf.starts_with(block) ? leaf : std::string(block) + " " + leaf;
+  }
   std::ranges::replace_if(
       words, [](char c) { return c == '.' || c == '_'; }, ' ');
   return words;
