@@ -81,7 +81,7 @@ void in_between(Page& page, const service::Assessment& assessment, const Figures
                                figures.unit(Kind::fouling_resistance), resistance(r.tube_film),
                                resistance(r.tube_fouling), resistance(r.wall), resistance(r.shell_fouling),
                                resistance(r.shell_film)));
-  page.section("", fmt::format("An endless surface in counterflow would exchange {}.",
+  page.section("", fmt::format("No surface could exchange more than {} between these streams.",
                                figures.with_unit(assessment.rating.largest_duty, Kind::power)));
 }
 
