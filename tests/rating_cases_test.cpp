@@ -107,8 +107,8 @@ void compare(const json& ours, const json& theirs) {
 }
 
 /// Cases of shells and fluids that are not built yet are refused, and then not compared.
-constexpr const char* not_yet[] = {"case-02", "case-04", "case-06", "case-07", "case-08",
-                                   "case-09", "case-10", "case-12"};
+constexpr const char* not_yet[] = {"case-02", "case-04", "case-06", "case-07",
+                                   "case-08", "case-09", "case-10", "case-12"};
 
 }  // namespace
 
