@@ -3,6 +3,7 @@
 
 #include <algorithm>
 #include <charconv>
+#include <span>
 
 #include "kinds.hpp"
 #include "read.hpp"
@@ -117,14 +118,26 @@ Value read_wall_folded(const std::string& text) {
        "write such a size, or the bore as a length"}};
 }
 
-// The wall [in] of a schedule; "std" where it is left out.
+[[noreturn]] void refuse_schedule(std::string_view text) {
+  throw Refusal{{fmt::format("the schedule in {} is not known", quoted(text)),
+                 "sch 40, sch 80, std or xs was expected", "write such a schedule, or the bore as a length"}};
+}
+
 double pipe_wall(const Pipe& pipe, std::string_view schedule, std::string_view text) {
   if (schedule == "std") return pipe.standard;
   if (schedule == "xs") return pipe.extra_strong;
   if (schedule == "40") return pipe.schedule_40;
   if (schedule == "80") return pipe.schedule_80;
-  throw Refusal{{fmt::format("the schedule in {} is not known", quoted(text)),
-                 "sch 40, sch 80, std or xs was expected", "write such a schedule, or the bore as a length"}};
+  refuse_schedule(text);
+}
+
+// What stands behind the size; empty where nothing does.
+std::string_view schedule_of(std::span<const std::string_view> parts, std::string_view text) {
+  if (parts.empty()) return {};
+  const bool announced = parts[0] == "sch" || parts[0] == "sch." || parts[0] == "schedule";
+  if (announced) parts = parts.subspan(1);
+  if (parts.size() != 1) refuse_schedule(text);
+  return parts[0];
 }
 
 const Pipe& pipe_of(std::string_view size, std::string_view system, std::string_view text) {
@@ -139,26 +152,20 @@ const Pipe& pipe_of(std::string_view size, std::string_view system, std::string_
   return *found;
 }
 
-Value pipe_bore(std::string_view text, std::vector<std::string_view> parts) {
-  const std::string_view system = parts.front();
-  parts.erase(parts.begin());
-  const auto is_size = [](std::string_view word) { return is_digit(word[0]); };
-  const auto size_end = std::ranges::find_if_not(parts, is_size);
+Value pipe_bore(std::string_view text, std::span<const std::string_view> parts) {
+  const std::string_view system = parts[0];
+  parts = parts.subspan(1);
+  const auto size_end =
+      std::ranges::find_if_not(parts, [](std::string_view word) { return is_digit(word[0]); });
   const std::string size = fmt::format("{}", fmt::join(parts.begin(), size_end, " "));
-  std::vector<std::string_view> rest(size_end, parts.end());
   const Pipe& pipe = pipe_of(size, system, text);
-  const std::string name = fmt::format("{} {}", system == "nps" ? "NPS" : "DN", size);
-  if (!rest.empty() && (rest[0] == "sch" || rest[0] == "sch." || rest[0] == "schedule")) {
-    rest.erase(rest.begin());
-    if (rest.empty()) pipe_wall(pipe, "", text);
-  }
-  if (rest.size() > 1) pipe_wall(pipe, "", text);
-  const double wall = pipe_wall(pipe, rest.empty() ? "std" : rest[0], text);
+  const std::string_view schedule = schedule_of({size_end, parts.end()}, text);
+  const double wall = pipe_wall(pipe, schedule.empty() ? "std" : schedule, text);
   Value value;
   value.si = (pipe.outside - 2.0 * wall) * inch;
-  if (rest.empty())
-    value.taken_for_granted.push_back(
-        fmt::format("{} taken with standard wall, {} in (ASME B36.10M)", name, wall));
+  if (schedule.empty())
+    value.taken_for_granted.push_back(fmt::format("{} {} taken with standard wall, {} in (ASME B36.10M)",
+                                                  system == "nps" ? "NPS" : "DN", size, wall));
   return value;
 }
 

@@ -135,7 +135,7 @@ std::string joined(std::string_view text) {
   for (const std::string_view datum : {"(g)", "(a)", " g", " a"}) {
     if (!plain.ends_with(datum)) continue;
     const std::string_view stem = trimmed(std::string_view(plain).substr(0, plain.size() - datum.size()));
-    const std::string whole = fmt::format("{}{}", stem, datum[1]);
+    std::string whole = fmt::format("{}{}", stem, datum[1]);
     const Unit* unit = find_unit(whole);
     if (unit != nullptr && (unit->use == Use::absolute || unit->use == Use::gauge)) return whole;
   }
