@@ -35,4 +35,26 @@ inline dutygauge::geometry::Description complete() {
   return d;
 }
 
+/// An invented 590 mm shell with 19 mm tubes.
+inline dutygauge::geometry::ShellSide shell_side() {
+  dutygauge::geometry::ShellSide s;
+  s.inside_diameter = 0.59;
+  s.bundle_to_shell = 0.0185;
+  s.tube_outside_diameter = 0.01905;
+  s.pitch = 0.02381;
+  s.layout = 30;
+  s.tube_count = 430;
+  s.baffle_cut = 0.25;
+  s.central_spacing = 0.25;
+  s.inlet_spacing = 0.40;
+  s.outlet_spacing = 0.35;
+  s.baffles = 16;
+  s.tube_to_baffle = 0.794e-3;
+  s.shell_to_baffle = 4.8e-3;
+  s.sealing_strip_pairs = 2;
+  s.pass_lane_half_width = 0.0095;
+  s.effective_length = 4.5;
+  return s;
+}
+
 }  // namespace drawing
