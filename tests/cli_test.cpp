@@ -1,10 +1,11 @@
 #include <doctest/doctest.h>
+#include <fcntl.h>
+#include <unistd.h>
 
 #include <algorithm>
 #include <cstdlib>
 #include <filesystem>
 #include <fstream>
-#include <iostream>
 #include <nlohmann/json.hpp>
 #include <sstream>
 #include <string>
@@ -207,7 +208,7 @@ TEST_CASE("cli: one bad case does not stop the others") {
   REQUIRE(lines.size() == 3);
   const auto error = Json::parse(lines[0]);
   CHECK(error["case"]["file"] == "b.yaml");
-  CHECK(contains(error["error"][0].get<std::string>(), "bafles"));
+  CHECK(contains(error["error"].dump(), "bafles"));
   CHECK_FALSE(contains(lines[0], folder.path()));
   CHECK(Json::parse(lines[1])["verdict"]["service_met"] == true);
   CHECK(Json::parse(lines[2])["verdict"]["service_met"] == false);
@@ -245,10 +246,13 @@ TEST_CASE("cli: units change the page and never the JSON") {
 }
 
 TEST_CASE("cli: standard input is a file named -") {
-  std::istringstream text(oil_cooler);
-  auto* before = std::cin.rdbuf(text.rdbuf());
+  const Folder folder;
+  const int file = open(folder.write("piped.yaml", oil_cooler).c_str(), O_RDONLY), before = dup(STDIN_FILENO);
+  REQUIRE(dup2(file, STDIN_FILENO) == STDIN_FILENO);
   const auto ran = run({"rate", "--json", "-"});
-  std::cin.rdbuf(before);
+  dup2(before, STDIN_FILENO);
+  close(before);
+  close(file);
   CHECK(ran.status == Status::done);
   CHECK(Json::parse(ran.out)["case"]["file"] == "-");
   CHECK(contains(run({"rate", "-", "-"}).err, "only once"));

@@ -4,6 +4,7 @@
 
 #include <algorithm>
 #include <cctype>
+#include <cmath>
 #include <iterator>
 #include <utility>
 
@@ -142,6 +143,10 @@ std::string Figures::unit(units::Kind kind) const {
 }
 
 std::string Figures::with_unit(double si, units::Kind kind, int significant) const {
+  if (kind == units::Kind::length && std::abs(si) >= 1.0) {
+    const char* large = system_ == units::System::us ? "ft" : "m";
+    return fmt::format("{:.{}g} {}", units::from_si(si, large, kind), significant, large);
+  }
   const std::string name = unit(kind);
   return number(si, kind, significant) + (name.empty() ? "" : " " + name);
 }
