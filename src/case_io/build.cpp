@@ -38,22 +38,13 @@ rating::Methods methods_of(Reading& reading) {
   return {.shell_side = shell_side == "kern" ? shellside::Method::kern : shellside::Method::bell_delaware};
 }
 
-/// An empty block of demands says nothing: it must not read as a service that is met.
-void check_service(Reading& reading) {
-  for (const char* key :
-       {"service", "service.shell_side_outlet", "service.tube_side_outlet", "service.duty"}) {
-    if (reading.document().blocks.contains(key) && !reading.has_below(key))
-      reading.note(key, "the block is empty", "at least one demand", "fill it in, or leave it out");
-  }
-}
-
 void check_inlets(Reading& reading) {
   const auto shell = si(reading.entries(), "streams.shell_side.inlet.temperature");
   const auto tube = si(reading.entries(), "streams.tube_side.inlet.temperature");
   constexpr double least_difference = 1e-3;  // what no thermometer tells apart [K]
   if (shell && tube && std::abs(*shell - *tube) < least_difference)
     reading.note("streams.tube_side.inlet.temperature",
-                 fmt::format("is the shell side's too, {}: nothing is exchanged",
+                 fmt::format("the shell side enters at {} too: nothing can be exchanged",
                              units::typed(*shell, Kind::temperature)),
                  "two different inlet temperatures", "correct one of them");
 }
@@ -93,7 +84,6 @@ Case build(const Document& document) {
   const auto description = exchanger_of(reading);
   const auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
   check_inlets(reading);
-  check_service(reading);
   const rating::Methods methods = methods_of(reading);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)

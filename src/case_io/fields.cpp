@@ -170,7 +170,7 @@ std::string kind_in_words(const Field& field) {
     case Form::pair:
       return fmt::format("two values a -> b, each {}", units::name(field.kind));
     case Form::fluid:
-      return "a fluid's name, or a block with one of constant, table, two_point";
+      return std::string(known_fluids);
   }
   return {};
 }

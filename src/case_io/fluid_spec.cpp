@@ -132,12 +132,9 @@ std::optional<Made> made_of(Reading& reading, const std::string& key, const Inle
   for (const Family& family : families)
     if (reading.has(joined(key, family.name))) given.push_back(&family);
   if (given.size() == 1) return given[0]->make({reading, joined(key, given[0]->name), inlet});
-  const bool is_empty = given.empty() && !reading.has_below(key);
   if (given.size() > 1)
     reading.note(key, fmt::format("{} and {} are both given", given[0]->name, given[1]->name), "one of them",
                  "leave the others out");
-  else if (is_empty)
-    reading.note(key, "the block is empty", std::string(known_fluids), "give the fluid");
   return {};
 }
 

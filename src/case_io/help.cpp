@@ -90,6 +90,7 @@ std::string starter_case() {
 
 std::optional<FieldHelp> explain(std::string_view key) {
   const Field* field = case_fields().find(key);
+  if (field == nullptr) field = fluid_fields().find(key);
   if (field == nullptr) field = find_by_end(case_fields(), key);
   if (field != nullptr) {
     const std::string need =
@@ -98,7 +99,7 @@ std::optional<FieldHelp> explain(std::string_view key) {
                      fmt::format("{}; {}", field->help, need)};
   }
   if (const Unread* unread = find_unread(key))
-    return FieldHelp{std::string(key), "not read by this version", "to be left out",
+    return FieldHelp{std::string(key), "not read yet by this version", "to be left out",
                      std::string(unread->meaning)};
   return {};
 }

@@ -35,28 +35,34 @@ std::optional<Misread> not_yet(const Field& field, const units::Value& value) {
 }
 
 std::string typed_bound(double bound, Kind kind) {
-  return kind == Kind::ratio ? fmt::format("{:.6g} %", 100.0 * bound) : units::typed(bound, kind);
+  if (kind == Kind::ratio) return fmt::format("{:.6g} %", 100.0 * bound);
+  return units::typed(bound, kind, kind == Kind::length ? units::System::si : units::System::metric);
 }
 
-std::optional<Misread> out_of_bounds(const Field& field, double value, Kind kind) {
+std::optional<Misread> out_of_bounds(const Entry& entry, double value) {
+  const Field& field = *entry.field;
   const Bounds& bounds = field.bounds;
-  const auto refused = [&](std::string what) {
-    return misread(field, std::move(what), "check the value and its unit");
-  };
+  const Kind kind = entry.kind();
   const bool is_below = bounds.least_excluded ? !(value > bounds.least) : !(value >= bounds.least);
-  if (is_below && bounds.least == 0.0) return refused(value < 0.0 ? "is negative" : "is zero");
-  if (is_below)
-    return refused(fmt::format("is below {}, the least that is plausible", typed_bound(bounds.least, kind)));
-  if (!(value <= bounds.most))
-    return refused(fmt::format("is above {}, the most that is plausible", typed_bound(bounds.most, kind)));
-  return {};
+  if (!is_below && value <= bounds.most) return {};
+  std::string why;
+  if (is_below && bounds.least == 0.0)
+    why = value < 0.0 ? "negative" : "zero";
+  else if (is_below)
+    why = fmt::format("below {}, the least that is plausible", typed_bound(bounds.least, kind));
+  else
+    why = fmt::format("above {}, the most that is plausible", typed_bound(bounds.most, kind));
+  const bool lacks_per_cent = kind == Kind::ratio && units::number(entry.text);
+  return misread(field, fmt::format("{} is {}", quoted(entry.text), why),
+                 lacks_per_cent ? fmt::format("write {} % if that is meant", entry.text)
+                                : "check the value and its unit");
 }
 
 /// The checks that every number goes through.
 Outcome checked(Entry entry) {
   const Field& field = *entry.field;
   if (auto mistake = not_yet(field, entry.value)) return *mistake;
-  if (auto mistake = out_of_bounds(field, entry.value.si, entry.kind())) return *mistake;
+  if (auto mistake = out_of_bounds(entry, entry.value.si)) return *mistake;
   return entry;
 }
 
@@ -85,7 +91,7 @@ Outcome read_angle(Entry entry) {
 
 Outcome read_flow(Entry entry) {
   if (entry.text == "from_duty")
-    return misread(*entry.field, "a flow found from a duty is not read by this version", "give the flow");
+    return misread(*entry.field, "a flow found from a duty is not read yet by this version", "give the flow");
   auto read = units::read_flow(entry.text);
   if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
   units::Flow& flow = std::get<units::Flow>(read);
@@ -102,7 +108,7 @@ Outcome read_pair(Entry entry) {
   units::Pair& pair = std::get<units::Pair>(read);
   for (const units::Value* value : {&pair.first, &pair.second}) {
     if (auto mistake = not_yet(*entry.field, *value)) return *mistake;
-    if (auto mistake = out_of_bounds(*entry.field, value->si, entry.field->kind)) return *mistake;
+    if (auto mistake = out_of_bounds(entry, value->si)) return *mistake;
   }
   entry.value = std::move(pair.first);
   entry.second = pair.second.si;
@@ -115,10 +121,10 @@ Outcome read_word(Entry entry) {
   if (field.key == "methods.solution" && entry.text == "march")
     return misread(field, "the solution 'march' is not there yet", "write mean, or leave the key out");
   if (field.key == "methods.shell_side" && entry.text == "scaled")
-    return misread(field, "the shell side scaled from a sheet is not read by this version",
+    return misread(field, "the shell side scaled from a sheet is not read yet by this version",
                    "give the baffles and write bell_delaware or kern");
   const auto near = nearest(entry.text, field.words);
-  return misread(field, quoted(entry.text) + " is not one of its words",
+  return misread(field, quoted(entry.text) + " is not known here",
                  near.empty() ? "write one of them" : fmt::format("write {}", near));
 }
 
@@ -126,7 +132,7 @@ Outcome read_boolean(Entry entry) {
   if (entry.text == "true" || entry.text == "false") return entry;
   const bool is_yes =
       entry.text == "yes" || entry.text == "on" || entry.text == "Yes" || entry.text == "True";
-  return misread(*entry.field, quoted(entry.text) + " is neither",
+  return misread(*entry.field, quoted(entry.text) + " is neither true nor false",
                  is_yes ? "write true" : "write true or false");
 }
 

@@ -97,9 +97,18 @@ void Reading::note(const std::string& key, std::string what, std::string expecte
   mistakes_.push_back({position_of(key), key, std::move(what), std::move(expected), std::move(remedy)});
 }
 
+bool Reading::is_at_fault_within(std::string_view key) const {
+  const auto next = at_fault_.lower_bound(std::string(key) + '.');
+  return is_at_fault(key) || (next != at_fault_.end() && parent_of(*next) == key);
+}
+
+std::string Reading::expected_in(const Field& field) const {
+  return field.form == Form::block ? keys_of(table_, field.key) : expected_of(field);
+}
+
 void Reading::note_all(const Objections& objections) {
   for (const Objection& objection : objections)
-    if (!is_at_fault(objection.key))
+    if (!is_at_fault_within(objection.key))
       note(objection.key, objection.what, objection.expected, objection.remedy);
 }
 
@@ -125,8 +134,8 @@ void Reading::check_keys() {
 void Reading::check_key(const std::string& key, const Position& at, bool is_block, bool is_list) {
   if (is_refused(key)) return;
   if (const Unread* unread = find_unread(key))
-    return refuse(key, at, fmt::format("{} are not read by this version", unread->meaning),
-                  "only what it can rate", is_block ? "leave the block out" : "leave the key out");
+    return refuse(key, at, fmt::format("not read yet by this version: {}", unread->meaning),
+                  keys_of(table_, parent_of(key)), is_block ? "leave the block out" : "leave the key out");
   const Field* field = table_.find(key);
   const Field* block = table_.find(parent_of(key));
   if (field == nullptr && block != nullptr && block->form == Form::fluid && is_later_fluid(last_segment(key)))
@@ -135,7 +144,11 @@ void Reading::check_key(const std::string& key, const Position& at, bool is_bloc
   if (field == nullptr) return refuse_unknown(key, at);
   const bool fits =
       is_block ? takes_block(field->form) && (is_list == takes_list(field->form)) : takes_value(field->form);
-  if (!fits) refuse_shape(key, at, *field, is_block, is_list);
+  if (!fits)
+    refuse_shape(key, at, *field, is_block, is_list);
+  else if (is_block && !has_below(key))
+    refuse(key, at, is_list ? "the list is empty" : "the block is empty", expected_in(*field),
+           "fill it in, or leave it out");
 }
 
 void Reading::refuse_unknown(const std::string& key, const Position& at) {
@@ -148,11 +161,10 @@ void Reading::refuse_shape(const std::string& key, const Position& at, const Fie
                            bool is_list) {
   const auto leaf = document_.leaves.find(key);
   if (leaf != document_.leaves.end() && leaf->second.text.empty())
-    return refuse(key, at, "the block is empty", keys_of(table_, key), "fill it in, or leave it out");
+    return refuse(key, at, "the block is empty", expected_in(field), "fill it in, or leave it out");
   const std::string_view found = is_list ? "a list" : is_block ? "a block of keys" : "a single value";
   const bool wants_value = takes_value(field.form);
-  refuse(key, at, fmt::format("{} stands here", found),
-         field.form == Form::block ? keys_of(table_, key) : expected_of(field),
+  refuse(key, at, fmt::format("{} stands here", found), expected_in(field),
          wants_value && is_list ? "write one value; a decimal is written with a point, not a comma"
          : wants_value          ? "write the value behind the colon"
                                 : "write its keys below it, indented, or in { }");
@@ -180,8 +192,7 @@ void Reading::require(const Field& field, const std::string& parent) {
   if (has_neighbour) return;
   const std::string help = field.help.empty() ? "" : fmt::format(" ({})", field.help);
   const std::string neighbour = field.instead.empty() ? "" : fmt::format(", or {}", field.instead);
-  note(key, "is missing", (field.form == Form::block ? keys_of(table_, key) : expected_of(field)) + help,
-       "add it" + neighbour);
+  note(key, "is missing", expected_in(field) + help, "add it" + neighbour);
 }
 
 }  // namespace dutygauge::case_io

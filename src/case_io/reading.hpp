@@ -63,6 +63,9 @@ class Reading {
   const std::vector<Mistake>& mistakes() const { return mistakes_; }
 
  private:
+  /// Whether a mistake of the key, or of an item of its list, is noted.
+  bool is_at_fault_within(std::string_view key) const;
+  std::string expected_in(const Field& field) const;
   void check_keys();
   void check_key(const std::string& key, const Position& at, bool is_block, bool is_list);
   bool is_refused(std::string_view key) const;

@@ -2,6 +2,7 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <vector>
 
 #include "wording.hpp"
@@ -48,14 +49,17 @@ const Field* nearest_child(const FieldTable& table, std::string_view block, std:
 const Field* elsewhere(const FieldTable& table, std::string_view key) {
   const auto typed = last_segment(key);
   const Field* best = nullptr;
-  std::size_t best_shared = 0;
+  std::size_t best_shared = 0, best_depth = 0;
   for (const Field& field : table.all()) {
     const auto name = last_segment(field.key);
     if (name.size() < 2 || distance(typed, name) > 0) continue;
     const std::size_t shared = shared_segments(field.key, key);
-    if (best != nullptr && shared <= best_shared) continue;
+    const auto depth = static_cast<std::size_t>(std::ranges::count(field.key, '.'));
+    const bool is_nearer = shared > best_shared || (shared == best_shared && depth < best_depth);
+    if (best != nullptr && !is_nearer) continue;
     best = &field;
     best_shared = shared;
+    best_depth = depth;
   }
   return best;
 }
@@ -87,11 +91,12 @@ Suggestion suggest(const FieldTable& table, std::string_view key) {
     const auto name = last_segment(near->key);
     return {joined(block, name), std::string(name), fmt::format("write {}", name)};
   }
-  if (const Field* other = elsewhere(table, key))
-    return {
-        "", fmt::format("it under {}", parent_of(other->key).empty() ? "no block" : parent_of(other->key)),
-        fmt::format("it belongs under {}: move it there, {}",
-                    parent_of(other->key).empty() ? "the file itself" : parent_of(other->key), other->key)};
+  if (const Field* other = elsewhere(table, key)) {
+    const auto home = parent_of(other->key);
+    return {"", other->key,
+            home.empty() ? std::string("it belongs into no block: move it to the left margin")
+                         : fmt::format("it belongs under {}: move it there", home)};
+  }
   return {"", keys_of(table, block), "correct the key, or leave it out"};
 }
 
