@@ -21,12 +21,13 @@ LEVELS = [
     {"cli"},
 ]
 LEVEL_OF = {module: level for level, modules in enumerate(LEVELS) for module in modules}
-INCLUDE = re.compile(r'^\s*#include "dutygauge/(\w+)\.hpp"', re.M)
+INCLUDE = re.compile(r'^\s*#include "dutygauge/(\w+)(?:/\w+)?\.hpp"', re.M)
 
 
 def main():
     root = pathlib.Path(__file__).resolve().parent.parent
     files = [(p, p.stem) for p in (root / "include/dutygauge").glob("*.hpp")]
+    files += [(p, p.parent.name) for p in (root / "include/dutygauge").glob("*/*.hpp")]
     files += [(p, p.parent.name) for p in (root / "src").glob("*/*.[ch]pp")]
     faults = []
     for path, module in sorted(files):

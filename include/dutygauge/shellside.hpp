@@ -122,6 +122,7 @@ Bundle prepare(const geometry::ShellSide& drawing, Method method);
 ///         J_s = [(N_b-1) + l_i^(1-n) + l_o^(1-n)]/[(N_b-1) + l_i + l_o], n = 1/3 laminar, 0.6
 ///         J_r = (10/N_c)^0.18 up to Re 20, linear to 1 at Re 100; within 0.4 and 1
 ///     Kern:           h = 0.36 (k/D_e) Re^0.55 Pr^(1/3) J_mu, 2e3 < Re < 1e6
+///         D_e = 4 (pitch cell - pi D_t^2/4)/(pi D_t), G = m p_t/[D_s (p_t - D_t) L_bc]
 ///     both:           J_mu = (mu/mu_w)^0.14; gas (T/T_w)^0.25 if heated, else 1
 ///
 /// The film of Re below 0.01 is that of Re = 0.01, so that no flow still has a film.

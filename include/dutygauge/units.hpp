@@ -66,10 +66,10 @@ struct Value {
 
 /// A written flow: mass, or volume with the place where it is measured.
 struct Flow {
-  Value amount;  ///< [kg/s] or [m3/s]
+  Value amount;  ///< [kg/s] or [m3/s]; its own notes stand in the list below
   FlowBasis basis = FlowBasis::mass;
-  double basis_temperature = 0;  ///< [K], for FlowBasis::temperature
-  std::vector<std::string> taken_for_granted;
+  double basis_temperature = 0;                ///< [K], for FlowBasis::temperature
+  std::vector<std::string> taken_for_granted;  ///< of amount and place
 };
 
 /// A written pair "a -> b": the inlet and the outlet column of a sheet.
@@ -95,17 +95,25 @@ using Read = std::variant<T, Misread>;
 /// that has a single meaning: quantities with or without a blank before the
 /// unit, inch fractions ("3/4 in", "1 1/4 in"), ranges ("10..14 in"),
 /// deviations ("12 +- 1 in", "12 in +- 5 %"). Bare numbers only for ratio,
-/// count, mass_fraction and angle.
+/// count, mass_fraction and angle. One unit at the end serves both numbers of a
+/// range or a deviation. Never throws on a text, whatever is in it.
 Read<Value> read(std::string_view text, Kind kind);
 
+/// A mass flow, or a volume flow "at inlet", "at 60 degF" or in Nm3, Sm3, scf.
 Read<Flow> read_flow(std::string_view text);
+
+/// "165 -> 105 degF": one unit at the end serves both.
 Read<Pair> read_pair(std::string_view text, Kind kind);
+
+/// "0.55 Btu/lb.degF at 135 degF".
 Read<ValueAt> read_value_at(std::string_view text, Kind kind);
 
-/// Tube wall [m]: a length, or a gauge ("14 BWG", "14 BWG min" = 1.10 x the gauge).
+/// Tube wall [m]: a length, or a gauge ("14 BWG"). "14 BWG min" is 1.10 x the
+/// gauge, with 1.0 and 1.2 x the gauge as low and high.
 Read<Value> read_wall(std::string_view text);
 
-/// Bore [m]: a length, or a nominal pipe ("NPS 8 sch 40", "DN 200").
+/// Bore [m]: a length, or a nominal pipe ("NPS 8 sch 40", "DN 200"). Without a
+/// schedule: standard wall, taken for granted.
 Read<Value> read_bore(std::string_view text);
 
 /// A whole-field number: no blanks, no comma, finite; empty otherwise.
@@ -124,10 +132,12 @@ std::string_view shown_unit(Kind kind, System system);
 /// The SI unit of a kind as used in the JSON result ("W/m2.K"; temperatures: "degC").
 std::string_view json_unit(Kind kind);
 
-/// si as it would be shown: the number with `significant` digits, no unit.
+/// si as it would be shown: the number with `significant` digits, no unit. Plain
+/// digits from 1e-5 to 1e9; temperatures with `significant` - 3 decimals, as the
+/// zero of their scale does not make them more exact. Throws on NaN and infinity.
 std::string shown_number(double si, Kind kind, System system, int significant = 4);
 
-/// si as it would be typed: number, blank, unit ("19.05 mm").
+/// si as it would be typed: number, blank, unit ("19.05 mm"); `read` takes it back.
 std::string typed(double si, Kind kind, System system = System::metric, int significant = 5);
 
 /// The kind's name in words ("a length"), for messages.

@@ -19,7 +19,8 @@ std::string line_of(const std::string& file, const Mistake& mistake) {
   if (!mistake.key.empty()) line += shown(mistake.key, longest_key) + ": ";
   line += mistake.what;
   if (!mistake.expected.empty())
-    line += (mistake.expected.starts_with("expected") ? "; " : "; expected ") + mistake.expected;
+    line +=
+        (mistake.expected.find("expected") != std::string::npos ? "; " : "; expected ") + mistake.expected;
   if (!mistake.remedy.empty()) line += "; " + mistake.remedy;
   return line;
 }

@@ -13,7 +13,7 @@ constexpr Option rate_options[] = {
     {"jobs", "", "N", "rate N cases at a time; the result is the same for any N"},
     out_option,
     force_option,
-    {"verbose", "v", "", "all findings and assumptions with their sources; what is being done, on stderr"},
+    {"verbose", "v", "", "all findings and assumptions, with sources; what was done, on stderr"},
     {"quiet", "q", "", "no notes on stderr, errors only"}};
 
 constexpr std::string_view explain_examples[] = {

@@ -175,7 +175,8 @@ int run_rate(const Call& call, Streams streams) {
     for (const auto& message : all[i].messages) streams.err << message << '\n';
     log.progress(fmt::format("{}: status {}", files[i], all[i].status));
   }
-  deliver(call, joined(all, wishes.json), streams.out);
+  // Without any result a file named by --out is left as it was.
+  if (const auto text = joined(all, wishes.json); !text.empty()) deliver(call, text, streams.out);
   return status_of(all);
 }
 

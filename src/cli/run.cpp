@@ -12,15 +12,21 @@
 namespace dutygauge::cli {
 namespace {
 
+constexpr std::string_view own_options[] = {"--help", "--version"};
+
 const Command& command_named(const std::string& name) {
+  if (name.starts_with("-"))
+    throw CallError(
+        fmt::format("unknown option '{}'{}; the options of a command stand behind it; see "
+                    "'dutygauge --help'",
+                    name, did_you_mean(name, own_options)));
   const auto all = commands();
   const auto found = std::ranges::find(all, name, &Command::name);
   if (found != all.end()) return *found;
   std::vector<std::string_view> names;
   for (const auto& command : all) names.push_back(command.name);
-  const char* what = name.starts_with("-") ? "option" : "command";
   throw CallError(
-      fmt::format("unknown {} '{}'{}; see 'dutygauge --help'", what, name, did_you_mean(name, names)));
+      fmt::format("unknown command '{}'{}; see 'dutygauge --help'", name, did_you_mean(name, names)));
 }
 
 int dispatch(const std::vector<std::string>& arguments, Streams streams) {

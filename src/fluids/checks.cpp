@@ -1,8 +1,9 @@
 #include <fmt/core.h>
 
+#include <algorithm>
 #include <cmath>
 
-#include "models.hpp"
+#include "limits.hpp"
 
 // What has to be said about the temperatures at which a converged result used a fluid.
 
@@ -11,11 +12,14 @@ namespace {
 
 // A temperature found by iteration may stand past an end by rounding alone [K].
 constexpr double rounding = 1e-6;
+constexpr double phase_margin_temperature = 3.0;  // [K] nearer to boiling or freezing is remarked on
 
 /// Where a temperature lies outside a range; `beyond` is 0 inside.
 struct Outside {
   double beyond, limit;
   bool upper;
+
+  const char* side() const { return upper ? "above" : "below"; }
 };
 
 Outside outside(TemperatureRange range, double temperature) {
@@ -35,70 +39,161 @@ Finding at_temperature(std::string id, Severity severity, std::string text, doub
           .source = ""};
 }
 
-/// Water on the point of boiling or freezing.
-void remark_on_water(const Fluid& fluid, double temperature, double pressure, std::string_view where,
+bool changes_phase(const Fluid& fluid, double pressure, bool upper) {
+  return std::visit(
+      [&](const auto& model) { return changes_phase_at_end(model, fluid.phase, pressure, upper); },
+      fluid.model);
+}
+
+/// "density, heat capacity and viscosity"
+std::string list(const std::vector<std::string>& words) {
+  std::string text;
+  for (std::size_t i = 0; i < words.size(); ++i)
+    text += (i == 0 ? "" : i + 1 == words.size() ? " and " : ", ") + words[i];
+  return text;
+}
+
+/// The properties whose data do not reach a temperature, and by how much at most.
+struct Extrapolated {
+  std::vector<std::string> properties;
+  Outside worst{0.0, 0.0, false};
+};
+
+Extrapolated extrapolated(const Fluid& fluid, double temperature) {
+  Extrapolated result;
+  for (const PropertyNote& note : notes(fluid)) {
+    const Outside place = outside(note.valid, temperature);
+    if (place.beyond <= 0.0) continue;
+    std::string word(note.property);
+    std::ranges::replace(word, '_', ' ');
+    result.properties.push_back(word);
+    if (place.beyond > result.worst.beyond) result.worst = place;
+  }
+  return result;
+}
+
+void remark_on_extrapolation(const Fluid& fluid, double temperature, double pressure, std::string_view where,
+                             Findings& findings) {
+  const Extrapolated found = extrapolated(fluid, temperature);
+  const Outside valid = outside(valid_temperatures(fluid, pressure), temperature);
+  if (!found.properties.empty())
+    findings.push_back(at_temperature(
+        "fluids.extrapolated", Severity::should,
+        fmt::format("{}: {} is {:.1f} K {} the data of the {} ({}); its {} {} extrapolated; give data that "
+                    "reach this temperature",
+                    where, celsius(temperature), found.worst.beyond, found.worst.side(), fluid.name,
+                    celsius(found.worst.limit), list(found.properties),
+                    found.properties.size() == 1 ? "is" : "are"),
+        temperature, found.worst.limit));
+  else if (valid.beyond > 0.0)
+    findings.push_back(at_temperature(
+        "fluids.dense_gas", Severity::should,
+        fmt::format("{}: at {} and {:.4g} bar {} is so dense that its density and heat capacity may be 5 to "
+                    "10 % wrong; they are reliable from {}; give a table",
+                    where, celsius(temperature), pressure * 1e-5, fluid.name, celsius(valid.limit)),
+        temperature, valid.limit));
+}
+
+/// A liquid on the point of boiling or freezing. Water freezes from 274 K on, solutions are given 3 K.
+void remark_on_phase(const Fluid& fluid, double temperature, double pressure, std::string_view where,
                      Findings& findings) {
-  if (!std::holds_alternative<WaterModel>(fluid.model) || fluid.phase != Phase::liquid) return;
+  if (fluid.phase != Phase::liquid) return;
   const TemperatureRange range = usable_temperatures(fluid, pressure);
-  if (temperature > range.high - 3.0)
+  if (temperature > range.high - phase_margin_temperature && changes_phase(fluid, pressure, true))
     findings.push_back(at_temperature(
         "fluids.near_boiling", Severity::should,
-        fmt::format("{}: water at {} is within 3 K of boiling ({}); the pressure drop alone may make it "
-                    "flash, and no two-phase flow is considered; check the lowest pressure",
-                    where, celsius(temperature), celsius(range.high)),
+        fmt::format("{}: {} at {} is within 3 K of boiling ({}); the pressure drop alone may make it flash, "
+                    "and no two-phase flow is considered; check the lowest pressure",
+                    where, fluid.name, celsius(temperature), celsius(range.high)),
         temperature, range.high));
-  if (temperature < 274.0)
+  const double margin =
+      std::holds_alternative<WaterModel>(fluid.model) ? 274.0 - range.low : phase_margin_temperature;
+  if (temperature < range.low + margin && changes_phase(fluid, pressure, false))
     findings.push_back(
         at_temperature("fluids.near_freezing", Severity::should,
-                       fmt::format("{}: water at {} is about to freeze; ice would block the unit", where,
-                                   celsius(temperature)),
-                       temperature, 273.15));
+                       fmt::format("{}: {} at {} is about to freeze ({}); ice would block the unit", where,
+                                   fluid.name, celsius(temperature), celsius(range.low)),
+                       temperature, range.low));
+}
+
+void remark_on_viscosity(const Fluid& fluid, double temperature, double pressure, std::string_view where,
+                         Findings& findings) {
+  if (fluid.phase != Phase::liquid) return;
+  const State at = state(fluid, temperature, pressure);
+  if (at.viscosity <= 1.0 && at.viscosity <= 1e-3 * at.density) return;
+  findings.push_back(
+      {.id = "fluids.very_viscous",
+       .severity = Severity::should,
+       .text = fmt::format("{}: {} at {} has a viscosity of {:.3g} Pa.s; near its pour point it may "
+                           "not flow at all; compare the pour point",
+                           where, fluid.name, celsius(temperature), at.viscosity),
+       .ground = Ground::judgement,
+       .value = at.viscosity,
+       .limit = 1.0,
+       .kind = units::Kind::viscosity,
+       .source = "common_practice"});
+}
+
+/// Two published fits of seawater, of the heat capacity and of the enthalpy, part in hot and strong brines.
+void remark_on_seawater(const Fluid& fluid, double temperature, double pressure, std::string_view where,
+                        Findings& findings) {
+  const auto* model = std::get_if<SeawaterModel>(&fluid.model);
+  if (model == nullptr) return;
+  const double slope = caloric_of(*model, fluid.phase, temperature, pressure).heat_capacity;
+  const double ratio = slope / state_of(*model, fluid.phase, temperature, pressure).heat_capacity;
+  if (std::abs(ratio - 1.0) <= 0.015) return;
+  findings.push_back(
+      {.id = "fluids.seawater_enthalpy",
+       .severity = Severity::should,
+       .text = fmt::format("{}: the published enthalpy of seawater rises {:.1f} % {} than its published heat "
+                           "capacity at {}; a duty may be wrong by as much",
+                           where, 100.0 * std::abs(ratio - 1.0), ratio < 1.0 ? "less" : "more",
+                           celsius(temperature)),
+       .ground = Ground::method,
+       .value = ratio,
+       .limit = 1.0,
+       .source = "nayar_2016"});
 }
 
 }  // namespace
 
 Findings check_bulk(const Fluid& fluid, double temperature, double pressure, std::string_view where) {
-  Findings findings;
-  const Outside valid = outside(valid_temperatures(fluid, pressure), temperature);
   const Outside usable = outside(usable_temperatures(fluid, pressure), temperature);
   if (usable.beyond > 0.0)
-    findings.push_back(
-        at_temperature("fluids.beyond_usable", Severity::must,
-                       fmt::format("{}: {} at {} is {:.1f} K {} what can be computed: {}", where, fluid.name,
-                                   celsius(temperature), usable.beyond, usable.upper ? "above" : "below",
-                                   why_it_ends(fluid, pressure, usable.upper)),
-                       temperature, usable.limit));
-  else if (valid.beyond > 0.0)
-    findings.push_back(at_temperature(
-        "fluids.extrapolated", Severity::should,
-        fmt::format("{}: {} is {:.1f} K {} the range of the {} ({}); density, heat capacity, conductivity "
-                    "and viscosity are extrapolated; give data that reach this temperature",
-                    where, celsius(temperature), valid.beyond, valid.upper ? "above" : "below", fluid.name,
-                    celsius(valid.limit)),
-        temperature, valid.limit));
-  else
-    remark_on_water(fluid, temperature, pressure, where, findings);
+    return {at_temperature("fluids.beyond_usable", Severity::must,
+                           fmt::format("{}: {} at {} is {:.1f} K {} what can be computed: {}", where,
+                                       fluid.name, celsius(temperature), usable.beyond, usable.side(),
+                                       why_it_ends(fluid, pressure, usable.upper)),
+                           temperature, usable.limit)};
+  Findings findings;
+  remark_on_extrapolation(fluid, temperature, pressure, where, findings);
+  remark_on_phase(fluid, temperature, pressure, where, findings);
+  remark_on_viscosity(fluid, temperature, pressure, where, findings);
+  remark_on_seawater(fluid, temperature, pressure, where, findings);
   return findings;
 }
 
 Findings check_wall(const Fluid& fluid, double temperature, double pressure, std::string_view where) {
+  Findings findings;
+  const Outside usable = outside(usable_temperatures(fluid, pressure), temperature);
   const Outside valid = outside(valid_temperatures(fluid, pressure), temperature);
-  if (valid.beyond <= 0.0) return {};
-  if (std::holds_alternative<WaterModel>(fluid.model) && (valid.upper == (fluid.phase == Phase::liquid)))
-    return {at_temperature(
+  if (usable.beyond > 0.0 && changes_phase(fluid, pressure, usable.upper))
+    findings.push_back(at_temperature(
         "fluids.wall_changes_phase", Severity::should,
-        fmt::format("{}: the wall at {} is {:.1f} K {} the {} of {}, whose phase changes there ({}); its "
-                    "film is computed in one phase, with the properties at that limit",
-                    where, celsius(temperature), valid.beyond, valid.upper ? "above" : "below",
-                    celsius(valid.limit), fluid.name, why_it_ends(fluid, pressure, valid.upper)),
-        temperature, valid.limit)};
-  return {at_temperature(
-      "fluids.wall_outside", Severity::note,
-      fmt::format("{}: the wall at {} is {:.1f} K {} the range of the {}; the wall correction uses the "
-                  "properties at {}",
-                  where, celsius(temperature), valid.beyond, valid.upper ? "above" : "below", fluid.name,
-                  celsius(valid.limit)),
-      temperature, valid.limit)};
+        fmt::format("{}: the wall at {} is {:.1f} K {} the {} where {} changes its phase ({}); its film is "
+                    "computed in one phase, with the properties at that limit",
+                    where, celsius(temperature), usable.beyond, usable.side(), celsius(usable.limit),
+                    fluid.name, why_it_ends(fluid, pressure, usable.upper)),
+        temperature, usable.limit));
+  else if (valid.beyond > 0.0)
+    findings.push_back(at_temperature(
+        "fluids.wall_outside", Severity::note,
+        fmt::format("{}: the wall at {} is {:.1f} K {} the range of the {}; the wall correction uses the "
+                    "properties at {}",
+                    where, celsius(temperature), valid.beyond, valid.side(), fluid.name,
+                    celsius(valid.limit)),
+        temperature, valid.limit));
+  return findings;
 }
 
 Findings check_span(const Fluid& fluid, Span temperatures, std::string_view where) {

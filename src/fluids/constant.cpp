@@ -1,4 +1,4 @@
-#include "models.hpp"
+#include "equations.hpp"
 
 namespace dutygauge::fluids {
 namespace {
@@ -32,6 +32,17 @@ double guess_temperature(const ConstantModel& model, Phase, double enthalpy, dou
 
 std::string end_of(const ConstantModel&, Phase, double, bool) {
   return "constant properties name no range";
+}
+
+bool changes_phase_at_end(const ConstantModel&, Phase, double, bool) {
+  return false;
+}
+
+std::vector<PropertyNote> notes_of(const ConstantModel&, Phase) {
+  std::vector<PropertyNote> notes;
+  for (const char* property : {"density", "heat_capacity", "conductivity", "viscosity"})
+    notes.push_back({property, "", everywhere, 0.0});
+  return notes;
 }
 
 }  // namespace dutygauge::fluids

@@ -3,7 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
-#include "models.hpp"
+#include "limits.hpp"
 
 namespace dutygauge::fluids {
 namespace {
@@ -11,8 +11,8 @@ namespace {
 /// The temperature at which the model has an enthalpy: Newton steps on the model's own
 /// enthalpy, kept inside the usable range and between the ends already tried.
 template <class Model>
-double solve_temperature(const Model& model, Phase phase, double enthalpy, double pressure) {
-  const TemperatureRange range = limits_of(model, phase, pressure).usable;
+double solve_temperature(const Model& model, Phase phase, double enthalpy, double pressure,
+                         TemperatureRange range) {
   double low = range.low, high = range.high;
   bool low_tried = false, high_tried = false;
   double t = std::clamp(guess_temperature(model, phase, enthalpy, pressure), low, high);
@@ -38,6 +38,20 @@ double solve_temperature(const Model& model, Phase phase, double enthalpy, doubl
   return t;
 }
 
+/// As above within the usable range. Where the phase boundary takes a search, it is looked
+/// for only if the temperature turns out to lie beyond it.
+template <class Model>
+double solve_temperature(const Model& model, Phase phase, double enthalpy, double pressure) {
+  if constexpr (Searched<Model>) {
+    const double t = solve_temperature(model, phase, enthalpy, pressure, reach_of(model).usable);
+    if (phase_margin(model, {t, pressure}, false) >= 0.0) return t;
+    const TemperatureRange usable = limits_of(model, phase, pressure).usable;
+    return std::clamp(t, usable.low, usable.high);
+  } else {
+    return solve_temperature(model, phase, enthalpy, pressure, limits_of(model, phase, pressure).usable);
+  }
+}
+
 Limits limits(const Fluid& fluid, double pressure) {
   return std::visit([&](const auto& model) { return limits_of(model, fluid.phase, pressure); }, fluid.model);
 }
@@ -48,21 +62,59 @@ std::string celsius(double temperature) {
   return fmt::format("{:.1f} degC", temperature - 273.15);
 }
 
+Made refused(std::string key, std::string what, std::string expected, std::string remedy) {
+  Made made;
+  made.objections.push_back({std::move(key), std::move(what), std::move(expected), std::move(remedy)});
+  return made;
+}
+
 State state(const Fluid& fluid, double temperature, double pressure) {
-  return std::visit([&](const auto& model) { return state_of(model, fluid.phase, temperature, pressure); },
-                    fluid.model);
+  State at = std::visit(
+      [&](const auto& model) { return state_of(model, fluid.phase, temperature, pressure); }, fluid.model);
+  at.density *= fluid.scale.density;
+  at.heat_capacity *= fluid.scale.heat_capacity;
+  at.conductivity *= fluid.scale.conductivity;
+  at.viscosity *= fluid.scale.viscosity;
+  at.enthalpy *= fluid.scale.heat_capacity;
+  return at;
 }
 
 double enthalpy(const Fluid& fluid, double temperature, double pressure) {
-  return std::visit(
-      [&](const auto& model) { return caloric_of(model, fluid.phase, temperature, pressure).enthalpy; },
-      fluid.model);
+  return fluid.scale.heat_capacity *
+         std::visit(
+             [&](const auto& model) {
+               return caloric_of(model, fluid.phase, temperature, pressure).enthalpy;
+             },
+             fluid.model);
 }
 
 double temperature_at(const Fluid& fluid, double enthalpy, double pressure) {
+  const double unscaled = enthalpy / fluid.scale.heat_capacity;
   return std::visit(
-      [&](const auto& model) { return solve_temperature(model, fluid.phase, enthalpy, pressure); },
+      [&](const auto& model) { return solve_temperature(model, fluid.phase, unscaled, pressure); },
       fluid.model);
+}
+
+double reference_density(const Fluid& fluid, double temperature, double pressure) {
+  return state(fluid, temperature, pressure).density;
+}
+
+std::vector<PropertyNote> notes(const Fluid& fluid) {
+  return std::visit([&](const auto& model) { return notes_of(model, fluid.phase); }, fluid.model);
+}
+
+Objections object_to_inlet(const Fluid& fluid, Inlet inlet) {
+  if (!(inlet.pressure > 0.0) || !std::isfinite(inlet.pressure) || !std::isfinite(inlet.temperature))
+    return {{"", "the inlet's temperature or pressure is impossible", "an absolute pressure above zero",
+             "correct the inlet"}};
+  const TemperatureRange usable = usable_temperatures(fluid, inlet.pressure);
+  const bool above = inlet.temperature > usable.high;
+  if (!above && inlet.temperature >= usable.low) return {};
+  return {{"",
+           fmt::format("{} cannot be used at {} and {:.4g} bar: {}", fluid.name, celsius(inlet.temperature),
+                       inlet.pressure * 1e-5, why_it_ends(fluid, inlet.pressure, above)),
+           fmt::format("an inlet between {} and {}", celsius(usable.low), celsius(usable.high)),
+           "correct the inlet, or give the properties as two_point or table"}};
 }
 
 TemperatureRange valid_temperatures(const Fluid& fluid, double pressure) {

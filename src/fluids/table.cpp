@@ -3,7 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
-#include "models.hpp"
+#include "equations.hpp"
 
 // Monotone cubic interpolation of user rows, and its exact integral for the enthalpy.
 // Slopes: Fritsch & Butland, SIAM J. Sci. Stat. Comput. 5, 300-304 (1984), one-sided at the ends.
@@ -137,6 +137,18 @@ std::string end_of(const TableModel& model, Phase, double, bool upper) {
                      model.temperature.size() == 2 ? "the two given points end" : "the table ends",
                      celsius(upper ? model.temperature.back() : model.temperature.front()),
                      celsius(upper ? model.usable.high : model.usable.low));
+}
+
+bool changes_phase_at_end(const TableModel&, Phase, double, bool) {
+  return false;
+}
+
+std::vector<PropertyNote> notes_of(const TableModel& model, Phase) {
+  const TemperatureRange rows{model.temperature.front(), model.temperature.back()};
+  std::vector<PropertyNote> notes;
+  for (const char* property : {"density", "heat_capacity", "conductivity", "viscosity"})
+    notes.push_back({property, "", rows, 0.0});
+  return notes;
 }
 
 }  // namespace dutygauge::fluids

@@ -4,7 +4,7 @@
 #include <cmath>
 #include <string>
 
-#include "models.hpp"
+#include "equations.hpp"
 
 // Fluids from the user's own numbers, and what such numbers often get wrong.
 

@@ -17,14 +17,9 @@ double in_domain(double temperature, Phase phase) {
   return std::clamp(temperature, 230.0, phase == Phase::liquid ? 700.0 : 1078.0);
 }
 
-Made refused(std::string what, std::string expected, std::string remedy) {
-  Made made;
-  made.objections.push_back({"", std::move(what), std::move(expected), std::move(remedy)});
-  return made;
-}
-
 Made refused_range(const std::string& what) {
-  return refused(what, "water between 0 and 800 degC and up to 1000 bar, outside the near-critical region",
+  return refused("", what,
+                 "water between 0 and 800 degC and up to 1000 bar, outside the near-critical region",
                  "correct the inlet, or give the properties as a table");
 }
 
@@ -93,6 +88,26 @@ std::string end_of(const WaterModel& model, Phase phase, double pressure, bool u
   return fmt::format("it condenses at {}", celsius(end));
 }
 
+bool changes_phase_at_end(const WaterModel&, Phase phase, double pressure, bool upper) {
+  if (phase == Phase::liquid) return !upper || pressure <= water::region3_pressure;
+  return !upper && pressure <= water::region3_pressure;
+}
+
+std::vector<PropertyNote> notes_of(const WaterModel&, Phase phase) {
+  if (phase == Phase::liquid) {
+    const TemperatureRange range{water::lowest_temperature, water::region3_temperature};
+    return {{"density", "iapws_if97", range, 0.0005},
+            {"heat_capacity", "iapws_if97", range, 0.003},
+            {"conductivity", "iapws_r15", range, 0.02},
+            {"viscosity", "iapws_r12", range, 0.01}};
+  }
+  const TemperatureRange range{water::lowest_temperature, water::highest_temperature};
+  return {{"density", "iapws_if97", range, 0.001},
+          {"heat_capacity", "iapws_if97", range, 0.005},
+          {"conductivity", "iapws_r15", range, 0.025},
+          {"viscosity", "iapws_r12", range, 0.02}};
+}
+
 Made make_water(double inlet_temperature, double inlet_pressure) {
   const double t = inlet_temperature, p = inlet_pressure;
   if (!(p > 0.0 && p <= water::highest_pressure))
@@ -106,7 +121,8 @@ Made make_water(double inlet_temperature, double inlet_pressure) {
     return refused_range(fmt::format("water at {} and {:.4g} bar is near-critical, which is not covered",
                                      celsius(t), p * 1e-5));
   if (!phase)
-    return refused(fmt::format("water at {} and {:.4g} bar is at its boiling point of {}", celsius(t),
+    return refused("",
+                   fmt::format("water at {} and {:.4g} bar is at its boiling point of {}", celsius(t),
                                p * 1e-5, celsius(water::saturation_temperature(p))),
                    "liquid or steam, at least 0.05 K away from boiling",
                    "correct the inlet temperature or the pressure (gauge or absolute?); a boiling or "

@@ -1,5 +1,5 @@
 #pragma once
-#include "models.hpp"
+#include "equations.hpp"
 
 /// Water and steam by the releases of IAPWS: the equations alone, without judging
 /// where they hold. Temperatures in [K], pressures in [Pa].

@@ -19,6 +19,8 @@ void check_stream(const Stream& stream, std::string_view side, double outlet, do
                                       fmt::format("{} inlet", side)));
   append(findings,
          fluids::check_bulk(stream.fluid, outlet, stream.inlet_pressure, fmt::format("{} outlet", side)));
+  append(findings, fluids::check_span(stream.fluid, {.inlet = stream.inlet_temperature, .outlet = outlet},
+                                      side));
   append(findings,
          fluids::check_wall(stream.fluid, wall, stream.inlet_pressure, fmt::format("{} wall", side)));
 }
@@ -46,9 +48,15 @@ void fill_dimensionless(const Unit& unit, const Trial& trial, Outcome& outcome) 
   outcome.ntu = trial.ntu * larger;
   outcome.capacity_ratio = std::min(trial.r, 1.0 / trial.r);
   outcome.duty_ntu = outcome.p_tube * trial.tube_capacity_rate * std::abs(shell_in - tube_in);
-  outcome.log_mean = arrangement::log_mean(unit.direction * (shell_in - trial.tube_outlet),
-                                           unit.direction * (trial.shell_outlet - tube_in));
+  const double inlet_difference = unit.direction * (shell_in - tube_in);
+  const double end_1 = unit.direction * (shell_in - trial.tube_outlet);
+  const double end_2 = unit.direction * (trial.shell_outlet - tube_in);
   outcome.f_correction = arrangement::lmtd_correction(unit.arrangement, trial.r, trial.ntu).value_or(0.0);
+  outcome.log_mean = arrangement::log_mean(end_1, end_2);
+  // Where a stream all but reaches the other's inlet, the outlets have no digits left for
+  // their difference; the dimensionless form has.
+  if (std::min(end_1, end_2) < 1e-4 * inlet_difference && outcome.f_correction > 0.0)
+    outcome.log_mean = inlet_difference * outcome.p_tube / (trial.ntu * outcome.f_correction);
   outcome.mean_difference = outcome.f_correction * outcome.log_mean;
   outcome.duty_lmtd = trial.local.u_dirty * problem.exchanger.area * outcome.mean_difference;
 }

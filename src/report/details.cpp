@@ -27,7 +27,7 @@ void tube_side(Page& page, const service::Assessment& assessment, const Figures&
                   figures.number(film.prandtl, Kind::ratio), figures.number(film.nusselt, Kind::ratio),
                   figures.with_unit(film.velocity, Kind::velocity, 3),
                   figures.with_unit(outcome.local.walls.tube_wetted, Kind::temperature)));
-  page.section("", fmt::format("pressure drop {}: friction {}, turns {}, nozzles {}.",
+  page.section("", fmt::format("Pressure drop {}: friction {}, turns {}, nozzles {}.",
                                figures.with_unit(drop.total(), Kind::pressure_difference, 3),
                                part(drop.friction), part(drop.turns), part(drop.nozzles)));
 }
@@ -48,11 +48,11 @@ void shell_side(Page& page, const service::Assessment& assessment, const Figures
                   figures.with_unit(film.velocity, Kind::velocity, 3),
                   figures.with_unit(outcome.local.walls.shell_wetted, Kind::temperature)));
   if (assessment.problem.methods.shell_side == shellside::Method::bell_delaware)
-    page.section("", fmt::format("factors on the ideal bank's {}: baffle cut {:.3f}, leakage {:.3f}, bypass "
+    page.section("", fmt::format("Factors on the ideal bank's {}: baffle cut {:.3f}, leakage {:.3f}, bypass "
                                  "{:.3f}, end spacing {:.3f}, laminar {:.3f}.",
                                  figures.with_unit(film.ideal, Kind::film_coefficient), film.j_cut,
                                  film.j_leakage, film.j_bypass, film.j_spacing, film.j_laminar));
-  page.section("", fmt::format("pressure drop {}: crossflow {}, windows {}, ends {}, nozzles {}.",
+  page.section("", fmt::format("Pressure drop {}: crossflow {}, windows {}, ends {}, nozzles {}.",
                                figures.with_unit(drop.total(), Kind::pressure_difference, 3),
                                part(drop.crossflow), part(drop.window), part(drop.ends), part(drop.nozzles)));
 }
@@ -70,25 +70,26 @@ void in_between(Page& page, const service::Assessment& assessment, const Figures
                   figures.with_unit(assessment.problem.exchanger.area, Kind::area),
                   figures.with_unit(outcome.mean_difference, Kind::temperature_difference),
                   figures.with_unit(outcome.log_mean, Kind::temperature_difference), outcome.f_correction));
-  page.section("", fmt::format("effectiveness {:.4f} of the smaller capacity rate at NTU {:.4f} and capacity "
+  page.section("", fmt::format("Effectiveness {:.4f} of the smaller capacity rate at NTU {:.4f} and capacity "
                                "ratio {:.4f}.",
                                outcome.effectiveness, outcome.ntu, outcome.capacity_ratio));
-  page.section("", fmt::format("overall coefficient {} in service; {} with the same films and no deposit.",
+  page.section("", fmt::format("Overall coefficient {} in service; {} with the same films and no deposit.",
                                figures.with_unit(local.u_dirty, Kind::film_coefficient),
                                figures.with_unit(local.u_clean, Kind::film_coefficient)));
-  page.section("", fmt::format("resistances on the outside surface in {}: film in the tubes {}, deposit in "
+  page.section("", fmt::format("Resistances on the outside surface in {}: film in the tubes {}, deposit in "
                                "the tubes {}, wall {}, deposit on the tubes {}, film on the tubes {}.",
                                figures.unit(Kind::fouling_resistance), resistance(r.tube_film),
                                resistance(r.tube_fouling), resistance(r.wall), resistance(r.shell_fouling),
                                resistance(r.shell_film)));
-  page.section("", fmt::format("an endless surface in counterflow would exchange {}.",
+  page.section("", fmt::format("No surface could exchange more than {} between these streams.",
                                figures.with_unit(assessment.rating.largest_duty, Kind::power)));
 }
 
 void words_used(Page& page) {
   page.section("WORDS",
-               "margin: what is left to the limit, in parts of the limit; for outlets the distance. "
-               "Duty margin: duty running free over the duty required, less one. Surface margin: "
+               "Margin: what is left to the limit, in parts of the limit; for outlets the distance. "
+               "Duty required: the largest that a line of the service asks for. Duty margin: duty running "
+               "free over the duty required, less one. Surface margin: "
                "installed surface over the surface that the required duty needs, less one. Fouling "
                "margin left: further resistance it can carry, on the outside surface. Close: less "
                "than a tenth left (for outlets: of the stream's own change).");
@@ -110,10 +111,10 @@ void sources_used(Page& page, const Result& result) {
   for (const auto* stream : {&result.assessment.problem.shell_side, &result.assessment.problem.tube_side})
     keys.insert(stream->fluid.source);
   std::string name = "SOURCES";
-  page.blank();
   for (const auto& key : keys) {
     const auto citation = sources::citation(key);
     if (citation.empty()) continue;
+    if (!name.empty()) page.blank();
     page.section(name, citation);
     name.clear();
   }

@@ -125,8 +125,8 @@ void velocity_rows(const Result& result, const rating::Outcome& outcome, std::ve
     rows.push_back({"  " + stream_name(problem, side) + where, figures.number(velocity, Kind::velocity, 3),
                     figures.unit(Kind::velocity), no_limit, "", ""});
   };
-  add(Side::shell, " across the bundle", outcome.local.shell_film.velocity);
-  add(Side::tube, " in the tubes", outcome.local.tube_film.velocity);
+  add(Side::shell, " velocity, bundle", outcome.local.shell_film.velocity);
+  add(Side::tube, " velocity, tubes", outcome.local.tube_film.velocity);
 }
 
 }  // namespace
@@ -141,7 +141,7 @@ void how_much(Page& page, const Result& result) {
   drop_row(result, Side::shell, outcome.shell_drop.total(), rows);
   drop_row(result, Side::tube, outcome.tube_drop.total(), rows);
   velocity_rows(result, outcome, rows);
-  page.table(rows, {Align::left, Align::right, Align::left, Align::right, Align::right, Align::left}, 0);
+  page.table(rows, {Align::left, Align::right, Align::left, Align::left, Align::right, Align::left}, 0);
 }
 
 }  // namespace dutygauge::report

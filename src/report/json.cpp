@@ -173,7 +173,7 @@ Json assumed(const Assumptions& assumptions) {
       return value ? Json(units::typed(*value, one.kind)) : Json(nullptr);
     };
     list.push_back({{"key", one.key},
-                    {"value", as_typed(one, units::System::metric)},
+                    {"value", as_typed(one, units::System::metric, 5)},
                     {"why", one.why},
                     {"low", end(one.low)},
                     {"high", end(one.high)},

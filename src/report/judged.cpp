@@ -15,11 +15,13 @@ namespace {
 using units::Kind;
 
 constexpr std::size_t most_assumptions = 5, most_findings = 5, most_tasks = 3, most_named = 4;
+constexpr std::string_view unchecked = "Tube vibration and mechanical strength are not checked.";
 
-// "12 % lower", "3 % higher", "the same within 1 %".
+// "12 % lower", "3 % higher", "2.8 times as high", "within 1 %".
 std::string against(double other, double ours) {
   const double fraction = other / ours - 1.0;
-  if (std::abs(fraction) < 0.01) return "the same within 1 %";
+  if (std::abs(fraction) < 0.01) return "within 1 %";
+  if (fraction >= 1.0) return fmt::format("{:.1f} times as high", other / ours);
   return fmt::format("{:.0f} % {}", 100.0 * std::abs(fraction), fraction < 0.0 ? "lower" : "higher");
 }
 
@@ -39,15 +41,15 @@ std::size_t remarks_on_methods(const Findings& findings) {
       findings, [](const Finding& f) { return f.ground == Ground::method && f.severity != Severity::note; }));
 }
 
-std::string_view tightest_line(const service::Assessment& assessment) {
+std::string tightest_line(const service::Assessment& assessment) {
   const auto& demands = assessment.service.demands;
   const auto found = std::ranges::find_if(demands, [&](const service::Demand& demand) {
     return service::key_of(demand.quantity) == assessment.verdict.limited_by;
   });
   if (found == demands.end()) return "";
-  return found->quantity == service::Quantity::duty                ? "the duty"
-         : found->quantity == service::Quantity::shell_side_outlet ? "the shell-side outlet"
-                                                                   : "the tube-side outlet";
+  if (found->quantity == service::Quantity::duty) return "duty";
+  const bool shell = found->quantity == service::Quantity::shell_side_outlet;
+  return stream_name(assessment.problem, shell ? Side::shell : Side::tube) + " outlet";
 }
 
 std::string where_the_difference_goes(const service::Assessment& assessment) {
@@ -55,7 +57,7 @@ std::string where_the_difference_goes(const service::Assessment& assessment) {
   for (const auto& share : shares(assessment.problem, assessment.rating.outcome->local.resistances))
     if (share.fraction >= 0.005)
       parts.push_back(fmt::format("{:.0f} % across {}", 100.0 * share.fraction, share.across));
-  return "the temperature difference goes " + listed(parts);
+  return "The temperature difference goes " + listed(parts);
 }
 
 // What a finding says to do: its last clause. Where it has but one, the finding itself is the task.
@@ -103,10 +105,21 @@ std::vector<std::string> tasks_from_assumptions(const Assumptions& assumptions) 
 std::vector<std::string> assumption_row(const Assumption& one, const Result& result, bool all) {
   std::string why = one.why;
   if (all && one.low && one.high)
-    why += fmt::format("; may lie between {} and {}", units::typed(*one.low, one.kind, result.display),
-                       units::typed(*one.high, one.kind, result.display));
+    why += fmt::format("; may lie between {} and {}", units::typed(*one.low, one.kind, result.display, 4),
+                       units::typed(*one.high, one.kind, result.display, 4));
   if (all && !one.look_in.empty()) why += "; look in: " + one.look_in;
-  return {"  " + (all ? one.key : plain_words(one.key)), as_typed(one, result.display), why};
+  return {"  " + (all ? one.key : plain_words(one.key)), as_typed(one, result.display, 4), why};
+}
+
+// "1 must, 2 should, 4 notes": what there is none of is not named.
+std::string counted(const Findings& findings) {
+  std::vector<std::string> parts;
+  for (const auto severity : {Severity::must, Severity::should, Severity::note}) {
+    const auto number = std::ranges::count(findings, severity, &Finding::severity);
+    const bool several_notes = severity == Severity::note && number > 1;
+    if (number > 0) parts.push_back(fmt::format("{} {}{}", number, word(severity), several_notes ? "s" : ""));
+  }
+  return listed(parts);
 }
 
 }  // namespace
@@ -122,7 +135,7 @@ void how_sure(Page& page, const Result& result) {
     const auto& other = *assessment.second_opinion;
     page.section(
         name,
-        fmt::format("A second method for the shell (Kern) gives a film {}, a duty {}, a "
+        fmt::format("Kern's method, a second one for the shell, puts the film {}, the duty {} and the "
                     "pressure drop {}.{}",
                     against(other.local.shell_film.coefficient, ours.local.shell_film.coefficient),
                     against(other.duty, ours.duty),
@@ -138,7 +151,7 @@ void what_limits(Page& page, const Result& result) {
   const auto& assessment = result.assessment;
   std::string name = "WHAT LIMITS";
   if (const auto line = tightest_line(assessment); !line.empty()) {
-    page.section(name, fmt::format("{} is the tightest line of the service.", line));
+    page.section(name, fmt::format("The {} is the tightest line of the service.", line));
     name.clear();
   }
   page.section(name, where_the_difference_goes(assessment) + ".");
@@ -163,14 +176,10 @@ void assumed(Page& page, const Result& result, const TextOptions& options) {
 void rules(Page& page, const Result& result, const TextOptions& options) {
   const auto& findings = result.findings;
   if (findings.empty()) {
-    page.section("RULES", "no finding from the checks made.");
+    page.section("RULES", "No finding from the checks made. " + std::string(unchecked));
     return;
   }
-  const auto count = [&findings](Severity severity) {
-    return std::ranges::count(findings, severity, &Finding::severity);
-  };
-  page.section("RULES", fmt::format("{} must, {} should, {} note", count(Severity::must),
-                                    count(Severity::should), count(Severity::note)));
+  page.section("RULES", counted(findings) + ". " + std::string(unchecked));
   const std::size_t shown = options.all ? findings.size() : std::min(findings.size(), most_findings);
   for (std::size_t i = 0; i < shown; ++i) {
     const auto& finding = findings[i];

@@ -3,7 +3,7 @@
 #include <fmt/core.h>
 
 #include <algorithm>
-#include <array>
+#include <cctype>
 #include <cmath>
 #include <iterator>
 #include <utility>
@@ -39,14 +39,27 @@ std::string without_trailing_blanks(std::string_view text) {
   return std::string(text.substr(0, end == std::string_view::npos ? 0 : end + 1));
 }
 
-// The first piece of `words` that fits `width`, broken at a blank where there is one.
+// Whether a line may end at this blank: not between a number and its unit.
+bool may_break(std::string_view words, std::size_t blank) {
+  if (blank == 0 || blank + 1 >= words.size()) return true;
+  const auto before = static_cast<unsigned char>(words[blank - 1]);
+  const auto after = static_cast<unsigned char>(words[blank + 1]);
+  return !(std::isdigit(before) && (std::isalpha(after) || after == '%'));
+}
+
+// Where to end a line of at most `width`: at a blank where there is one.
+std::size_t line_length(std::string_view words, std::size_t width) {
+  if (words.size() <= width) return words.size();
+  const auto start = words.substr(0, width + 1);
+  auto blank = start.find_last_of(' ');
+  while (blank != std::string_view::npos && blank > 0 && !may_break(words, blank))
+    blank = start.find_last_of(' ', blank - 1);
+  return blank == std::string_view::npos || blank == 0 ? width : blank;
+}
+
 std::string take_line(std::string_view& words, std::size_t width) {
   words.remove_prefix(std::min(words.find_first_not_of(' '), words.size()));
-  std::size_t length = words.size();
-  if (length > width) {
-    const auto blank = words.substr(0, width + 1).find_last_of(' ');
-    length = blank == std::string_view::npos ? width : blank;
-  }
+  const std::size_t length = line_length(words, width);
   std::string line = without_trailing_blanks(words.substr(0, length));
   words.remove_prefix(length);
   words.remove_prefix(std::min(words.find_first_not_of(' '), words.size()));
@@ -130,6 +143,10 @@ std::string Figures::unit(units::Kind kind) const {
 }
 
 std::string Figures::with_unit(double si, units::Kind kind, int significant) const {
+  if (kind == units::Kind::length && std::abs(si) >= 1.0) {
+    const char* large = system_ == units::System::us ? "ft" : "m";
+    return fmt::format("{:.{}g} {}", units::from_si(si, large, kind), significant, large);
+  }
   const std::string name = unit(kind);
   return number(si, kind, significant) + (name.empty() ? "" : " " + name);
 }

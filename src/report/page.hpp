@@ -45,6 +45,7 @@ class Figures {
   /// Temperatures with one decimal, everything else with `significant` digits.
   std::string number(double si, units::Kind kind, int significant = 4) const;
   std::string unit(units::Kind kind) const;
+  /// Lengths from one metre up are in m or ft, however small the unit of the table is.
   std::string with_unit(double si, units::Kind kind, int significant = 4) const;
   /// A temperature difference with its sign and unit.
   std::string difference(double kelvin) const;

@@ -81,14 +81,20 @@ std::string sentence(const Finding& finding, units::System system) {
   return text;
 }
 
-std::string as_typed(const Assumption& assumption, units::System system) {
-  return assumption.word.empty() ? units::typed(assumption.value, assumption.kind, system) : assumption.word;
+std::string as_typed(const Assumption& assumption, units::System system, int significant) {
+  if (!assumption.word.empty()) return assumption.word;
+  return units::typed(assumption.value, assumption.kind, system, significant);
 }
 
 std::string plain_words(std::string_view key) {
   for (const std::string_view block : {"exchanger.", "streams."})
     if (key.starts_with(block)) key.remove_prefix(block.size());
   std::string words(key);
+  for (const std::string_view block : {"tube", "baffle", "clearance"}) {
+    if (!key.starts_with(std::string(block) + "s.")) continue;
+    const std::string leaf(key.substr(block.size() + 2));
+    words = leaf.starts_with(block) ? leaf : std::string(block) + " " + leaf;
+  }
   std::ranges::replace_if(
       words, [](char c) { return c == '.' || c == '_'; }, ' ');
   return words;

@@ -25,9 +25,9 @@ std::string_view word(tubeside::Regime regime);
 std::string sentence(const Finding& finding, units::System system);
 
 /// The value of an assumption as it would be typed.
-std::string as_typed(const Assumption& assumption, units::System system);
+std::string as_typed(const Assumption& assumption, units::System system, int significant);
 
-/// A key in plain words: "exchanger.clearances.tube_to_baffle" is "clearances tube to baffle".
+/// A key in plain words: "exchanger.clearances.tube_to_baffle" is "clearance tube to baffle".
 std::string plain_words(std::string_view key);
 
 /// "ok", "close" (less than a tenth left) or `broken`, for the fraction of a limit that is left.

@@ -124,9 +124,9 @@ void prepare_kern(Bundle& bundle) {
   const geometry::ShellSide& shell = bundle.drawing;
   const double tube = shell.tube_outside_diameter, pitch = shell.pitch;
   const bool square = shell.layout == 45 || shell.layout == 90;
-  bundle.kern_equivalent_diameter =
-      square ? 4.0 * (pitch * pitch - 0.25 * pi * tube * tube) / (pi * tube)
-             : 4.0 * (0.433 * pitch * pitch - 0.125 * pi * tube * tube) / (0.5 * pi * tube);
+  // One pitch cell: its free area over the tube perimeter in it. Kern prints sqrt(3)/4 as 0.433.
+  const double cell = square ? pitch * pitch : 0.5 * std::numbers::sqrt3 * pitch * pitch;
+  bundle.kern_equivalent_diameter = 4.0 * (cell - 0.25 * pi * tube * tube) / (pi * tube);
   bundle.centreline_area = shell.inside_diameter * (pitch - tube) * shell.central_spacing / pitch;
   bundle.kern_lengths =
       bundle.runs * shell.inside_diameter * (shell.baffles + 1) / (2.0 * bundle.kern_equivalent_diameter);

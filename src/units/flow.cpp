@@ -78,6 +78,10 @@ void place_said(Flow& flow, const Unit* standard, std::string_view place) {
     flow.basis = FlowBasis::inlet;
     return;
   }
+  if (place.find_first_of("0123456789") == npos)
+    throw Refusal{{fmt::format("{} is neither \"inlet\" nor a temperature", quoted(place)),
+                   "the place where the volume flow is measured was expected",
+                   "write \"at inlet\" or for example \"at 60 degF\""}};
   flow.basis = FlowBasis::temperature;
   flow.basis_temperature = read_plain(place, Kind::temperature);
   if (standard != nullptr)

@@ -70,6 +70,13 @@ std::string with_point(std::string_view text, char decimal) {
   return result;
 }
 
+// Whether every group behind the first mark of a kind has its three digits.
+bool has_thousands(std::string_view text, char mark) {
+  for (auto at = text.find(mark); at != npos; at = text.find(mark, at + 1))
+    if (digits_at(text, at + 1) != 3) return false;
+  return true;
+}
+
 // Says what a number with commas, several dots or blanks in it may mean.
 [[noreturn]] void refuse_marks(std::string_view text) {
   const std::string_view written = marked_number(text);
@@ -82,6 +89,9 @@ std::string with_point(std::string_view text, char decimal) {
     throw Refusal{{fmt::format("the comma in {} may group thousands or be a decimal comma", quoted(written)),
                    expected,
                    fmt::format("write \"{}\" or \"{}\"", without(bare, ","), with_point(bare, ','))}};
+  if ((dots > 1 && !has_thousands(bare, '.')) || (commas > 1 && !has_thousands(bare, ',')))
+    throw Refusal{{fmt::format("{} has more than one decimal mark", quoted(written)), expected,
+                   "write one decimal point and no other mark"}};
   const bool decimal_comma = commas == 1 && last == ',';
   const bool decimal_point = dots == 1 && last == '.';
   const std::string meant = decimal_comma || decimal_point ? with_point(bare, last) : without(bare, ".,");
@@ -107,18 +117,19 @@ std::string with_point(std::string_view text, char decimal) {
 // What may not stand behind a number: more of a number.
 void check_rest(std::string_view all, std::string_view rest) {
   if (rest.empty()) return;
-  if (std::string_view(".,'_").find(rest[0]) != npos && digit_at(rest, 1)) refuse_marks(all);
+  const bool plain_so_far = marked_number(all).size() > all.size() - rest.size();
+  if (plain_so_far && std::string_view(".,'_").find(rest[0]) != npos && digit_at(rest, 1)) refuse_marks(all);
   if (rest[0] == ',')
     throw Refusal{{fmt::format("a comma stands behind the number in {}", quoted(all)),
                    "a number and a unit were expected", "leave the comma out"}};
   if (rest[0] == '-' && digit_at(rest, 1))
     throw Refusal{{fmt::format("{} joins two numbers by a dash", quoted(all)),
                    "one number or a range was expected", "write a range as \"10..14 in\""}};
-  if (rest[0] != ' ' || !digit_at(rest, 1)) return;
+  if (std::string_view(" .,'_").find(rest[0]) == npos || !digit_at(rest, 1)) return;
   const std::size_t digits = digits_at(rest, 1);
   // "748 1/m": the one is the unit's.
   if (digits == 1 && rest[1] == '1' && rest.size() > 2 && rest[2] == '/' && !digit_at(rest, 3)) return;
-  if (digits == 3) refuse_marks(all);
+  if (digits == 3 && plain_so_far) refuse_marks(all);
   throw Refusal{{fmt::format("two numbers stand side by side in {}", quoted(all)),
                  "one number and its unit were expected",
                  "write one number; a range is \"10..14 in\", a fraction \"1 1/4 in\""}};

@@ -116,7 +116,7 @@ std::string suggestion(std::string_view token, std::string_view text) {
   if (token.find("^-") != npos)
     throw Refusal{{fmt::format("{} has a negative exponent", quoted(text)), expectation(kind),
                    "write a slash instead, for example \"W/m2.K\""}};
-  if (token.find('-') != npos)
+  if (token.find('-') != npos && token.front() != '-')
     throw Refusal{{fmt::format("{} has a dash between units", quoted(text)), expectation(kind),
                    fmt::format("write \"{}\"", with_dots(text))}};
   const std::string meant = suggestion(token, text);
@@ -135,7 +135,7 @@ std::string joined(std::string_view text) {
   for (const std::string_view datum : {"(g)", "(a)", " g", " a"}) {
     if (!plain.ends_with(datum)) continue;
     const std::string_view stem = trimmed(std::string_view(plain).substr(0, plain.size() - datum.size()));
-    const std::string whole = fmt::format("{}{}", stem, datum[1]);
+    std::string whole = fmt::format("{}{}", stem, datum[1]);
     const Unit* unit = find_unit(whole);
     if (unit != nullptr && (unit->use == Use::absolute || unit->use == Use::gauge)) return whole;
   }
@@ -192,7 +192,7 @@ class Parser {
 
   [[noreturn]] void incomplete() const {
     throw Refusal{{fmt::format("the unit {} is not complete", quoted(text_)), expectation(kind_),
-                   example_remedy(kind_)}};
+                   text_.back() == '.' ? "leave out the full stop" : example_remedy(kind_)}};
   }
 
   std::string_view text_;

@@ -75,11 +75,13 @@ Reading read_range(std::string_view text, std::size_t dots, const Wanted& wanted
   if (high.unit.empty() != low.unit.empty())
     throw Refusal{{fmt::format("the unit stands in the middle of {}", quoted(text)),
                    "a range with its unit at the end was expected", "write for example \"10..14 %\""}};
-  if (!(low.si < high.si))
+  if (!(low.si < high.si && std::isfinite(low.si + high.si)))
     throw Refusal{{fmt::format("the range {} does not rise", quoted(text)),
                    "the smaller end was expected first", "write for example \"10..14 in\""}};
-  double middle = 0.5 * (low.si + high.si);
-  check_possible(middle, text, wanted.kind);
+  const double middle = 0.5 * (low.si + high.si);
+  if (wanted.kind == Kind::count && middle != std::floor(middle))
+    throw Refusal{{fmt::format("the middle of {} is not a whole number", quoted(text)),
+                   expectation(wanted.kind), "choose ends an even number apart"}};
   if (low.scale.standard != high.scale.standard)
     throw Refusal{{fmt::format("the ends of {} are measured at different places", quoted(text)),
                    "one unit was expected", "write both ends in the same unit"}};

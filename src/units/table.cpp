@@ -1,11 +1,7 @@
 #include "table.hpp"
 
 #include <algorithm>
-#include <numeric>
-#include <string>
-#include <vector>
-
-#include "text.hpp"
+#include <array>
 
 namespace dutygauge::units {
 namespace {
@@ -155,16 +151,23 @@ constexpr Unit units[] = {
     {"fin", 1, 1, none, Use::counted},
 };
 
+constexpr std::size_t longest_name = 20;  // what is longer is no misspelt unit
+
+bool same_letter(char a, char b) {
+  const auto small = [](char c) { return c >= 'A' && c <= 'Z' ? static_cast<char>(c - 'A' + 'a') : c; };
+  return small(a) == small(b);
+}
+
 // Optimal string alignment: insertions, deletions, substitutions and swapped
-// neighbours, each of cost one.
+// neighbours, each of cost one. Neither text is longer than longest_name.
 std::size_t alignment(std::string_view a, std::string_view b) {
-  std::vector<std::vector<std::size_t>> cost(a.size() + 1, std::vector<std::size_t>(b.size() + 1));
+  std::array<std::array<std::size_t, longest_name + 1>, longest_name + 1> cost{};
   for (std::size_t i = 0; i <= a.size(); ++i) cost[i][0] = i;
-  std::iota(cost[0].begin(), cost[0].end(), std::size_t{0});
+  for (std::size_t j = 0; j <= b.size(); ++j) cost[0][j] = j;
   for (std::size_t i = 1; i <= a.size(); ++i)
     for (std::size_t j = 1; j <= b.size(); ++j) {
-      cost[i][j] = std::min(
-          {cost[i - 1][j] + 1, cost[i][j - 1] + 1, cost[i - 1][j - 1] + (a[i - 1] == b[j - 1] ? 0U : 1U)});
+      const std::size_t substituted = cost[i - 1][j - 1] + (a[i - 1] == b[j - 1] ? 0U : 1U);
+      cost[i][j] = std::min({cost[i - 1][j] + 1, cost[i][j - 1] + 1, substituted});
       if (i > 1 && j > 1 && a[i - 1] == b[j - 2] && a[i - 2] == b[j - 1])
         cost[i][j] = std::min(cost[i][j], cost[i - 2][j - 2] + 1);
     }
@@ -190,16 +193,22 @@ const Unit* find_unit(std::string_view name) {
 }
 
 std::string_view nearest_unit(std::string_view name) {
+  if (name.size() > longest_name) return {};
   for (const Unit& unit : units)
-    if (lower(unit.name) == lower(name)) return unit.name;
+    if (std::ranges::equal(unit.name, name, same_letter)) return unit.name;
+  const auto length_gap = [&](std::string_view other) {
+    return std::max(name.size(), other.size()) - std::min(name.size(), other.size());
+  };
   std::string_view best;
   std::size_t least = std::max<std::size_t>(1, name.size() / 3) + 1;
-  if (name.size() > 20) return best;
   for (const Unit& unit : units) {
     // One letter of a one-letter name is all of it.
     if (unit.name.size() < 2) continue;
     const std::size_t distance = alignment(name, unit.name);
-    if (distance < least) best = unit.name, least = distance;
+    const bool closer = distance < least;
+    // "psgi" is rather "psig" with swapped letters than "psi" with one too many.
+    const bool as_close = !best.empty() && distance == least && length_gap(unit.name) < length_gap(best);
+    if (closer || as_close) best = unit.name, least = distance;
   }
   return best;
 }

@@ -1,27 +1,12 @@
 #include <fmt/core.h>
 
-#include <chrono>
-#include <cmath>
-
+#include "bench/timing.hpp"
 #include "dutygauge/fluids.hpp"
-
-// The cost of fluid properties in units of one std::pow call, measured in the same run:
-// a measure that hardly depends on the machine.
 
 namespace {
 
 using namespace dutygauge;
-
-/// Mean time of one call [s]; each call waits for the one before.
-template <class Step>
-double time_of(Step&& step, int calls) {
-  double x = 1.5;
-  const auto start = std::chrono::steady_clock::now();
-  for (int i = 0; i < calls; ++i) x = step(x);
-  const std::chrono::duration<double> elapsed = std::chrono::steady_clock::now() - start;
-  if (!std::isfinite(x)) fmt::print("not finite\n");
-  return elapsed.count() / calls;
-}
+using bench::time_of;
 
 void report(const char* what, double seconds, double pow_seconds) {
   fmt::print("{:<44} {:>8.1f} ns {:>6.1f} pow\n", what, seconds * 1e9, seconds / pow_seconds);
@@ -48,7 +33,7 @@ void report_fluid(const char* name, const fluids::Fluid& fluid, double temperatu
 }  // namespace
 
 int main() {
-  const double pow_seconds = time_of([](double x) { return 1.0 + 0.1 * std::pow(x, 0.613); }, 1'000'000);
+  const double pow_seconds = bench::time_of_pow();
   report("std::pow", pow_seconds, pow_seconds);
   report_fluid("water", fluids::make_water(320.0, 5e5).fluid, 320.0, pow_seconds);
   report_fluid("steam", fluids::make_water(460.0, 5e5).fluid, 460.0, pow_seconds);

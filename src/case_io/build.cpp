@@ -1,0 +1,116 @@
+#include <fmt/format.h>
+
+#include <cmath>
+
+#include "parts.hpp"
+#include "wording.hpp"
+
+namespace dutygauge::case_io {
+namespace {
+
+using units::Kind;
+
+service::Service service_of(const Entries& entries, units::System words) {
+  using service::Quantity;
+  const std::pair<const char*, Quantity> lines[] = {
+      {"service.shell_side_outlet", Quantity::shell_side_outlet},
+      {"service.tube_side_outlet", Quantity::tube_side_outlet},
+      {"service.duty", Quantity::duty}};
+  service::Service result;
+  result.words = words;
+  for (const auto& [key, quantity] : lines)
+    for (const bool at_least : {true, false})
+      if (const auto limit = si(entries, joined(key, at_least ? "at_least" : "at_most")))
+        result.demands.push_back({quantity, at_least, *limit});
+  result.shell_side_allowable_drop = si(entries, "streams.shell_side.allowable_pressure_drop");
+  result.tube_side_allowable_drop = si(entries, "streams.tube_side.allowable_pressure_drop");
+  return result;
+}
+
+rating::Methods methods_of(Reading& reading) {
+  const auto shell_side = word(reading.entries(), "methods.shell_side");
+  if (!reading.has("methods.shell_side"))
+    reading.assume({.key = "methods.shell_side", .word = "bell_delaware", .why = "the method is left out"});
+  if (!reading.has("methods.solution"))
+    reading.assume({.key = "methods.solution",
+                    .word = "mean",
+                    .why = "the solution is left out; mean properties are the one there is"});
+  return {.shell_side = shell_side == "kern" ? shellside::Method::kern : shellside::Method::bell_delaware};
+}
+
+void check_inlets(Reading& reading) {
+  const auto shell = si(reading.entries(), "streams.shell_side.inlet.temperature");
+  const auto tube = si(reading.entries(), "streams.tube_side.inlet.temperature");
+  constexpr double least_difference = 1e-3;  // what no thermometer tells apart [K]
+  if (shell && tube && std::abs(*shell - *tube) < least_difference)
+    reading.note("streams.tube_side.inlet.temperature",
+                 fmt::format("the shell side enters at {} too: nothing can be exchanged",
+                             units::typed(*shell, Kind::temperature)),
+                 "two different inlet temperatures", "correct one of them");
+}
+
+units::System display_of(const Entries& entries) {
+  const auto typed = word(entries, "display").value_or("metric");
+  return typed == "si" ? units::System::si : typed == "us" ? units::System::us : units::System::metric;
+}
+
+Inputs inputs_of(const Entries& entries, const Assumptions& assumed, units::System display) {
+  Inputs inputs;
+  for (const auto& [key, entry] : entries)
+    inputs.push_back({key, entry.text, entry.is_word() ? 0.0 : entry.value.si, entry.kind(), entry.is_word(),
+                      entry.line, "typed"});
+  for (const Assumption& a : assumed) {
+    if (entries.contains(a.key)) continue;  // about the reading of a typed value
+    const bool is_word = !a.word.empty();
+    inputs.push_back({a.key, is_word ? a.word : units::typed(a.value, a.kind, display),
+                      is_word ? 0.0 : a.value, a.kind, is_word, 0, "assumed"});
+  }
+  return inputs;
+}
+
+template <class List>
+void append(List& list, const List& more) {
+  list.insert(list.end(), more.begin(), more.end());
+}
+
+std::string text_of(const Entries& entries, std::string_view key) {
+  return std::string(word(entries, key).value_or(""));
+}
+
+}  // namespace
+
+Case build(const Document& document) {
+  Reading reading(document, case_fields());
+  const auto description = exchanger_of(reading);
+  const auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
+  check_inlets(reading);
+  const rating::Methods methods = methods_of(reading);
+  if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
+  if (!description || !shell_side || !tube_side)
+    throw std::logic_error("a case without a mistake could not be built");
+
+  Case result;
+  const auto derived = geometry::derive(*description);
+  const Entries& entries = reading.entries();
+  result.file = document.file;
+  result.title = text_of(entries, "title");
+  result.tag = text_of(entries, "tag");
+  result.sha256 = document.sha256;
+  result.display = display_of(entries);
+  result.problem = {.exchanger = derived.value,
+                    .shell_side = shell_side->stream,
+                    .tube_side = tube_side->stream,
+                    .methods = methods};
+  result.service = service_of(entries, result.display);
+  append(result.assumed, reading.assumed());
+  append(result.assumed, derived.assumed);
+  append(result.findings, derived.findings);
+  for (const auto* stream : {&*shell_side, &*tube_side}) {
+    append(result.assumed, stream->assumed);
+    append(result.findings, stream->findings);
+  }
+  result.inputs = inputs_of(entries, result.assumed, result.display);
+  return result;
+}
+
+}  // namespace dutygauge::case_io

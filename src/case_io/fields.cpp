@@ -1,0 +1,221 @@
+#include "fields.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+
+#include "field_rows.hpp"
+#include "wording.hpp"
+
+namespace dutygauge::case_io {
+namespace {
+
+using units::Kind;
+
+/// One side's part of "shell // tube"; the whole where there is one part only.
+std::string_view part(std::string_view text, bool shell) {
+  const auto bar = text.find(" // ");
+  if (bar == std::string_view::npos) return text;
+  return shell ? text.substr(0, bar) : text.substr(bar + 4);
+}
+
+Field field_of(const Row& row, std::string key, bool shell) {
+  return {.key = std::move(key),
+          .form = row.form,
+          .need = row.need,
+          .kind = row.kind,
+          .bounds = row.bounds,
+          .example = std::string(part(row.example, shell)),
+          .help = std::string(part(row.help, shell)),
+          .words = row.words,
+          .instead = row.instead};
+}
+
+void add_fluid(std::vector<Field>& fields, const std::string& key) {
+  for (const Row& row : fluid_rows()) fields.push_back(field_of(row, joined(key, row.key), true));
+}
+
+/// All rows of one side that stand together, so that a block's rows follow each other.
+void add_side(std::vector<Field>& fields, std::span<const Row> rows, bool shell) {
+  for (const Row& row : rows) {
+    std::string key = row.key;
+    key.replace(key.find('*'), 1, shell ? "shell_side" : "tube_side");
+    fields.push_back(field_of(row, key, shell));
+    if (row.form == Form::fluid) add_fluid(fields, key);
+  }
+}
+
+std::vector<Field> all_case_fields() {
+  std::vector<Field> fields;
+  const auto rows = case_rows();
+  const auto is_of_sides = [](const Row& row) {
+    return std::string_view(row.key).find('*') != std::string::npos;
+  };
+  for (auto row = rows.begin(); row != rows.end();) {
+    if (!is_of_sides(*row)) {
+      fields.push_back(field_of(*row, row->key, true));
+      ++row;
+      continue;
+    }
+    const auto end = std::find_if_not(row, rows.end(), is_of_sides);
+    for (const bool shell : {true, false}) add_side(fields, {row, end}, shell);
+    row = end;
+  }
+  return fields;
+}
+
+std::vector<Field> all_fluid_fields() {
+  std::vector<Field> fields;
+  fields.push_back({.key = "fluid",
+                    .form = Form::fluid,
+                    .need = Need::required,
+                    .example = "water",
+                    .help = "a name, or its properties"});
+  add_fluid(fields, "fluid");
+  return fields;
+}
+
+/// The key with list indices as "#".
+std::string indices_hidden(std::string_view key) {
+  std::string result;
+  while (!key.empty()) {
+    const auto dot = key.find('.');
+    const auto segment = key.substr(0, dot);
+    const bool is_index = std::ranges::all_of(segment, [](char c) { return c >= '0' && c <= '9'; });
+    result += is_index ? "#" : segment;
+    if (dot != std::string_view::npos) result += '.';
+    key = dot == std::string_view::npos ? std::string_view{} : key.substr(dot + 1);
+  }
+  return result;
+}
+
+constexpr Unread unread[] = {
+    {"operating_cases", "other cases of the same unit"},
+    {"present", "the unit as it is today"},
+    {"anchor", "a reading of the running unit"},
+    {"claims", "what a sheet states"},
+    {"accepted", "findings somebody has decided on"},
+    {"requirements", "a purchaser's own limits"},
+    {"guarantee", "what a vendor guarantees"},
+    {"inquiry", "the inquiry a bid answers"},
+    {"bidder", "who made a bid"},
+    {"exceptions", "what a bid excepts"},
+    {"stated_streams", "streams of a bid's sheet"},
+    {"readings", "plant readings"},
+    {"plan", "the next stop and what cleaning costs"},
+    {"exchanger.area", "an exchanger known by its area alone"},
+    {"exchanger.wall_resistance", "an exchanger known by its area alone"},
+    {"exchanger.layers", "tubes of several layers"},
+    {"exchanger.split", "streams that divide unevenly"},
+    {"exchanger.tubes.fins", "tubes with fins"},
+    {"exchanger.tubes.layers", "tubes of several layers"},
+    {"streams.*.film_law", "a film known as a law"},
+    {"streams.*.pressure_drop_law", "a pressure drop known as a law"},
+    {"streams.*.film_coefficient", "a film given instead of computed"},
+    {"streams.*.film_multiplier", "a film corrected by a factor"},
+    {"streams.*.from_duty", "a flow found from a duty"},
+    {"streams.*.outlet", "an outlet given instead of a flow"},
+    {"streams.*.fouling_area", "fouling on the other surface"},
+    {"streams.*.split", "streams that divide unevenly"},
+    {"streams.*.fluid.given", "known properties of a built-in fluid"},
+    {"fluid.given", "known properties of a built-in fluid"},
+    {"service.confidence", "how sure a yes must be"},
+};
+
+constexpr std::string_view later_fluids =
+    "seawater|air|nitrogen|oxygen|hydrogen|methane|carbon_dioxide|oil|petroleum|ethylene_glycol_water|"
+    "propylene_glycol_water|calcium_chloride_water|gas_mixture|steam";
+
+/// Whether `key` is what `pattern` means, or stands below it. "*" is one segment.
+bool is_at_or_below(std::string_view key, std::string_view pattern) {
+  while (!pattern.empty()) {
+    const auto key_dot = key.find('.'), pattern_dot = pattern.find('.');
+    const auto segment = pattern.substr(0, pattern_dot);
+    if (key.empty() || (segment != "*" && segment != key.substr(0, key_dot))) return false;
+    key = key_dot == std::string_view::npos ? std::string_view{} : key.substr(key_dot + 1);
+    pattern = pattern_dot == std::string_view::npos ? std::string_view{} : pattern.substr(pattern_dot + 1);
+  }
+  return true;
+}
+
+std::string kind_in_words(const Field& field) {
+  switch (field.form) {
+    case Form::block:
+      return "a block of keys";
+    case Form::list:
+      return "a list of blocks";
+    case Form::text:
+      return "a text";
+    case Form::word:
+    case Form::angle:
+      return listed(field.words);
+    case Form::boolean:
+      return "true or false";
+    case Form::version:
+      return "1";
+    case Form::tema:
+      return "three TEMA letters";
+    case Form::whole:
+      return "a whole number";
+    case Form::whole_or_list:
+      return "a whole number, or one for each tube pass";
+    case Form::quantity:
+      return std::string(units::name(field.kind));
+    case Form::wall:
+      return "a length or a gauge";
+    case Form::bore:
+      return "a length or a pipe size";
+    case Form::flow:
+      return "a mass or volume flow";
+    case Form::pair:
+      return fmt::format("two values a -> b, each {}", units::name(field.kind));
+    case Form::fluid:
+      return std::string(known_fluids);
+  }
+  return {};
+}
+
+}  // namespace
+
+FieldTable::FieldTable(std::vector<Field> fields) : fields_(std::move(fields)) {
+  for (const Field& field : fields_) by_key_.emplace(field.key, &field);
+}
+
+const Field* FieldTable::find(std::string_view key) const {
+  if (const auto exact = by_key_.find(key); exact != by_key_.end()) return exact->second;
+  const std::string hidden = indices_hidden(key);
+  if (const auto indexed = by_key_.find(hidden); indexed != by_key_.end()) return indexed->second;
+  const std::string any_name = joined(parent_of(hidden), "?");
+  const auto named = by_key_.find(any_name);
+  return named == by_key_.end() ? nullptr : named->second;
+}
+
+const FieldTable& case_fields() {
+  static const FieldTable table(all_case_fields());
+  return table;
+}
+
+const FieldTable& fluid_fields() {
+  static const FieldTable table(all_fluid_fields());
+  return table;
+}
+
+std::string expected_of(const Field& field) {
+  std::string text = kind_in_words(field);
+  const bool is_plain = field.form == Form::block || field.form == Form::list || field.form == Form::fluid ||
+                        !field.words.empty() || field.form == Form::boolean || field.form == Form::version;
+  if (!is_plain && !field.example.empty()) text += " such as " + field.example;
+  return text;
+}
+
+bool is_later_fluid(std::string_view name) {
+  return is_one_of(name, later_fluids);
+}
+
+const Unread* find_unread(std::string_view key) {
+  const auto* found =
+      std::ranges::find_if(unread, [&](const Unread& row) { return is_at_or_below(key, row.key); });
+  return found == std::end(unread) ? nullptr : found;
+}
+
+}  // namespace dutygauge::case_io

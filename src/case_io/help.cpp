@@ -1,0 +1,107 @@
+#include <fmt/format.h>
+
+#include <algorithm>
+
+#include "dutygauge/case_io.hpp"
+#include "fields.hpp"
+#include "wording.hpp"
+
+namespace dutygauge::case_io {
+namespace {
+
+constexpr std::size_t comment_column = 44;
+
+std::size_t depth(std::string_view key) {
+  return static_cast<std::size_t>(std::ranges::count(key, '.'));
+}
+
+/// Whether a row stands below a fluid: the starter case shows a fluid on one line.
+bool is_of_a_fluid(std::string_view key) {
+  return key.find(".fluid.") != std::string_view::npos;
+}
+
+bool is_list_item(std::string_view key) {
+  return key.find('#') != std::string_view::npos;
+}
+
+/// "  key: example", a comment where it may be left out, and what it means.
+std::string starter_line(const Field& field, bool commented) {
+  std::string line = std::string(2 * depth(field.key), ' ');
+  if (commented) line += "# ";
+  const auto name = last_segment(field.key);
+  line += fmt::format("{}:", name == "?" ? "sheet" : name);
+  if (field.form != Form::block) line += " " + field.example;
+  if (field.help.empty()) return line + "\n";
+  if (line.size() > comment_column) return line + "\n";
+  return fmt::format("{:<{}}# {}\n", line, comment_column, field.help);
+}
+
+/// Whether the row, or a block above it, is a comment in the starter case.
+bool is_commented(const FieldTable& table, std::string_view key) {
+  for (; !key.empty(); key = parent_of(key))
+    if (table.find(key)->need == Need::optional) return true;
+  return false;
+}
+
+const Field* find_by_end(const FieldTable& table, std::string_view key) {
+  for (const Field& field : table.all())
+    if (field.key.size() > key.size() && field.key.ends_with(key) &&
+        field.key[field.key.size() - key.size() - 1] == '.')
+      return &field;
+  return nullptr;
+}
+
+std::string kind_of(const Field& field) {
+  switch (field.form) {
+    case Form::block:
+      return "block";
+    case Form::list:
+      return "list";
+    case Form::text:
+      return "text";
+    case Form::word:
+    case Form::boolean:
+    case Form::version:
+    case Form::tema:
+      return "word";
+    case Form::whole:
+    case Form::whole_or_list:
+      return "whole number";
+    case Form::flow:
+      return "flow";
+    case Form::fluid:
+      return "fluid";
+    default:
+      return std::string(units::name(field.kind));
+  }
+}
+
+}  // namespace
+
+std::string starter_case() {
+  std::string text =
+      "# A case for dutygauge. Replace every value by your own; lines that begin with '#' may be left out.\n";
+  const FieldTable& table = case_fields();
+  for (const Field& field : table.all())
+    if (!is_of_a_fluid(field.key) && !is_list_item(field.key))
+      text += starter_line(field, is_commented(table, field.key));
+  return text;
+}
+
+std::optional<FieldHelp> explain(std::string_view key) {
+  const Field* field = case_fields().find(key);
+  if (field == nullptr) field = fluid_fields().find(key);
+  if (field == nullptr) field = find_by_end(case_fields(), key);
+  if (field != nullptr) {
+    const std::string need =
+        field->need == Need::required ? "required where its block stands" : "may be left out";
+    return FieldHelp{field->key, kind_of(*field), expected_of(*field),
+                     fmt::format("{}; {}", field->help, need)};
+  }
+  if (const Unread* unread = find_unread(key))
+    return FieldHelp{std::string(key), "not read yet by this version", "to be left out",
+                     std::string(unread->meaning)};
+  return {};
+}
+
+}  // namespace dutygauge::case_io

@@ -1,0 +1,225 @@
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+#include <variant>
+
+#include "reading.hpp"
+#include "wording.hpp"
+
+// From the text of a leaf to its value, by the form of its row.
+
+namespace dutygauge::case_io {
+namespace {
+
+using units::Kind;
+using units::Misread;
+
+using Outcome = std::variant<Entry, Misread>;
+
+Misread misread(const Field& field, std::string what, std::string remedy) {
+  return {std::move(what), expected_of(field), std::move(remedy)};
+}
+
+std::string quoted(std::string_view text) {
+  return fmt::format("'{}'", shown(text));
+}
+
+/// Text that means something in the format which this version does not compute with.
+std::optional<Misread> not_yet(const Field& field, const units::Value& value) {
+  if (value.low || value.high)
+    return misread(field, "ranges (a..b) are not supported yet", "give the value itself");
+  if (value.standard_deviation)
+    return misread(field, "deviations (+-) are not supported yet", "give the value itself");
+  return {};
+}
+
+std::string typed_bound(double bound, Kind kind) {
+  if (kind == Kind::ratio) return fmt::format("{:.6g} %", 100.0 * bound);
+  return units::typed(bound, kind, kind == Kind::length ? units::System::si : units::System::metric);
+}
+
+std::optional<Misread> out_of_bounds(const Entry& entry, double value) {
+  const Field& field = *entry.field;
+  const Bounds& bounds = field.bounds;
+  const Kind kind = entry.kind();
+  const bool is_below = bounds.least_excluded ? !(value > bounds.least) : !(value >= bounds.least);
+  if (!is_below && value <= bounds.most) return {};
+  std::string why;
+  if (is_below && bounds.least == 0.0)
+    why = value < 0.0 ? "negative" : "zero";
+  else if (is_below)
+    why = fmt::format("below {}, the least that is plausible", typed_bound(bounds.least, kind));
+  else
+    why = fmt::format("above {}, the most that is plausible", typed_bound(bounds.most, kind));
+  const bool lacks_per_cent = kind == Kind::ratio && units::number(entry.text);
+  return misread(field, fmt::format("{} is {}", quoted(entry.text), why),
+                 lacks_per_cent ? fmt::format("write {} % if that is meant", entry.text)
+                                : "check the value and its unit");
+}
+
+/// The checks that every number goes through.
+Outcome checked(Entry entry) {
+  const Field& field = *entry.field;
+  if (auto mistake = not_yet(field, entry.value)) return *mistake;
+  if (auto mistake = out_of_bounds(entry, entry.value.si)) return *mistake;
+  return entry;
+}
+
+Outcome from_value(Entry entry, units::Read<units::Value> read) {
+  if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
+  entry.value = std::get<units::Value>(std::move(read));
+  return checked(std::move(entry));
+}
+
+Outcome read_quantity(Entry entry) {
+  const Field& field = *entry.field;
+  if (field.kind == Kind::ratio && entry.text.find(" of ") != std::string::npos)
+    return misread(field, fmt::format("{}: a cut by area is not supported yet", quoted(entry.text)),
+                   "give the window's height in per cent of the shell's inside diameter");
+  return from_value(entry, units::read(entry.text, field.kind));
+}
+
+Outcome read_angle(Entry entry) {
+  const Field& field = *entry.field;
+  Outcome outcome = from_value(entry, units::read(entry.text, Kind::angle));
+  if (const auto* read = std::get_if<Entry>(&outcome))
+    if (!is_one_of(fmt::format("{}", read->value.si), field.words))
+      return misread(field, quoted(entry.text) + " is not one of the layouts", "check the drawing");
+  return outcome;
+}
+
+Outcome read_flow(Entry entry) {
+  if (entry.text == "from_duty")
+    return misread(*entry.field, "a flow found from a duty is not read yet by this version", "give the flow");
+  auto read = units::read_flow(entry.text);
+  if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
+  units::Flow& flow = std::get<units::Flow>(read);
+  entry.value = std::move(flow.amount);
+  for (auto& open : flow.taken_for_granted) entry.value.taken_for_granted.push_back(std::move(open));
+  entry.basis = flow.basis;
+  entry.basis_temperature = flow.basis_temperature;
+  return checked(std::move(entry));
+}
+
+Outcome read_pair(Entry entry) {
+  auto read = units::read_pair(entry.text, entry.field->kind);
+  if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
+  units::Pair& pair = std::get<units::Pair>(read);
+  for (const units::Value* value : {&pair.first, &pair.second}) {
+    if (auto mistake = not_yet(*entry.field, *value)) return *mistake;
+    if (auto mistake = out_of_bounds(entry, value->si)) return *mistake;
+  }
+  entry.value = std::move(pair.first);
+  entry.second = pair.second.si;
+  return entry;
+}
+
+Outcome read_word(Entry entry) {
+  const Field& field = *entry.field;
+  if (is_one_of(entry.text, field.words)) return entry;
+  if (field.key == "methods.solution" && entry.text == "march")
+    return misread(field, "the solution 'march' is not there yet", "write mean, or leave the key out");
+  if (field.key == "methods.shell_side" && entry.text == "scaled")
+    return misread(field, "the shell side scaled from a sheet is not read yet by this version",
+                   "give the baffles and write bell_delaware or kern");
+  const auto near = nearest(entry.text, field.words);
+  return misread(field, quoted(entry.text) + " is not known here",
+                 near.empty() ? "write one of them" : fmt::format("write {}", near));
+}
+
+Outcome read_boolean(Entry entry) {
+  if (entry.text == "true" || entry.text == "false") return entry;
+  const bool is_yes =
+      entry.text == "yes" || entry.text == "on" || entry.text == "Yes" || entry.text == "True";
+  return misread(*entry.field, quoted(entry.text) + " is neither true nor false",
+                 is_yes ? "write true" : "write true or false");
+}
+
+Outcome read_version(Entry entry) {
+  if (entry.text == "1") return entry;
+  return misread(*entry.field, quoted(entry.text) + " is not a version of the case format known here",
+                 "write 1, or take a newer dutygauge");
+}
+
+Outcome read_tema(Entry entry) {
+  const Field& field = *entry.field;
+  const auto is_letter = [](char c) { return c >= 'A' && c <= 'Z'; };
+  if (entry.text.size() != 3 || !std::ranges::all_of(entry.text, is_letter))
+    return misread(field, quoted(entry.text) + " is not three capital letters",
+                   "write front head, shell and rear head");
+  const char shell = entry.text[1];
+  if (std::string_view("FGHJKX").find(shell) != std::string_view::npos)
+    return misread(field, fmt::format("shells of type {} come later", shell),
+                   "an E shell is all that is rated by now");
+  return entry;
+}
+
+Outcome read_by_form(Entry entry) {
+  switch (entry.field->form) {
+    case Form::word:
+      return read_word(std::move(entry));
+    case Form::boolean:
+      return read_boolean(std::move(entry));
+    case Form::version:
+      return read_version(std::move(entry));
+    case Form::tema:
+      return read_tema(std::move(entry));
+    case Form::whole:
+    case Form::whole_or_list:
+      return from_value(entry, units::read(entry.text, Kind::count));
+    case Form::quantity:
+      return read_quantity(std::move(entry));
+    case Form::angle:
+      return read_angle(std::move(entry));
+    case Form::wall:
+      return from_value(entry, units::read_wall(entry.text));
+    case Form::bore:
+      return from_value(entry, units::read_bore(entry.text));
+    case Form::flow:
+      return read_flow(std::move(entry));
+    case Form::pair:
+      return read_pair(std::move(entry));
+    case Form::text:
+    case Form::fluid:
+    case Form::block:
+    case Form::list:
+      return entry;
+  }
+  return entry;
+}
+
+}  // namespace
+
+void Reading::read_leaves() {
+  for (const auto& [key, leaf] : document_.leaves)
+    if (!is_refused(key))
+      if (const Field* field = table_.find(key)) read_leaf(key, leaf, *field);
+}
+
+void Reading::read_leaf(const std::string& key, const Leaf& leaf, const Field& field) {
+  if (leaf.text.empty() && !leaf.quoted)
+    return note(key, "has no value", expected_of(field), "write the value, or leave the key out");
+  if (leaf.text == "unknown" && field.form != Form::text)
+    return note(key, "'unknown' is not supported yet", expected_of(field),
+                field.need == Need::required ? "give a value" : "leave the key out");
+  Outcome outcome = read_by_form({.field = &field, .text = leaf.text, .line = leaf.value_at.line});
+  if (const auto* mistake = std::get_if<Misread>(&outcome))
+    return note(key, mistake->what, mistake->expected, mistake->remedy);
+  take(key, std::get<Entry>(std::move(outcome)));
+}
+
+void Reading::take(const std::string& key, Entry entry) {
+  for (const std::string& open : entry.value.taken_for_granted) {
+    Assumption assumption{.key = key, .value = entry.value.si, .kind = entry.kind(), .why = open};
+    if (entry.value.bare_pressure) {
+      assumption.low = entry.value.si;
+      assumption.high = entry.value.si + units::to_si(0.0, "barg", Kind::pressure);
+      assumption.look_in = "datasheet";
+    }
+    assume(std::move(assumption));
+  }
+  entries_.emplace(key, std::move(entry));
+}
+
+}  // namespace dutygauge::case_io

@@ -1,0 +1,117 @@
+#include <nlohmann/json.hpp>
+
+#include "dutygauge/case_io.hpp"
+#include "fields.hpp"
+#include "wording.hpp"
+
+// A YAML reader may hand an editor 208 or "208", true or "true": both are accepted.
+
+namespace dutygauge::case_io {
+namespace {
+
+using nlohmann::ordered_json;
+
+constexpr const char* whole_pattern = "^ *[0-9]+ *$";
+
+ordered_json words_of(std::string_view words) {
+  ordered_json list = ordered_json::array();
+  while (!words.empty()) {
+    const auto bar = words.find('|');
+    const std::string word(words.substr(0, bar));
+    list.push_back(word);
+    if (const auto amount = units::number(word)) list.push_back(static_cast<int>(*amount));
+    words = bar == std::string_view::npos ? std::string_view{} : words.substr(bar + 1);
+  }
+  return {{"enum", list}};
+}
+
+ordered_json whole_number(const Field& field) {
+  return {{"type", {"integer", "string"}},
+          {"pattern", whole_pattern},
+          {"minimum", static_cast<int>(field.bounds.least)},
+          {"maximum", static_cast<int>(field.bounds.most)}};
+}
+
+/// Blanks inside words of materials, units and fluids stay texts.
+ordered_json leaf(const Field& field) {
+  switch (field.form) {
+    case Form::word:
+    case Form::angle:
+      return words_of(field.words);
+    case Form::boolean:
+      return {{"enum", {true, false, "true", "false"}}};
+    case Form::version:
+      return {{"enum", {1, "1"}}};
+    case Form::tema:
+      return {{"type", "string"}, {"pattern", "^[ABCDN][E][LMNPSTUW]$"}};
+    case Form::whole:
+      return whole_number(field);
+    case Form::text:
+      return {{"type", {"string", "number", "boolean"}}};
+    case Form::quantity:
+      if (field.kind == units::Kind::ratio) return {{"type", {"string", "number"}}};
+      [[fallthrough]];
+    default:
+      return {{"type", "string"}, {"minLength", 1}};
+  }
+}
+
+ordered_json object_of(const FieldTable& table, const std::string& block);
+
+ordered_json schema_of(const FieldTable& table, const Field& field) {
+  ordered_json json;
+  if (field.form == Form::block) {
+    json = object_of(table, field.key);
+  } else if (field.form == Form::list) {
+    json = {{"type", "array"}, {"items", object_of(table, field.key + ".#")}};
+  } else if (field.form == Form::whole_or_list) {
+    json = {{"anyOf", {whole_number(field), {{"type", "array"}, {"items", whole_number(field)}}}}};
+  } else if (field.form == Form::fluid) {
+    ordered_json family = object_of(table, field.key);
+    family["minProperties"] = 1;
+    family["maxProperties"] = 1;
+    json = {{"anyOf", {{{"enum", {"water"}}}, family}}};
+  } else {
+    json = leaf(field);
+    if (!field.example.empty() && json.contains("type") && json["type"] == "string")
+      json["examples"] = ordered_json::array({field.example});
+  }
+  if (!field.help.empty()) json["description"] = field.help;
+  return json;
+}
+
+/// What a block requires: a list of names, and pairs of which one is enough.
+void add_required(const Field& field, ordered_json& object) {
+  const std::string name(last_segment(field.key));
+  if (field.instead.empty())
+    object["required"].push_back(name);
+  else
+    object["allOf"].push_back({{"anyOf", {{{"required", {name}}}, {{"required", {field.instead}}}}}});
+}
+
+ordered_json object_of(const FieldTable& table, const std::string& block) {
+  ordered_json object = {
+      {"type", "object"}, {"additionalProperties", false}, {"properties", ordered_json::object()}};
+  for (const Field& field : table.all()) {
+    if (parent_of(field.key) != block || (block.empty() && field.key.find('.') != std::string::npos))
+      continue;
+    if (last_segment(field.key) == "?")
+      object["additionalProperties"] = schema_of(table, field);
+    else
+      object["properties"][std::string(last_segment(field.key))] = schema_of(table, field);
+    if (field.need == Need::required) add_required(field, object);
+  }
+  return object;
+}
+
+}  // namespace
+
+std::string schema() {
+  ordered_json json = {{"$schema", "http://json-schema.org/draft-07/schema#"},
+                       {"title", "dutygauge case"},
+                       {"description", "A shell-and-tube exchanger and the service it is to do"}};
+  json.update(object_of(case_fields(), ""));
+  return json.dump(2) + "\n";
+}
+
+}  // namespace dutygauge::case_io

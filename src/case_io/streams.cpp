@@ -1,0 +1,116 @@
+#include <fmt/format.h>
+
+#include <cmath>
+
+#include "parts.hpp"
+#include "wording.hpp"
+
+namespace dutygauge::case_io {
+namespace {
+
+using fluids::Fluid;
+using fluids::Phase;
+using units::FlowBasis;
+using units::Kind;
+
+constexpr double standard_atmosphere =
+    101325.0;  // where written volume flows "at" a temperature are measured [Pa]
+
+bool is_bare_pressure(const Reading& reading, const std::string& key) {
+  const auto found = reading.entries().find(key);
+  return found != reading.entries().end() && found->second.value.bare_pressure;
+}
+
+/// A pressure without a datum is read as absolute, unless that decides what the fluid is.
+void check_datum(Reading& reading, const std::string& side, const Inlet& inlet, const fluids::Made& made) {
+  const std::string key = side + ".inlet.pressure";
+  if (!is_bare_pressure(reading, key)) return;
+  const auto note = [&](const std::string& why) {
+    reading.note(key,
+                 fmt::format("'{}' does not say whether it is absolute or gauge, and {}",
+                             shown(reading.entries().at(key).text), why),
+                 "a pressure with its datum, such as 6 bara or 6 barg", "take it from the datasheet");
+  };
+  if (made.objections.empty() && made.fluid.phase == Phase::gas)
+    return note("the density of a gas depends on it");
+  const auto if_gauge =
+      fluid_of(reading, side + ".fluid", {inlet.temperature, *inlet.pressure + standard_atmosphere});
+  if (!if_gauge) return;
+  const bool differ = made.objections.empty() != if_gauge->objections.empty() ||
+                      (made.objections.empty() && made.fluid.phase != if_gauge->fluid.phase);
+  if (differ) note("the phase at the inlet depends on it");
+}
+
+/// The density [kg/m3] that turns the written volume flow into a mass flow; empty with a mistake noted.
+std::optional<double> flow_density(Reading& reading, const std::string& side, const Fluid& fluid,
+                                   const Inlet& inlet) {
+  const std::string key = side + ".flow";
+  const Entry& flow = reading.entries().at(key);
+  const bool is_gas = fluid.phase == Phase::gas;
+  if (is_gas && flow.basis == FlowBasis::inlet_assumed) {
+    reading.note(key, fmt::format("'{}' does not say where the gas has that volume", shown(flow.text)),
+                 "a mass flow, or a volume flow with its place: 900 m3/h at inlet, 9000 Nm3/h",
+                 "say where it is measured");
+    return {};
+  }
+  const bool at_inlet = flow.basis != FlowBasis::temperature;
+  const double temperature = at_inlet ? *inlet.temperature : flow.basis_temperature;
+  const double pressure = at_inlet ? *inlet.pressure : standard_atmosphere;
+  const bool knows_pressure = std::holds_alternative<fluids::WaterModel>(fluid.model);
+  if (!at_inlet && is_gas && !knows_pressure) {
+    reading.note(key, "the fluid's properties do not give the density of this gas at 101325 Pa",
+                 "a mass flow, or a volume flow at inlet",
+                 "convert it with the gas's density at the stated temperature");
+    return {};
+  }
+  const auto usable = fluids::usable_temperatures(fluid, pressure);
+  const double density = fluids::state(fluid, temperature, pressure).density;
+  if (temperature >= usable.low && temperature <= usable.high && std::isfinite(density) && density > 0.0)
+    return density;
+  const bool below = temperature < usable.low;
+  reading.note(key,
+               fmt::format("the density at {} is not known: {}", units::typed(temperature, Kind::temperature),
+                           fluids::why_it_ends(fluid, pressure, !below)),
+               "a mass flow, or a volume flow where the fluid is known", "give the mass flow");
+  return {};
+}
+
+std::optional<double> mass_flow(Reading& reading, const std::string& side, const Fluid& fluid,
+                                const Inlet& inlet) {
+  const auto found = reading.entries().find(side + ".flow");
+  if (found == reading.entries().end()) return {};
+  if (found->second.basis == FlowBasis::mass) return found->second.value.si;
+  const auto density = flow_density(reading, side, fluid, inlet);
+  return density ? std::optional(*density * found->second.value.si) : std::nullopt;
+}
+
+std::string name_of(const Reading& reading, const std::string& side, const Fluid& fluid) {
+  const auto typed = word(reading.entries(), side + ".name");
+  return typed ? std::string(*typed) : fluid.name;
+}
+
+}  // namespace
+
+std::optional<MadeStream> stream_of(Reading& reading, const std::string& name) {
+  const std::string side = "streams." + name;
+  const Inlet inlet{si(reading.entries(), side + ".inlet.temperature"),
+                    si(reading.entries(), side + ".inlet.pressure")};
+  auto made = fluid_of(reading, side + ".fluid", inlet);
+  if (!made) return {};
+  if (inlet.temperature && inlet.pressure) check_datum(reading, side, inlet, *made);
+  if (!reading.is_at_fault(side + ".inlet.pressure")) reading.note_all(made->objections);
+  if (!made->objections.empty() || !inlet.temperature || !inlet.pressure) return {};
+  const auto flow = mass_flow(reading, side, made->fluid, inlet);
+  const auto fouling = si(reading.entries(), side + ".fouling");
+  if (!flow || !fouling) return {};
+  return MadeStream{.stream = {.name = name_of(reading, side, made->fluid),
+                               .fluid = std::move(made->fluid),
+                               .mass_flow = *flow,
+                               .inlet_temperature = *inlet.temperature,
+                               .inlet_pressure = *inlet.pressure,
+                               .fouling_resistance = *fouling},
+                    .assumed = std::move(made->assumed),
+                    .findings = std::move(made->findings)};
+}
+
+}  // namespace dutygauge::case_io
