@@ -27,15 +27,11 @@ service::Service service_of(const Entries& entries, units::System words) {
   return result;
 }
 
-rating::Methods methods_of(Reading& reading) {
+rating::Methods methods_of(const Reading& reading) {
   const auto shell_side = word(reading.entries(), "methods.shell_side");
-  if (!reading.has("methods.shell_side"))
-    reading.assume({.key = "methods.shell_side", .word = "bell_delaware", .why = "the method is left out"});
-  if (!reading.has("methods.solution"))
-    reading.assume({.key = "methods.solution",
-                    .word = "mean",
-                    .why = "the solution is left out; mean properties are the one there is"});
-  return {.shell_side = shell_side == "kern" ? shellside::Method::kern : shellside::Method::bell_delaware};
+  const auto solution = word(reading.entries(), "methods.solution");
+  return {.shell_side = shell_side == "kern" ? shellside::Method::kern : shellside::Method::bell_delaware,
+          .solution = solution == "mean" ? rating::Solution::mean : rating::Solution::march};
 }
 
 void check_inlets(Reading& reading) {

@@ -160,9 +160,10 @@ constexpr Row rows[] = {
     {"methods", block, usual, Kind::ratio, any, "", "how it is rated"},
     {"methods.tube_side", word, optional, Kind::ratio, any, "gnielinski", "film inside the tubes",
      "gnielinski"},
-    {"methods.shell_side", word, usual, Kind::ratio, any, "bell_delaware", "film outside the tubes",
+    {"methods.shell_side", word, optional, Kind::ratio, any, "bell_delaware", "film outside the tubes",
      "bell_delaware|kern"},
-    {"methods.solution", word, usual, Kind::ratio, any, "mean", "by mean properties", "mean"},
+    {"methods.solution", word, optional, Kind::ratio, any, "march",
+     "march: along the streams with local properties; mean: at the mean temperatures", "march|mean"},
 };
 
 constexpr Bounds densities = positive(30'000.0);

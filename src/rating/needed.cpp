@@ -2,7 +2,8 @@
 
 #include <cmath>
 
-#include "unit.hpp"
+#include "dutygauge/numerics.hpp"
+#include "outcome.hpp"
 
 namespace dutygauge::rating {
 namespace {
@@ -66,9 +67,7 @@ Finding out_of_reach(const Unit& unit, const Trial& trial, double p) {
       .source = "bowman_1940"};
 }
 
-}  // namespace
-
-Checked<std::optional<Needed>> needed_for(const Problem& problem, double duty) {
+Checked<std::optional<Needed>> needed_by_mean(const Problem& problem, double duty) {
   const DutyLimit limit = duty_limit(problem);
   if (!(duty < limit.duty)) return {{}, {too_much(problem, duty, limit)}, {}};
   const Unit unit = prepare(problem);
@@ -93,6 +92,93 @@ Checked<std::optional<Needed>> needed_for(const Problem& problem, double duty) {
             {}};
   needed.fouling_spare = 1.0 / needed.u_required - loaded.resistances.sum();
   return {needed, {}, {}};
+}
+
+/// The duty of a march with the surface multiplied by a factor and a resistance added
+/// outside; empty where there is no result.
+std::optional<double> duty_with(Problem problem, double area_factor, double resistance) {
+  problem.exchanger.area *= area_factor;
+  problem.shell_side.fouling_resistance += resistance;
+  const Unit unit = prepare(problem);
+  const Bulk inlets{problem.tube_side.inlet_temperature, problem.shell_side.inlet_temperature};
+  const auto result = march_through(unit, local(unit, inlets, {}));
+  if (!result.outcome) return {};
+  return result.outcome->duty;
+}
+
+/// Ends on either side of the factor at which a march does the duty, widened from a first
+/// guess; empty where more surface stops helping before.
+std::optional<numerics::Bracket> bracket_area(const Problem& problem, double duty, double guess) {
+  constexpr double widen = 1.6;
+  constexpr int most_steps = 20;
+  numerics::Bracket ends{guess / 1.15, guess * 1.15};
+  for (int step = 0;; ++step) {
+    const auto least = duty_with(problem, ends.low, 0.0);
+    if (!least || step == most_steps) return {};
+    if (*least <= duty) break;
+    ends.low /= widen;
+  }
+  double before = 0.0;
+  for (int step = 0;; ++step) {
+    const auto most = duty_with(problem, ends.high, 0.0);
+    if (!most || step == most_steps || *most <= before) return {};
+    if (*most >= duty) return ends;
+    before = *most;
+    ends.high *= widen;
+  }
+}
+
+/// The resistance that brings the duty down (or up) to the one asked for. Less than no
+/// fouling at all cannot be marched; there the surface margin stands for it.
+double spare_by_march(const Problem& problem, double duty, double u_required, double u_there) {
+  const auto& tube = problem.exchanger.tube_side;
+  const double all_fouling = problem.shell_side.fouling_resistance + problem.tube_side.fouling_resistance *
+                                                                         tube.outside_diameter /
+                                                                         tube.inside_diameter;
+  const auto excess = [&](double resistance) {
+    return duty_with(problem, 1.0, resistance).value_or(NAN) - duty;
+  };
+  const auto at_mean = needed_by_mean(problem, duty).value;
+  const double scale = 1.0 / u_required;
+  const double guess = at_mean ? at_mean->fouling_spare : 0.0;
+  double low = std::max(-all_fouling, guess - 0.05 * scale), high = guess + 0.05 * scale;
+  if (!(excess(low) >= 0.0)) low = -all_fouling;
+  if (!(excess(low) >= 0.0)) return 1.0 / u_required - 1.0 / u_there;
+  if (!(excess(high) <= 0.0)) high = 10.0 * scale;
+  const auto root = numerics::find_root(excess, {low, high}, 1e-12 * scale);
+  return root.value_or(1.0 / u_required - 1.0 / u_there);
+}
+
+Checked<std::optional<Needed>> needed_by_march(const Problem& problem, double duty) {
+  const DutyLimit limit = duty_limit(problem);
+  if (!(duty < limit.duty)) return {{}, {too_much(problem, duty, limit)}, {}};
+  const auto at_mean = needed_by_mean(problem, duty);
+  const double guess = at_mean.value ? 1.0 / (1.0 + at_mean.value->surface_margin) : 1.0;
+  const auto ends = bracket_area(problem, duty, guess);
+  const auto excess = [&](double factor) { return duty_with(problem, factor, 0.0).value_or(NAN) - duty; };
+  const auto factor = ends ? numerics::find_root(excess, *ends, 1e-10 * ends->high) : std::nullopt;
+  if (!factor) {
+    const Unit unit = prepare(problem);
+    const Trial trial = follow(unit, duty, {});
+    const double p = duty / (trial.tube_capacity_rate * std::abs(problem.shell_side.inlet_temperature -
+                                                                 problem.tube_side.inlet_temperature));
+    return {{}, {out_of_reach(unit, trial, p)}, {}};
+  }
+  Problem reduced = problem;
+  reduced.exchanger.area *= *factor;
+  const Rating there = rate_march(reduced);
+  Needed needed;
+  needed.surface_margin = 1.0 / *factor - 1.0;
+  needed.u_required = there.outcome->local.u_dirty * *factor;
+  needed.fouling_spare = spare_by_march(problem, duty, needed.u_required, there.outcome->local.u_dirty);
+  return {needed, {}, {}};
+}
+
+}  // namespace
+
+Checked<std::optional<Needed>> needed_for(const Problem& problem, double duty) {
+  return problem.methods.solution == Solution::march ? needed_by_march(problem, duty)
+                                                     : needed_by_mean(problem, duty);
 }
 
 }  // namespace dutygauge::rating

@@ -19,8 +19,8 @@ void check_stream(const Stream& stream, std::string_view side, double outlet, do
                                       fmt::format("{} inlet", side)));
   append(findings,
          fluids::check_bulk(stream.fluid, outlet, stream.inlet_pressure, fmt::format("{} outlet", side)));
-  append(findings, fluids::check_span(stream.fluid, {.inlet = stream.inlet_temperature, .outlet = outlet},
-                                      side));
+  append(findings,
+         fluids::check_span(stream.fluid, {.inlet = stream.inlet_temperature, .outlet = outlet}, side));
   append(findings,
          fluids::check_wall(stream.fluid, wall, stream.inlet_pressure, fmt::format("{} wall", side)));
 }

@@ -1,4 +1,6 @@
+#include <fmt/core.h>
 #include <cmath>
+
 #include <nlohmann/json.hpp>
 #include <optional>
 #include <stdexcept>
@@ -162,8 +164,36 @@ Json state(const service::Assessment& assessment) {
 }
 
 Json solutions(const service::Assessment& assessment) {
-  if (!assessment.rating.outcome) return {{"mean", nullptr}};
-  return {{"mean", {{"duty_W", assessment.rating.outcome->duty}}}};
+  const auto one = [](const std::optional<double>& duty) {
+    return duty ? Json{{"duty_W", *duty}} : Json(nullptr);
+  };
+  return {{"mean", one(assessment.rating.mean_duty)}, {"march", one(assessment.rating.march_duty)}};
+}
+
+Json between_shells(const service::Assessment& assessment) {
+  Json list = Json::array();
+  if (!assessment.rating.outcome) return list;
+  for (const auto& shell : assessment.rating.outcome->between_shells)
+    for (int bank = 1; bank <= assessment.problem.exchanger.shells_in_parallel; ++bank)
+      list.push_back({{"shell", fmt::format("{}.{}", bank, shell.position)},
+                      {"shell_side_outlet_degC", in_json_unit(shell.shell_outlet, units::Kind::temperature)},
+                      {"tube_side_outlet_degC", in_json_unit(shell.tube_outlet, units::Kind::temperature)}});
+  return list;
+}
+
+Json profile(const service::Assessment& assessment) {
+  Json list = Json::array();
+  if (!assessment.rating.outcome) return list;
+  for (const auto& at : assessment.rating.outcome->profile)
+    list.push_back({{"shell", at.shell},
+                    {"pass", at.pass},
+                    {"position", at.position},
+                    {"tube_side_degC", in_json_unit(at.tube, units::Kind::temperature)},
+                    {"shell_side_degC", in_json_unit(at.shell_side, units::Kind::temperature)},
+                    {"wall_degC", in_json_unit(at.wall, units::Kind::temperature)},
+                    {"u_W_m2K", at.u},
+                    {"flux_W_m2", at.flux}});
+  return list;
 }
 
 Json assumed(const Assumptions& assumptions) {
@@ -249,7 +279,9 @@ std::string json(const Result& result) {
                    {"assumed", assumed(result.assumed)},
                    {"findings", findings(result.findings)},
                    {"claims", Json::array()},
-                   {"inputs", inputs(result.inputs)}});
+                   {"inputs", inputs(result.inputs)},
+                   {"between_shells", between_shells(assessment)},
+                   {"profile", profile(assessment)}});
 }
 
 std::string error_json(const std::string& file, const std::vector<std::string>& lines) {

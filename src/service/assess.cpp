@@ -41,7 +41,7 @@ Assessment assess(const rating::Problem& problem, const Service& service) {
   Assessment result;
   result.problem = problem;
   result.service = service;
-  result.rating = rating::rate_mean(problem);
+  result.rating = rating::rate(problem);
   result.findings = result.rating.findings;
   if (const auto& outcome = result.rating.outcome) {
     result.margins = margins_of(problem, service, *outcome, result.findings);
@@ -51,7 +51,7 @@ Assessment assess(const rating::Problem& problem, const Service& service) {
                result.findings);
     rating::Problem by_kern = problem;
     by_kern.methods.shell_side = shellside::Method::kern;
-    result.second_opinion = rating::rate_mean(by_kern).outcome;
+    result.second_opinion = rating::rate(by_kern).outcome;
   }
   result.verdict = verdict_of(service, problem, result.rating, result.margins);
   return result;
