@@ -16,6 +16,7 @@ namespace {
 constexpr std::size_t most_nodes = 100'000;
 constexpr std::size_t deepest = 32;
 constexpr std::size_t longest_value = 4096;
+constexpr std::size_t most_before_stop = 10;
 
 /// A mistake that stops the reading; thrown inside this file only.
 struct Stop {
@@ -218,8 +219,11 @@ Document read_document(std::string_view bytes, std::string file) {
   if (auto mistake = text.mistake()) throw InputError(document.file, {*mistake});
   Builder builder(document, text);
   const auto stop = [&](const Stop& s) {
-    document.mistakes.push_back({text.position(s.at.line, s.at.column), "", s.what, s.expected, s.remedy});
-    throw InputError(document.file, document.mistakes);
+    // Where reading stops must be among the lines shown.
+    auto mistakes = document.mistakes;
+    if (mistakes.size() > most_before_stop) mistakes.resize(most_before_stop);
+    mistakes.push_back({text.position(s.at.line, s.at.column), "", s.what, s.expected, s.remedy});
+    throw InputError(document.file, std::move(mistakes));
   };
   try {
     std::istringstream stream{std::string(text.content())};
