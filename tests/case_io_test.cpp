@@ -7,10 +7,8 @@
 #include <cmath>
 #include <filesystem>
 #include <fstream>
-#include <nlohmann/json.hpp>
 #include <thread>
 
-#include "../src/case_io/fields.hpp"
 #include "case_io_good.hpp"
 #include "dutygauge/case_io.hpp"
 #include "support.hpp"
@@ -212,6 +210,16 @@ TEST_CASE("case_io: what is left open is assumed, with its key") {
   }));
 }
 
+TEST_CASE("case_io: a least wall is rated above its gauge, with a span") {
+  const Case a_case = built(good::with("wall: 2.11 mm", "wall: 14 BWG min"));
+  CHECK(relative(a_case.problem.exchanger.as_described.tube_wall, 1.10 * 0.083 * 0.0254) <
+        1e-9);  // 14 BWG: 0.083 in
+  REQUIRE(a_case.assumed.size() == 1);
+  CHECK(a_case.assumed[0].key == "exchanger.tubes.wall");
+  CHECK(a_case.assumed[0].low.value_or(0) < a_case.assumed[0].value);
+  CHECK(a_case.assumed[0].high.value_or(0) > a_case.assumed[0].value);
+}
+
 TEST_CASE("case_io: the same case in SI and in US units is the same problem") {
   for (const auto& file : case_files()) {
     CAPTURE(file);
@@ -297,72 +305,6 @@ TEST_CASE("case_io: a fluid can be read alone") {
                   InputError);
   CHECK_THROWS_AS(dutygauge::case_io::read_fluid_spec("water\nb: 1", 300.0, 1e5), InputError);
   CHECK_THROWS_AS(dutygauge::case_io::read_fluid_spec("", 300.0, 1e5), InputError);
-}
-
-TEST_CASE("case_io: every row's example can be read as that row") {
-  for (const auto& field : dutygauge::case_io::case_fields().all()) {
-    CAPTURE(field.key);
-    using dutygauge::case_io::Form;
-    CHECK(!field.help.empty());
-    if (field.form == Form::quantity)
-      CHECK(std::holds_alternative<units::Value>(units::read(field.example, field.kind)));
-    else if (field.form == Form::pair)
-      CHECK(std::holds_alternative<units::Pair>(units::read_pair(field.example, field.kind)));
-    else if (field.form == Form::flow)
-      CHECK(std::holds_alternative<units::Flow>(units::read_flow(field.example)));
-    else if (field.form != Form::block && field.form != Form::list)
-      CHECK(!field.example.empty());
-  }
-}
-
-TEST_CASE("case_io: the starter case builds, assumes nothing and holds every key once uncommented") {
-  const Case starter = built(dutygauge::case_io::starter_case());
-  CHECK(starter.assumed.empty());
-  std::string all;
-  std::istringstream lines(dutygauge::case_io::starter_case());
-  for (std::string line; std::getline(lines, line);) {
-    const auto first = line.find_first_not_of(' ');
-    const bool is_key = line.compare(first, 2, "# ") == 0 && line.find(':') < 44 && first + 2 < line.size();
-    all += (is_key && line[first + 2] >= 'a' && line[first + 2] <= 'z'
-                ? line.substr(0, first) + line.substr(first + 2)
-                : line) +
-           "\n";
-  }
-  // Alternatives exclude each other; everything else may stand together.
-  for (const char* alternative :
-       {"    u_tubes:", "    conductivity:", "    compartments:", "    count: 27"}) {
-    const auto at = all.find(alternative);
-    REQUIRE(at != std::string::npos);
-    all.erase(at, all.find('\n', at) - at + 1);
-  }
-  CHECK_NOTHROW(built(all));
-}
-
-TEST_CASE("case_io: the schema is draft-07 and closed") {
-  const auto schema = nlohmann::json::parse(dutygauge::case_io::schema());
-  CHECK(schema.at("$schema") == "http://json-schema.org/draft-07/schema#");
-  CHECK(schema.at("additionalProperties") == false);
-  CHECK(schema.at("required") == nlohmann::json({"dutygauge", "exchanger", "streams"}));
-  const auto& tubes = schema.at("properties").at("exchanger").at("properties").at("tubes");
-  CHECK(tubes.at("additionalProperties") == false);
-  CHECK(tubes.at("properties").at("layout").at("enum").size() == 8);
-  CHECK(schema.at("properties")
-            .at("streams")
-            .at("properties")
-            .at("tube_side")
-            .at("properties")
-            .contains("fluid"));
-}
-
-TEST_CASE("case_io: a key is explained by its full name, its end, or as not read yet") {
-  using dutygauge::case_io::explain;
-  CHECK(explain("exchanger.tubes.length")->kind == "a length");
-  CHECK(explain("tubes.length")->key == "exchanger.tubes.length");
-  CHECK(explain("streams.tube_side.fluid.table.rows.3.density").has_value());
-  CHECK(explain("fluid.table.rows.3.density").has_value());
-  CHECK(explain("claims")->kind == "not read yet by this version");
-  CHECK(!explain("exchanger.tubes.lenght").has_value());
-  CHECK(!explain("").has_value());
 }
 
 TEST_CASE("case_io: files and pipes are read, other things are refused in the system's words") {

@@ -79,6 +79,8 @@ TEST_CASE("geometry: what cannot be is objected to by its key, and derive refuse
        }},
       {"exchanger.sealing_strip_pairs", [](Description& d) { d.sealing_strip_pairs = -1; }},
       {"exchanger.pass_lanes.along_flow", [](Description& d) { d.pass_lanes_along_flow = -1; }},
+      {"exchanger.pass_lanes.along_flow", [](Description& d) { d.pass_lanes_along_flow = 26; }},
+      {"exchanger.pass_lanes.along_flow", [](Description& d) { d.pass_lanes_along_flow = 2'000'000'000; }},
       {"exchanger.baffles.cut", [](Description& d) { d.baffle_cut = 0.0; }},
       {"exchanger.baffles.cut", [](Description& d) { d.baffle_cut = 0.5; }},
       {"exchanger.baffles.cut",

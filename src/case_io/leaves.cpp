@@ -25,6 +25,11 @@ std::string quoted(std::string_view text) {
   return fmt::format("'{}'", shown(text));
 }
 
+/// A gauge that names a least wall comes with a span of its own; nobody wrote a range.
+bool has_span_of_its_own(const Entry& entry) {
+  return entry.field->form == Form::wall && !entry.value.taken_for_granted.empty();
+}
+
 /// Text that means something in the format which this version does not compute with.
 std::optional<Misread> not_yet(const Field& field, const units::Value& value) {
   if (value.low || value.high)
@@ -61,7 +66,8 @@ std::optional<Misread> out_of_bounds(const Entry& entry, double value) {
 /// The checks that every number goes through.
 Outcome checked(Entry entry) {
   const Field& field = *entry.field;
-  if (auto mistake = not_yet(field, entry.value)) return *mistake;
+  if (!has_span_of_its_own(entry))
+    if (auto mistake = not_yet(field, entry.value)) return *mistake;
   if (auto mistake = out_of_bounds(entry, entry.value.si)) return *mistake;
   return entry;
 }
@@ -210,6 +216,8 @@ void Reading::read_leaf(const std::string& key, const Leaf& leaf, const Field& f
 void Reading::take(const std::string& key, Entry entry) {
   for (const std::string& open : entry.value.taken_for_granted) {
     Assumption assumption{.key = key, .value = entry.value.si, .kind = entry.kind(), .why = open};
+    assumption.low = entry.value.low;
+    assumption.high = entry.value.high;
     if (entry.value.bare_pressure) {
       assumption.low = entry.value.si;
       assumption.high = entry.value.si + units::to_si(0.0, "barg", Kind::pressure);

@@ -54,9 +54,11 @@ void check_numbers(const Description& d, Objections& out) {
 }
 
 void check_counts(const Description& d, Objections& out) {
+  constexpr int most = 100'000;  // nobody counts further; keeps the arithmetic of counts safe
   const auto at_least = [&](const char* key, int value, int least) {
-    if (value < least)
-      out.push_back({key, fmt::format("is {}", value), fmt::format("{} or more", least), "mend the count"});
+    if (value < least || value > most)
+      out.push_back(
+          {key, fmt::format("is {}", value), fmt::format("{} to {}", least, most), "mend the count"});
   };
   at_least("exchanger.shells.in_series", d.shells_in_series, 1);
   at_least("exchanger.shells.in_parallel", d.shells_in_parallel, 1);
@@ -100,10 +102,10 @@ void check_plugging(const Description& d, Objections& out) {
                    "list the plugged tubes pass by pass, or give their sum"});
     return;
   }
-  int sum = 0;
+  long long sum = 0;
   for (const int plugged : d.plugged_per_pass) {
     sum += plugged;
-    if (plugged < 0 || plugged * d.tube_passes >= d.tube_count)
+    if (plugged < 0 || plugged >= static_cast<double>(d.tube_count) / d.tube_passes)
       out.push_back(
           {"exchanger.tubes.plugged", fmt::format("{} plugged in one pass", plugged),
            fmt::format("0 or more, and fewer than the {} tubes of a pass", d.tube_count / d.tube_passes),
@@ -174,6 +176,13 @@ void check_fit(const Description& d, Objections& out) {
     out.push_back({"exchanger.clearances.bundle_to_shell",
                    fmt::format("{} leaves no bundle in a shell of {}", length(gap), length(shell)),
                    "much less than the shell's inside diameter", "give the diametral gap D_s - D_otl"});
+  const double lanes =
+      d.pass_lanes_along_flow.value_or(0) * d.pass_lane_width.value_or(d.tube_outside_diameter);
+  if (lanes >= shell)
+    out.push_back(
+        {"exchanger.pass_lanes.along_flow",
+         fmt::format("lanes of {} together do not fit into a shell of {}", length(lanes), length(shell)),
+         "a few lanes, each about as wide as a tube", "count the open lanes parallel to the crossflow"});
   // A pitch cell may reach half a ligament beyond the outermost tube; 15 % more spares every real layout.
   const double cell =
       (d.layout == 45 || d.layout == 90 ? 1.0 : 0.5 * std::numbers::sqrt3) * d.tube_pitch * d.tube_pitch;
@@ -185,6 +194,10 @@ void check_fit(const Description& d, Objections& out) {
                                length(d.tube_pitch), length(shell)),
                    fmt::format("at most about {:.0f}", room / 1.15 / cell),
                    "check count, pitch, layout and shell diameter"});
+}
+
+void check_nozzles(const Description& d, Objections& out) {
+  const double shell = d.shell_inside_diameter;
   for (const auto& [key, bore] : {std::pair{"exchanger.shell.nozzle_in", d.shell_nozzle_in},
                                   std::pair{"exchanger.shell.nozzle_out", d.shell_nozzle_out},
                                   std::pair{"exchanger.tubes.nozzle_in", d.tube_nozzle_in},
@@ -274,6 +287,7 @@ Objections objections(const Description& description) {
   check_passes(description, out);
   check_tubes(description, out);
   check_fit(description, out);
+  check_nozzles(description, out);
   if (description.shell_type != 'X') {
     const std::size_t before = out.size();
     check_baffle_data(description, out);
