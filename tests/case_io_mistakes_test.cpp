@@ -176,7 +176,6 @@ TEST_CASE("case_io: what this version does not read is refused by name") {
       {"confidence",
        with("service:\n", "service:\n  confidence: 80 %\n"),
        {"service.confidence: not read yet"}},
-      {"march", with("solution: mean", "solution: march"), {"x:48:", "not there yet"}},
       {"scaled", with("bell_delaware", "scaled"), {"x:48:", "not read yet"}},
       {"a fluid by name",
        with("fluid: water", "fluid: seawater"),

@@ -157,7 +157,7 @@ constexpr Row rows[] = {
     {"service.duty.at_least", quantity, optional, Kind::power, positive(1e10), "400 kW", "duty"},
     {"service.duty.at_most", quantity, optional, Kind::power, positive(1e10), "900 kW", "duty"},
 
-    {"methods", block, usual, Kind::ratio, any, "", "how it is rated"},
+    {"methods", block, optional, Kind::ratio, any, "", "how it is rated"},
     {"methods.tube_side", word, optional, Kind::ratio, any, "gnielinski", "film inside the tubes",
      "gnielinski"},
     {"methods.shell_side", word, optional, Kind::ratio, any, "bell_delaware", "film outside the tubes",
