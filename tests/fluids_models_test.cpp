@@ -185,15 +185,15 @@ TEST_CASE("fluids: a density at standard conditions is right though the fluid ca
 }
 
 TEST_CASE("fluids: salt water without salt is fresh water, within what the sources say") {
-  // Sharqawy et al. and IF97 are different fits: viscosity up to 2.3 % apart at 5 degC.
+  // Sharqawy et al. state 0.1, 0.3, 3 and 1.5 % for their fits; the conductivity is 2.2 % apart at 5 degC.
   const Fluid fresh = make_seawater(0.0).fluid;
   const Fluid water = make_water(300.0, 5e5).fluid;
   for (double t : {280.0, 300.0, 340.0, 380.0}) {
     const State a = state(fresh, t, 5e5), b = state(water, t, 5e5);
     CHECK(support::relative(a.density, b.density) < 1e-3);
-    CHECK(support::relative(a.heat_capacity, b.heat_capacity) < 2e-3);
-    CHECK(support::relative(a.conductivity, b.conductivity) < 0.03);  // as stated by the source
-    CHECK(support::relative(a.viscosity, b.viscosity) < 0.025);
+    CHECK(support::relative(a.heat_capacity, b.heat_capacity) < 3e-3);
+    CHECK(support::relative(a.conductivity, b.conductivity) < 0.03);
+    CHECK(support::relative(a.viscosity, b.viscosity) < 0.015);
   }
   // Melinder's fits run into water as well.
   for (const char* name : {"ethylene_glycol_water", "sodium_chloride_brine"}) {
