@@ -4,10 +4,14 @@
 #include <string>
 
 #include "dutygauge/fluids.hpp"
+#include "fluids_laws.hpp"
 #include "support.hpp"
 
 using namespace dutygauge;
 using namespace dutygauge::fluids;
+using fluids_laws::check_laws;
+using fluids_laws::found;
+using fluids_laws::objects;
 
 namespace {
 
@@ -27,53 +31,6 @@ Fluid water_at(double temperature, double pressure) {
   const Made made = make_water(temperature, pressure);
   REQUIRE(made.objections.empty());
   return made.fluid;
-}
-
-bool positive(const State& s) {
-  return s.density > 0.0 && s.heat_capacity > 0.0 && s.conductivity > 0.0 && s.viscosity > 0.0 &&
-         std::isfinite(s.density + s.heat_capacity + s.conductivity + s.viscosity + s.enthalpy);
-}
-
-/// The laws every model keeps over its whole usable range.
-void check_laws(const Fluid& fluid, double pressure) {
-  const TemperatureRange range = usable_temperatures(fluid, pressure);
-  CAPTURE(fluid.name);
-  CAPTURE(pressure);
-  REQUIRE(range.low < range.high);
-  double last = -INFINITY;
-  for (int i = 0; i <= 200; ++i) {
-    const double t = range.low + (range.high - range.low) * i / 200.0;
-    CAPTURE(t);
-    const State s = state(fluid, t, pressure);
-    CHECK(positive(s));
-    CHECK(s.temperature == t);
-    CHECK(s.phase == fluid.phase);
-    CHECK(s.enthalpy > last);
-    CHECK(enthalpy(fluid, t, pressure) == s.enthalpy);
-    last = s.enthalpy;
-    CHECK(support::relative(temperature_at(fluid, s.enthalpy, pressure), t) < 1e-10);
-    const double step = 1e-3;
-    if (t - step < range.low || t + step > range.high) continue;
-    const double slope =
-        (enthalpy(fluid, t + step, pressure) - enthalpy(fluid, t - step, pressure)) / (2.0 * step);
-    CHECK(support::relative(slope, s.heat_capacity) < 2e-6);
-  }
-  CHECK(temperature_at(fluid, last + 1e5, pressure) == range.high);
-  CHECK(temperature_at(fluid, enthalpy(fluid, range.low, pressure) - 1e5, pressure) == range.low);
-  CHECK(temperature_at(fluid, 1e12, pressure) == range.high);
-  CHECK(temperature_at(fluid, -1e12, pressure) == range.low);
-}
-
-bool objects(const Made& made, const std::string& key) {
-  for (const auto& objection : made.objections)
-    if (objection.key == key) return true;
-  return false;
-}
-
-bool found(const Findings& findings, const std::string& id) {
-  for (const auto& finding : findings)
-    if (finding.id == id) return true;
-  return false;
 }
 
 }  // namespace

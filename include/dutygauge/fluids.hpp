@@ -140,17 +140,17 @@ struct ViscosityPoint {
 };
 enum class PetroleumKind { product, crude };
 struct PetroleumData {
-  std::optional<double> api, specific_gravity;  ///< one of them; at 60/60 degF
-  std::optional<double> watson_k;
-  std::vector<ViscosityPoint> viscosity;  ///< two points, or none (estimated from watson_k)
-  std::optional<PetroleumKind> kind;
+  std::optional<double> api{}, specific_gravity{};  ///< one of them; at 60/60 degF
+  std::optional<double> watson_k{};
+  std::vector<ViscosityPoint> viscosity{};  ///< two points, or none (estimated from watson_k)
+  std::optional<PetroleumKind> kind{};
 };
 Made make_petroleum(const PetroleumData& data);
 
 struct OilData {
-  std::optional<double> iso_vg;           ///< grade by ISO 3448, or
-  std::vector<ViscosityPoint> viscosity;  ///< two points
-  std::optional<double> density_15c, viscosity_index;
+  std::optional<double> iso_vg{};           ///< grade by ISO 3448, or
+  std::vector<ViscosityPoint> viscosity{};  ///< two points
+  std::optional<double> density_15c{}, viscosity_index{};
 };
 Made make_oil(const OilData& data);
 

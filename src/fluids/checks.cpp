@@ -94,10 +94,23 @@ void remark_on_extrapolation(const Fluid& fluid, double temperature, double pres
         temperature, valid.limit));
 }
 
-/// A liquid on the point of boiling or freezing. Water freezes from 274 K on, solutions are given 3 K.
+void remark_on_dew(const Fluid& fluid, double temperature, double pressure, std::string_view where,
+                   Findings& findings) {
+  const double dew = usable_temperatures(fluid, pressure).low;
+  if (temperature >= dew + phase_margin_temperature || !changes_phase(fluid, pressure, false)) return;
+  findings.push_back(at_temperature(
+      "fluids.near_condensing", Severity::should,
+      fmt::format(
+          "{}: {} at {} is within 3 K of condensing ({}); colder walls will be wet and take more heat "
+          "than is computed",
+          where, fluid.name, celsius(temperature), celsius(dew)),
+      temperature, dew));
+}
+
+/// On the point of boiling or freezing. Water freezes from 274 K on, solutions are given 3 K.
 void remark_on_phase(const Fluid& fluid, double temperature, double pressure, std::string_view where,
                      Findings& findings) {
-  if (fluid.phase != Phase::liquid) return;
+  if (fluid.phase == Phase::gas) return remark_on_dew(fluid, temperature, pressure, where, findings);
   const TemperatureRange range = usable_temperatures(fluid, pressure);
   if (temperature > range.high - phase_margin_temperature && changes_phase(fluid, pressure, true))
     findings.push_back(at_temperature(

@@ -42,8 +42,10 @@ TemperatureRange where_phase_stands(const Model& model, Phase phase, Temperature
 template <Searched Model>
 Limits limits_of(const Model& model, Phase phase, double pressure) {
   const Limits reach = reach_of(model);
-  return {.valid = where_phase_stands(model, phase, reach.valid, pressure, true),
-          .usable = where_phase_stands(model, phase, reach.usable, pressure, false)};
+  const TemperatureRange valid = where_phase_stands(model, phase, reach.valid, pressure, true);
+  const TemperatureRange usable = where_phase_stands(model, phase, reach.usable, pressure, false);
+  // The same boundary, looked for twice, differs by rounding.
+  return {.valid = {std::max(valid.low, usable.low), std::min(valid.high, usable.high)}, .usable = usable};
 }
 
 template <Searched Model>

@@ -110,8 +110,8 @@ void set_heat_capacity(const PetroleumData& data, double gravity, OilModel& mode
   model.heat_capacity_source = "kesler_lee_1976";
   model.heat_capacity_uncertainty = 0.03;
   set_critical(basis, model);
-  // Up to 0.8 of the critical temperature the density agrees with Rackett's equation within 4 %.
-  model.range.high = std::max(density_tables_end, 0.8 * model.critical_temperature);
+  // Up to there the density agrees with Rackett's equation within 4 %.
+  model.range.high = std::max(density_tables_end, 0.75 * model.critical_temperature);
 }
 
 void assume_kind(const PetroleumData& data, Made& made) {

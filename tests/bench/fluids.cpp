@@ -42,4 +42,13 @@ int main() {
                                       {350.0, 840.0, 2150.0, 0.125, 0.005}, fluids::Phase::liquid)
                    .fluid,
                320.0, pow_seconds);
+  report_fluid("seawater", fluids::make_seawater(0.035).fluid, 300.0, pow_seconds);
+  report_fluid("air", fluids::make_air().fluid, 350.0, pow_seconds);
+  report_fluid("flue gas",
+               fluids::make_gas_mixture({{"N2", 0.72}, {"CO2", 0.10}, {"H2O", 0.15}, {"O2", 0.03}}).fluid,
+               450.0, pow_seconds);
+  report_fluid("toluene", fluids::make_liquid("toluene").fluid, 320.0, pow_seconds);
+  report_fluid("glycol", fluids::make_solution("ethylene_glycol_water", 0.4).fluid, 300.0, pow_seconds);
+  report_fluid("petroleum", fluids::make_petroleum({.api = 35.0, .watson_k = 11.8}).fluid, 350.0,
+               pow_seconds);
 }

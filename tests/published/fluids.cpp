@@ -228,7 +228,6 @@ double petroleum(const Check& c) {
   }
   return of_made(
       fluids::make_petroleum({.api = c.number("API"),
-                              .specific_gravity = {},
                               .watson_k = c.number("Kw"),
                               .viscosity = points_of(c),
                               .kind = c.argument.at("group") == "product" ? fluids::PetroleumKind::product
@@ -237,10 +236,7 @@ double petroleum(const Check& c) {
 }
 
 double oil(const Check& c) {
-  return of_made(
-      fluids::make_oil(
-          {.iso_vg = {}, .viscosity = points_of(c), .density_15c = c.number("rho15"), .viscosity_index = {}}),
-      c);
+  return of_made(fluids::make_oil({.viscosity = points_of(c), .density_15c = c.number("rho15")}), c);
 }
 
 const std::map<std::string, std::function<double(const Check&)>> evaluators = {
