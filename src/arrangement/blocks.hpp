@@ -1,6 +1,7 @@
 #pragma once
 #include <algorithm>
 #include <cmath>
+#include <limits>
 
 #include "dutygauge/numerics.hpp"
 
@@ -61,6 +62,26 @@ inline double one_of_counterflow_chain(double r, double train, int shells) {
   const double slope = gained * numerics::log1p_ratio(u) / shells;
   const double share = slope * phi(slope * (r - 1.0));
   return share / (1.0 + share);
+}
+
+/// P [-] of a train whose streams both enter the same shell first.
+inline double parallel_chain(double r, double one_shell, int shells) {
+  const double left = 1.0 - (1.0 + r) * one_shell;  // of the difference between the streams
+  double sum = 0.0, power = 1.0;
+  for (int i = 0; i < shells; ++i) {
+    sum += power;
+    power *= left;
+  }
+  return one_shell * sum;
+}
+
+/// The smallest P of one shell with which such a train reaches `train`; beyond equal
+/// outlets only an odd number of crossing shells does, so NaN with an even number.
+inline double one_of_parallel_chain(double r, double train, int shells) {
+  const double left = 1.0 - (1.0 + r) * train;
+  if (left > 0.0) return -std::expm1(std::log(left) / shells) / (1.0 + r);
+  if (shells % 2 == 0 && left < 0.0) return std::numeric_limits<double>::quiet_NaN();
+  return (1.0 + std::pow(-left, 1.0 / shells)) / (1.0 + r);
 }
 
 }  // namespace dutygauge::arrangement::blocks

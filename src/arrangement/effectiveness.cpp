@@ -1,41 +1,53 @@
 #include <algorithm>
 #include <cmath>
-#include <limits>
 #include <stdexcept>
 
-#include "blocks.hpp"
-#include "dutygauge/arrangement.hpp"
+#include "shells.hpp"
+#include "train.hpp"
 
 namespace dutygauge::arrangement {
 namespace {
 
-/// E shell with an even number of passes: the shell stream well mixed across each
-/// section, the passes alternating. The same whichever way the first pass runs.
-double even_passes(int passes, double r, double ntu) {
-  const double n = passes;
-  if (passes == 2) return ntu / (0.5 * ntu * (1.0 + r) + blocks::xcoth(0.5 * ntu * std::hypot(r, 1.0)));
-  const double g = std::hypot(r, 2.0 / n);
-  return ntu /
-         (0.5 * ntu * r + blocks::xcoth(0.5 * ntu * g) + 1.0 / blocks::phi(ntu) - blocks::xcoth(ntu / n));
+double within_balance(double p, double r) {
+  return std::clamp(p, 0.0, r > 1.0 ? 1.0 / r : 1.0);  // only rounding ever passes a limit
 }
 
-double train(const Arrangement& arrangement, double r, double ntu) {
-  if (arrangement.flow == Flow::parallel) return blocks::parallel(r, ntu);
-  if (arrangement.tube_passes == 1) return blocks::counterflow(r, ntu);
-  const int shells = arrangement.shells_in_series;
-  return blocks::counterflow_chain(r, even_passes(arrangement.tube_passes, r, ntu / shells), shells);
+/// P of an unequal bank's shell; one without its shell stream gives nothing.
+double share_of_bank(const Arrangement& arrangement, const BankShare& share, double r, double ntu) {
+  if (!(share.tube_flow > 0.0 && share.area > 0.0 && share.shell_flow > 0.0)) return 0.0;
+  const double p =
+      effectiveness(arrangement, r * share.tube_flow / share.shell_flow, ntu * share.area / share.tube_flow);
+  return share.tube_flow * p;
+}
+
+bool is_whole(double sum) {
+  return std::abs(sum - 1.0) < 1e-9;
 }
 
 }  // namespace
 
 double effectiveness(const Arrangement& arrangement, double capacity_ratio, double ntu) {
-  if (!is_built(arrangement)) throw std::invalid_argument("arrangement: not built, see objections()");
-  if (capacity_ratio < 0.0 || ntu < 0.0) throw std::invalid_argument("arrangement: negative R or NTU");
-  // Infinity, taken at a stand-in whose square still fits a double.
-  constexpr double ample = 1e100;
-  const double r = std::min(capacity_ratio, ample);
-  const double p = train(arrangement, r, std::min(ntu, ample));
-  return std::min(p, r > 1.0 ? 1.0 / r : 1.0);  // only rounding ever passes the limit
+  train::require(arrangement, capacity_ratio);
+  if (ntu < 0.0) throw std::invalid_argument("arrangement: negative NTU");
+  if (std::isnan(ntu) || std::isnan(capacity_ratio)) return capacity_ratio + ntu;
+  // Infinity, taken at a stand-in whose powers still fit a double.
+  constexpr double ample = 1e60;
+  const Arrangement same = train::simplest(arrangement);
+  const double r = std::min(capacity_ratio, ample), share = std::min(ntu, ample) / same.shells_in_series;
+  const double one = within_balance(shells::effectiveness(train::one_shell_of(same), r, share), r);
+  return within_balance(train::effectiveness(same, r, one), r);
+}
+
+double effectiveness_of_bank(const Arrangement& arrangement, std::span<const BankShare> shares,
+                             double capacity_ratio, double ntu) {
+  double tube_flow = 0.0, shell_flow = 0.0, area = 0.0, p = 0.0;
+  for (const BankShare& share : shares) {
+    tube_flow += share.tube_flow, shell_flow += share.shell_flow, area += share.area;
+    p += share_of_bank(arrangement, share, capacity_ratio, ntu);
+  }
+  if (!is_whole(tube_flow) || !is_whole(shell_flow) || !is_whole(area))
+    throw std::invalid_argument("arrangement: the shares of a bank do not sum to 1");
+  return p;
 }
 
 }  // namespace dutygauge::arrangement

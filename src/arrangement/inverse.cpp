@@ -1,125 +1,157 @@
 #include <algorithm>
 #include <boost/math/tools/minima.hpp>
 #include <cmath>
-#include <stdexcept>
+#include <limits>
 #include <utility>
 
-#include "blocks.hpp"
-#include "dutygauge/arrangement.hpp"
 #include "dutygauge/numerics.hpp"
+#include "train.hpp"
 
+/// From P back to NTU, and how far P goes.
 namespace dutygauge::arrangement {
 namespace {
 
-Arrangement one_shell_of(Arrangement train) {
-  train.shells_in_series = 1;
-  return train;
-}
-
-/// A lone stream pair, without a limit below min(1, 1/R).
-bool is_counterflow(const Arrangement& a) {
-  return a.tube_passes == 1 && a.flow == Flow::counter;
-}
+constexpr double infinity = std::numeric_limits<double>::infinity();
 
 struct Peak {
   double ntu, p;
 };
 
-/// Where more surface stops helping: the maximum of P over ln NTU. With four and more
-/// passes P falls again behind it. A coarse scan comes first, since P is level to
-/// rounding far from the maximum; its ends scale with the smaller capacity rate.
+/// Where the search for a maximum ends, on the smaller capacity rate: the flattest ones
+/// known lie below 120.
+constexpr double last_ntu = 400.0;
+
+bool is_two_pass(const Arrangement& shell) {
+  return shell.shell_type == 'E' && shell.tube_passes == 2 &&
+         shell.pass_areas == decltype(shell.pass_areas){};
+}
+
+/// The maximum of P over ln NTU. A coarse scan comes first, since P is level to rounding
+/// far from the maximum.
 Peak peak_of_shell(const Arrangement& shell, double r) {
-  constexpr double first = -2.5, last = 6.0, step = 0.34;
-  const double shift = std::log(std::max(1.0, r));
+  const double everywhere = effectiveness(shell, r, infinity);
+  if (is_two_pass(shell)) return {infinity, everywhere};
+  constexpr double first = -2.5, step = 0.34;
+  const double shift = std::log(std::max(1.0, r)), last = std::log(last_ntu);
   const auto loss = [&](double log_ntu) { return -effectiveness(shell, r, std::exp(log_ntu - shift)); };
   double best = first, least = 0.0;
   for (double at = first; at <= last; at += step) {
     const double value = loss(at);
     if (value < least) best = at, least = value;
   }
+  constexpr double rounding = 1e-12;
+  if (everywhere >= -least * (1.0 - rounding)) return {infinity, std::max(everywhere, -least)};
   constexpr int half_the_digits = 26;
   const auto [at, value] =
       boost::math::tools::brent_find_minima(loss, best - step, best + step, half_the_digits);
-  return {std::exp(at - shift), -std::min(value, least)};
+  return value < least ? Peak{std::exp(at - shift), -value} : Peak{std::exp(best - shift), -least};
 }
 
-/// The largest P one shell with an even number of passes comes near.
-double largest_of_shell(const Arrangement& shell, double r) {
-  if (shell.tube_passes == 2) return 2.0 / (1.0 + r + std::hypot(r, 1.0));
-  return peak_of_shell(shell, r).p;
+/// Of a train: with an even number of shells in parallel order, P is largest where the
+/// outlets of the shells meet, not where each shell does most.
+Peak peak_of(const Arrangement& train, double r) {
+  const Arrangement shell = train::one_shell_of(train);
+  const int shells = train.shells_in_series;
+  const Peak one = peak_of_shell(shell, r);
+  const double meeting = 1.0 / (1.0 + r);
+  if (train.shells_order == Flow::parallel && shells % 2 == 0 && one.p > meeting)
+    return {shells * ntu_for(shell, r, meeting).value_or(one.ntu), meeting};
+  return {shells * one.ntu, train::effectiveness(train, r, one.p)};
 }
 
 std::optional<double> two_pass_ntu(double r, double p) {
-  const double g = std::hypot(r, 1.0);
-  const double left = 2.0 - p * (1.0 + r + g);
+  const double g = std::hypot(r, 1.0), left = 2.0 - p * (1.0 + r + g);
   if (!(left > 0.0)) return {};
   return std::log1p(2.0 * g * p / left) / g;
 }
 
-std::optional<double> bracketed_ntu(const Arrangement& shell, double r, double p) {
-  const auto target = counterflow_ntu(r, p);
-  const Peak peak = peak_of_shell(shell, r);
-  if (!target || !(p <= peak.p)) return {};
-  // The counterflow equivalent is nearly straight in NTU; P itself is flat near its peak.
+/// Steps up from the NTU of counterflow, below which no arrangement reaches P, to the
+/// first one that does, then closes in. A maximum between two steps is looked for last.
+std::optional<double> searched_ntu(const Arrangement& shell, double r, double p, double counterflow) {
+  double low = counterflow, high = infinity;
+  constexpr double farthest = 1e9;
+  const double scale = std::max(1.0, r);
+  for (double ntu = low; ntu * scale < farthest; ntu *= ntu * scale < last_ntu ? 1.25 : 8.0) {
+    if (effectiveness(shell, r, ntu) >= p) {
+      high = ntu;
+      break;
+    }
+    low = ntu;
+  }
+  if (high == infinity) {
+    const Peak peak = peak_of_shell(shell, r);
+    if (!(p <= peak.p) || peak.ntu == infinity) return {};
+    low = counterflow, high = peak.ntu;
+  }
+  if (!(low < high)) return high;
+  // The counterflow equivalent is nearly straight in NTU, P itself flat near its peak.
   const auto excess = [&](double ntu) {
-    return counterflow_ntu(r, effectiveness(shell, r, ntu)).value_or(2.0 * *target) - *target;
+    const auto reached = counterflow_ntu(r, effectiveness(shell, r, ntu));
+    return reached ? *reached - counterflow : counterflow;
   };
-  if (!(excess(*target) < 0.0)) return *target;
-  if (!(excess(peak.ntu) > 0.0)) return peak.ntu;
-  return numerics::find_root(excess, {*target, peak.ntu}, 1e-13 * peak.ntu);
+  if (!(excess(high) > 0.0)) return high;
+  return numerics::find_root(excess, {low, high}, 1e-13 * high);
+}
+
+std::optional<double> ntu_of_shell(const Arrangement& shell, double r, double p) {
+  const auto counterflow = counterflow_ntu(r, p);
+  if (!counterflow || *counterflow == 0.0) return counterflow;
+  if (is_two_pass(shell)) return two_pass_ntu(r, p);
+  if (shell.shell_type != 'E' || shell.tube_passes > 1) return searched_ntu(shell, r, p, *counterflow);
+  if (shell.flow == Flow::counter) return counterflow;
+  if (!(p * (1.0 + r) < 1.0)) return {};
+  return -std::log1p(-p * (1.0 + r)) / (1.0 + r);
 }
 
 }  // namespace
 
 double largest_effectiveness(const Arrangement& arrangement, double capacity_ratio) {
-  if (!is_built(arrangement)) throw std::invalid_argument("arrangement: not built, see objections()");
-  const double r = capacity_ratio;
-  if (arrangement.flow == Flow::parallel) return 1.0 / (1.0 + r);
-  const double limit = r > 1.0 ? 1.0 / r : 1.0;
-  if (is_counterflow(arrangement)) return limit;
-  const double shell = largest_of_shell(one_shell_of(arrangement), r);
-  return std::min(limit, blocks::counterflow_chain(r, shell, arrangement.shells_in_series));
+  train::require(arrangement, capacity_ratio);
+  return peak_of(train::simplest(arrangement), capacity_ratio).p;
+}
+
+double ntu_at_largest(const Arrangement& arrangement, double capacity_ratio) {
+  train::require(arrangement, capacity_ratio);
+  return peak_of(train::simplest(arrangement), capacity_ratio).ntu;
 }
 
 std::optional<double> ntu_for(const Arrangement& arrangement, double capacity_ratio,
                               double temperature_effectiveness) {
-  if (!is_built(arrangement)) throw std::invalid_argument("arrangement: not built, see objections()");
+  train::require(arrangement, capacity_ratio);
   const double r = capacity_ratio, p = temperature_effectiveness;
-  if (arrangement.flow == Flow::parallel) {
-    if (!(p >= 0.0 && p * (1.0 + r) < 1.0)) return {};
-    return -std::log1p(-p * (1.0 + r)) / (1.0 + r);
-  }
-  const auto counter = counterflow_ntu(r, p);
-  if (!counter || *counter == 0.0 || is_counterflow(arrangement)) return counter;
-  const int shells = arrangement.shells_in_series;
-  const double one = blocks::one_of_counterflow_chain(r, p, shells);
-  const auto ntu =
-      arrangement.tube_passes == 2 ? two_pass_ntu(r, one) : bracketed_ntu(one_shell_of(arrangement), r, one);
-  if (!ntu) return {};
-  return *ntu * shells;
+  if (!counterflow_ntu(r, p)) return {};
+  const Arrangement same = train::simplest(arrangement);
+  const auto share = ntu_of_shell(train::one_shell_of(same), r, train::share_of(same, r, p));
+  if (!share) return {};
+  return *share * same.shells_in_series;
 }
 
 std::optional<double> counterflow_ntu(double capacity_ratio, double temperature_effectiveness) {
   const double r = capacity_ratio, p = temperature_effectiveness;
   if (!(r >= 0.0 && p >= 0.0 && p < 1.0 && p * r < 1.0)) return {};
-  const double gained = p / (1.0 - p);
-  const double u = gained * (1.0 - r);
+  const double gained = p / (1.0 - p), u = gained * (1.0 - r);
   if (!(u > -1.0)) return {};
   return gained * numerics::log1p_ratio(u);
 }
 
 std::optional<double> lmtd_correction(const Arrangement& arrangement, double capacity_ratio, double ntu) {
+  train::require(arrangement, capacity_ratio);
   if (!(ntu >= 0.0 && capacity_ratio >= 0.0)) return {};
-  const Arrangement shell = one_shell_of(arrangement);
+  Arrangement same = train::simplest(arrangement);
+  const bool counterflow = same.shell_type == 'E' && same.tube_passes == 1 && same.flow == Flow::counter &&
+                           same.shells_in_series == 1;
   // An isothermal shell stream makes every arrangement counterflow.
-  if (ntu == 0.0 || capacity_ratio == 0.0 || is_counterflow(arrangement)) return 1.0;
+  if (ntu == 0.0 || capacity_ratio == 0.0 || counterflow) return 1.0;
   // Counterflow NTUs of shells in counterflow add up, so a train has the F of one shell;
   // this keeps digits where the train's P nears its limit.
-  const int shells = arrangement.flow == Flow::parallel ? 1 : arrangement.shells_in_series;
-  const double share = ntu / shells;
-  const auto counter = counterflow_ntu(capacity_ratio, effectiveness(shell, capacity_ratio, share));
-  if (!counter) return {};
-  return std::min(1.0, *counter / share);
+  double share = ntu;
+  if (same.shells_order == Flow::counter) {
+    share /= same.shells_in_series;
+    same = train::one_shell_of(same);
+  }
+  const auto needed = counterflow_ntu(capacity_ratio, effectiveness(same, capacity_ratio, share));
+  if (!needed) return {};
+  return std::min(1.0, *needed / share);
 }
 
 double log_mean(double difference_1, double difference_2) {

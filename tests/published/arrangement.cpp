@@ -1,75 +1,44 @@
-#include "dutygauge/arrangement.hpp"
+#include <fmt/format.h>
 
-#include <algorithm>
-#include <cmath>
-#include <optional>
-#include <string>
-
+#include "arrangement_rows.hpp"
 #include "published/published.hpp"
-#include "support.hpp"
 
-// F read from charts in worked examples, for the arrangements that are built.
-
-namespace published {
 namespace {
 
-using namespace dutygauge;
+using published::Known, published::Row, published::Rows;
 
-double correction(const arrangement::Arrangement& a, double r, double p) {
-  const auto ntu = arrangement::ntu_for(a, r, p);
-  return ntu ? arrangement::lmtd_correction(a, r, *ntu).value_or(0.0) : 0.0;
+/// What a value of each kind is good for. Charts of F are read to about 0.015; where the
+/// source rounds P and R to two digits first, near the steep end, 0.04. The tables of
+/// others state 1e-6 to 2e-5.
+double tolerance_of(const support::CsvRow& row) {
+  if (row.at("quantity") == "P") return 2e-5;
+  return row.at("note").find("rounding") != std::string::npos ? 0.04 : 0.015;
 }
 
-/// Which E shells a chart of the example is drawn for. An F shell of four passes is two 1-2 shells in series.
-arrangement::Arrangement arrangement_of(const support::CsvRow& line) {
-  arrangement::Arrangement a{.tube_passes = std::stoi(line.at("tube_passes")),
-                             .shells_in_series = std::stoi(line.at("shells_in_series"))};
-  if (line.at("arrangement") == "F") a.tube_passes /= 2, a.shells_in_series *= 2;
-  return a;
+Row row_of(const support::CsvRow& row) {
+  const std::string& quantity = row.at("quantity");
+  const std::string& source = row.at("source");
+  const bool is_p = quantity == "P";
+  return {
+      .source = source.substr(0, source.find(" [")),
+      .known = Known::seen,
+      .what = fmt::format("{} of {}, {} passes, {} shells, R {:.4g}, {} {:.4g}", quantity,
+                          row.at("arrangement"), row.at("tube_passes"), row.at("shells_in_series"),
+                          std::stod(row.at("R")), is_p ? "NTU" : "P", std::stod(row.at(is_p ? "NTU" : "P"))),
+      .unit = "-",
+      .published = std::stod(row.at(quantity + "_published")),
+      .ours = arrangement_rows::ours_of_printed(row),
+      .tolerance = tolerance_of(row),
+      .relative = false,
+      .reason = row.at("note")};
 }
 
-/// How well an F is read, relative, where that is known of the example: Kern's charts to 1 or 2 %, to 4 % on
-/// the steep curve of four shell passes; Sinnott rounds P to 0.21, which alone moves F by 3 %.
-std::optional<double> reading(const std::string& id) {
-  if (id == "Kern-7.4") return 0.01;
-  if (id == "Kern-7.3" || id == "Kern-11.1" || id == "Kern-11.3") return 0.02;
-  if (id == "Kern-11.2") return 0.04;
-  if (id == "Sinnott-12.1") return 0.06;
-  return {};
-}
-
-/// Author, title and place: what stands before the first bracket.
-std::string citation(std::string source) {
-  source = source.substr(0, std::min(source.find(" ["), source.find(" (")));
-  std::ranges::replace(source, ';', ',');
-  return source;
-}
-
-Rows rows_of_this_file() {
+Rows printed_values() {
   Rows rows;
-  for (const auto& line : support::read_csv(TEST_DATA "/pntu-published.csv")) {
-    const std::string& shell = line.at("arrangement");
-    if (line.at("quantity") != "F" || (shell != "E" && shell != "F")) continue;
-    const auto a = arrangement_of(line);
-    const double r = std::stod(line.at("R")), p = std::stod(line.at("P"));
-    const double ours = correction(a, r, p), published = std::stod(line.at("F_published"));
-    const auto read = reading(line.at("id"));
-    // Of the others: F and P are each read to 0.01, and F falls with P.
-    const double slope = std::abs(correction(a, r, p + 1e-4) - correction(a, r, p - 1e-4)) / 2e-4;
-    rows.push_back({.source = citation(line.at("source")),
-                    .known = Known::seen,
-                    .what = "F, " + line.at("id"),
-                    .unit = "-",
-                    .published = published,
-                    .ours = ours,
-                    .tolerance = read ? *read * published : 0.01 * (1.0 + slope),
-                    .relative = false,
-                    .reason = "read from a chart"});
-  }
+  for (const auto& row : support::read_csv(TEST_DATA "/pntu-published.csv")) rows.push_back(row_of(row));
   return rows;
 }
 
-const Registration registration{&rows_of_this_file};
+const published::Registration registered{&printed_values};
 
 }  // namespace
-}  // namespace published

@@ -1,0 +1,23 @@
+#pragma once
+#include "dutygauge/arrangement.hpp"
+
+/// A train of equal shells and one of them.
+namespace dutygauge::arrangement::train {
+
+/// Throws std::invalid_argument for what is not built and for a negative R. NaN passes.
+void require(const Arrangement& arrangement, double r);
+
+/// The same flow as the fewest and simplest shells: F as E shells, one-pass E as one.
+/// `whole` shells of the result have the NTU of the train.
+Arrangement simplest(const Arrangement& arrangement);
+
+Arrangement one_shell_of(const Arrangement& arrangement);
+
+/// P [-] of the train whose shells each have `one_shell`.
+double effectiveness(const Arrangement& arrangement, double r, double one_shell);
+
+/// The smallest P [-] of each shell that gives the train its own; may be out of reach,
+/// and is NaN where no train gives it. Needs 0 <= p < min(1, 1/R).
+double share_of(const Arrangement& arrangement, double r, double p);
+
+}  // namespace dutygauge::arrangement::train
