@@ -240,7 +240,7 @@ TEST_CASE("tubeside: at one mass flow every part of the drop goes with 1/density
 }
 
 TEST_CASE("tubeside: shells in series multiply every part of the drop") {
-  const PressureDrop three = PressureDrop{10.0, 20.0, 30.0}.of_shells(3);
+  const PressureDrop three = PressureDrop{10.0, 20.0, 30.0}.times(3);
   CHECK(three.friction == 30.0);
   CHECK(three.turns == 60.0);
   CHECK(three.nozzles == 90.0);

@@ -94,7 +94,7 @@ struct Span {
 Findings check_span(const Fluid& fluid, Span temperatures, std::string_view where);
 
 // --- making fluids. Mistakes in the data come back as objections with keys relative to `fluid`
-// ("table.rows.2.viscosity", rows counted from 1; the empty key is `fluid` itself).
+// ("table.rows.2.viscosity", rows counted from 0; the empty key is `fluid` itself).
 
 struct Made {
   Fluid fluid;

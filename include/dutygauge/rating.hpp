@@ -35,11 +35,18 @@ struct Methods {
   Solution solution = Solution::march;
 };
 
+/// Factors on what the methods give: 1 as published. For a film multiplier the user has
+/// reason for, and for swinging a method within its scatter.
+struct Factors {
+  double tube_film = 1, shell_film = 1, tube_drop = 1, shell_drop = 1;
+};
+
 /// What is to be rated.
 struct Problem {
   geometry::Exchanger exchanger;
   Stream shell_side, tube_side;
   Methods methods;
+  Factors factors{};
 };
 
 /// Films, walls and U with both streams at given bulk temperatures.
@@ -55,16 +62,16 @@ struct Local {
 
 /// One place along a tube pass of a march.
 struct ProfilePoint {
-  int shell = 1, pass = 1;                 ///< of the train along the shell stream; tube pass
-  double position = 0;                     ///< along the tube stream's own way through this stretch, 0 to 1
+  int shell = 1, pass = 1;  ///< of the train along the shell stream; tube pass
+  double position = 0;      ///< along the tube stream's own way through this stretch, 0 to 1
   double tube = 0, shell_side = 0, wall = 0;  ///< bulk of both streams, mean metal [K]
-  double u = 0;                            ///< [W/m2.K]
-  double flux = 0;                         ///< from shell to tube side [W/m2]
+  double u = 0;                               ///< [W/m2.K]
+  double flux = 0;                            ///< from shell to tube side [W/m2]
 };
 
 /// What leaves one shell of a train.
 struct ShellEnd {
-  int position = 1;  ///< along the shell stream
+  int position = 1;                          ///< along the shell stream
   double shell_outlet = 0, tube_outlet = 0;  ///< [K]
 };
 
@@ -81,18 +88,18 @@ struct Outcome {
   double log_mean = 0, f_correction = 0, mean_difference = 0;  ///< [K], [-], [K]
   double duty_ntu = 0, duty_lmtd = 0;                          ///< the two routes at the solution [W]
   double balance_error = 0;                                    ///< |Q_hot - Q_cold|/Q from enthalpies
-  Local local;                            ///< at the bulk means; a march puts its films, U and walls in
-  tubeside::PressureDrop tube_drop;       ///< one bank, all its shells in series
-  shellside::PressureDrop shell_drop;     ///< the same
-  std::vector<ProfilePoint> profile;      ///< march only
-  std::vector<ShellEnd> between_shells;   ///< along the shell stream; march only
+  Local local;                           ///< at the bulk means; a march puts its films, U and walls in
+  tubeside::PressureDrop tube_drop;      ///< one bank, all its shells in series
+  shellside::PressureDrop shell_drop;    ///< the same
+  std::vector<ProfilePoint> profile;     ///< march only
+  std::vector<ShellEnd> between_shells;  ///< along the shell stream; march only
 };
 
 /// A rating, or why there is none.
 struct Rating {
   std::optional<Outcome> outcome;
-  std::string no_result;    ///< why not, a sentence; empty with an outcome
-  double largest_duty = 0;  ///< what an endless surface in counterflow would do [W]
+  std::string no_result;                        ///< why not, a sentence; empty with an outcome
+  double largest_duty = 0;                      ///< what an endless surface in counterflow would do [W]
   std::optional<double> mean_duty, march_duty;  ///< of the solutions that were found [W]
   Findings findings;
 };

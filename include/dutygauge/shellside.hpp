@@ -101,8 +101,8 @@ struct Film {
 struct PressureDrop {
   double crossflow = 0, window = 0, ends = 0, nozzles = 0;
   double total() const { return crossflow + window + ends + nozzles; }
-  PressureDrop of_shells(int count) const {
-    return {crossflow * count, window * count, ends * count, nozzles * count};
+  PressureDrop times(double factor) const {
+    return {crossflow * factor, window * factor, ends * factor, nozzles * factor};
   }
 };
 

@@ -23,7 +23,7 @@ struct Film {
 struct PressureDrop {
   double friction = 0, turns = 0, nozzles = 0;
   double total() const { return friction + turns + nozzles; }
-  PressureDrop of_shells(int count) const { return {friction * count, turns * count, nozzles * count}; }
+  PressureDrop times(double factor) const { return {friction * factor, turns * factor, nozzles * factor}; }
 };
 
 /// Mean Nusselt number [-] without wall correction: laminar to turbulent, continuous in Re.

@@ -27,8 +27,12 @@ service::Service service_of(const Entries& entries, units::System words) {
   return result;
 }
 
-rating::Methods methods_of(const Reading& reading) {
+rating::Methods methods_of(Reading& reading) {
   const auto shell_side = word(reading.entries(), "methods.shell_side");
+  const auto tema = word(reading.entries(), "exchanger.tema");
+  if (shell_side == "kern" && tema && tema->size() == 3 && (*tema)[1] == 'X')
+    reading.note("methods.shell_side", "Kern's method has no crossflow shell (X)", "bell_delaware",
+                 "write bell_delaware, or leave the key out");
   const auto solution = word(reading.entries(), "methods.solution");
   return {.shell_side = shell_side == "kern" ? shellside::Method::kern : shellside::Method::bell_delaware,
           .solution = solution == "mean" ? rating::Solution::mean : rating::Solution::march};

@@ -63,6 +63,8 @@ void describe_letters_and_shells(const Entries& entries, Description& d) {
   d.shells_in_parallel = whole(entries, "exchanger.shells.in_parallel").value_or(1);
   if (const auto flow = word(entries, "exchanger.flow_direction"))
     d.flow_direction = *flow == "parallel" ? FlowDirection::parallel : FlowDirection::counter;
+  if (word(entries, "exchanger.first_tube_pass") == "with_shell_flow")
+    d.first_tube_pass = geometry::FirstTubePass::with_shell_flow;
   d.impingement_plate = word(entries, "exchanger.shell.impingement_plate") == "true";
 }
 

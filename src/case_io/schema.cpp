@@ -43,7 +43,7 @@ ordered_json leaf(const Field& field) {
     case Form::version:
       return {{"enum", {1, "1"}}};
     case Form::tema:
-      return {{"type", "string"}, {"pattern", "^[ABCDN][E][LMNPSTUW]$"}};
+      return {{"type", "string"}, {"pattern", "^[ABCDN][EFGHJX][LMNPSTUW]$"}};
     case Form::whole:
       return whole_number(field);
     case Form::text:

@@ -55,7 +55,7 @@ State state_of(const OilModel& model, Phase phase, double temperature, double pr
 
 Caloric caloric_of(const OilModel& model, Phase, double t, double) {
   const auto [a, b, c] = model.heat_capacity;
-  const auto integral = [&](double x) { return x * (a + x * (b / 2.0 + x * c / 3.0)); };
+  const auto integral = [a = a, b = b, c = c](double x) { return x * (a + x * (b / 2.0 + x * c / 3.0)); };
   return {integral(t) - integral(enthalpy_zero), a + t * (b + t * c)};
 }
 

@@ -153,7 +153,7 @@ void object_to_temperature(double temperature, const std::string& key, Objection
 void object_to_order(const std::vector<PropertyRow>& rows, Objections& objections) {
   for (std::size_t i = 1; i < rows.size(); ++i) {
     if (rows[i].temperature > rows[i - 1].temperature) continue;
-    objections.push_back({fmt::format("table.rows.{}.temperature", i + 1),
+    objections.push_back({fmt::format("table.rows.{}.temperature", i),
                           fmt::format("{} does not rise above the {} of the row before",
                                       celsius(rows[i].temperature), celsius(rows[i - 1].temperature)),
                           "rows in rising temperature, each temperature once", "sort the rows"});
@@ -179,7 +179,7 @@ Made make_table(std::vector<PropertyRow> rows, Phase phase) {
         {"table.rows", fmt::format("{} rows", rows.size()), "2 to 200 rows",
          rows.size() < 2 ? "add a row, or give the properties as constant" : "leave rows out"});
   for (std::size_t i = 0; i < rows.size(); ++i) {
-    const std::string prefix = fmt::format("table.rows.{}.", i + 1);
+    const std::string prefix = fmt::format("table.rows.{}.", i);
     object_to_temperature(rows[i].temperature, prefix + "temperature", made.objections);
     object_to_impossible(rows[i], prefix, made.objections);
   }
@@ -187,7 +187,7 @@ Made make_table(std::vector<PropertyRow> rows, Phase phase) {
   if (!made.objections.empty()) return made;
   for (std::size_t i = 0; i < rows.size(); ++i) {
     remark_on_unusual(rows[i], phase, fmt::format("table row {}", i + 1), made.findings);
-    if (i > 0) judge_trend(rows[i - 1], rows[i], phase, fmt::format("table.rows.{}.viscosity", i + 1), made);
+    if (i > 0) judge_trend(rows[i - 1], rows[i], phase, fmt::format("table.rows.{}.viscosity", i), made);
   }
   if (!made.objections.empty()) return made;
   const double span = rows.back().temperature - rows.front().temperature;

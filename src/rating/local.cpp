@@ -58,6 +58,9 @@ double settle(const Unit& unit, const Bulk& bulk, const FluxRule& rule, int pass
     at.shell_wall = wall_state(problem.shell_side, unit.shell_wall_range, at.walls.shell_wetted);
     at.tube_film = tubeside::film(problem.exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall);
     at.shell_film = shellside::film(unit.bundle, unit.shell_flow, at.shell_bulk, at.shell_wall);
+    at.tube_film.nusselt *= problem.factors.tube_film;
+    at.tube_film.coefficient *= problem.factors.tube_film;
+    at.shell_film.coefficient *= problem.factors.shell_film;
     at.resistances = resistances_of(unit, at, at.walls.metal_mean);
     const double u_before = at.u_dirty;
     at.u_dirty = 1.0 / at.resistances.sum();

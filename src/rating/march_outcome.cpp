@@ -128,8 +128,9 @@ Outcome outcome_of(const Unit& unit, const March& march) {
   fill_dimensionless(unit, trial, outcome);
   const double shell_gain = problem.shell_side.mass_flow * march.mixed_enthalpy(march.network().shell_outlet);
   outcome.balance_error = std::abs(std::abs(shell_gain) - std::abs(duty)) / duty;
-  outcome.tube_drop = means.tube_drop.of_shells(problem.exchanger.shells_in_series);
-  outcome.shell_drop = means.shell_drop.of_shells(problem.exchanger.shells_in_series);
+  outcome.tube_drop = means.tube_drop.times(problem.exchanger.shells_in_series * problem.factors.tube_drop);
+  outcome.shell_drop =
+      means.shell_drop.times(problem.exchanger.shells_in_series * problem.factors.shell_drop);
   fill_profile(unit, march, outcome);
   return outcome;
 }

@@ -29,10 +29,10 @@ Outcome outcome_of(const Unit& unit, const Trial& trial, double duty) {
   const int in_series = problem.exchanger.shells_in_series;
   outcome.tube_drop = tubeside::pressure_drop(problem.exchanger.tube_side, unit.tube_flow,
                                               trial.local.tube_bulk, trial.local.tube_wall)
-                          .of_shells(in_series);
+                          .times(in_series * problem.factors.tube_drop);
   outcome.shell_drop =
       shellside::pressure_drop(unit.bundle, unit.shell_flow, trial.local.shell_bulk, trial.local.shell_wall)
-          .of_shells(in_series);
+          .times(in_series * problem.factors.shell_drop);
   return outcome;
 }
 

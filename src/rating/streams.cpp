@@ -66,7 +66,10 @@ arrangement::Arrangement arrangement_of(const geometry::Exchanger& exchanger) {
           .tube_passes = exchanger.as_described.tube_passes,
           .shells_in_series = exchanger.shells_in_series,
           .flow = exchanger.flow_direction == geometry::FlowDirection::parallel ? arrangement::Flow::parallel
-                                                                                : arrangement::Flow::counter};
+                                                                                : arrangement::Flow::counter,
+          .first_tube_pass = exchanger.first_tube_pass == geometry::FirstTubePass::with_shell_flow
+                                 ? arrangement::FirstTubePass::with_shell_flow
+                                 : arrangement::FirstTubePass::against_shell_flow};
 }
 
 bool shell_side_is_hot(const Problem& problem) {

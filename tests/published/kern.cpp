@@ -152,7 +152,7 @@ Rows rows_of(const KernExample& kern) {
       {kern.source, kern.known, "tube-side film", "W/m2.K", kern.film,
        film(built.tube_side, kern.tubes).coefficient, kern.film_tolerance, true, kern.film_reason},
       {kern.source, kern.known, "tube-side friction, all shells", "Pa", kern.friction,
-       drop(built.tube_side, kern.tubes).of_shells(kern.shells).friction, 0.3, true,
+       drop(built.tube_side, kern.tubes).times(kern.shells).friction, 0.3, true,
        "Kern's friction chart is for commercial pipe; ours takes drawn steel tube, 0.015 mm rough"},
       {kern.source,
        Known::computed,
