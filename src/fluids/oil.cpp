@@ -2,8 +2,8 @@
 
 #include <fmt/core.h>
 
+#include <algorithm>
 #include <cmath>
-#include <numbers>
 
 #include "limits.hpp"
 
@@ -54,9 +54,9 @@ State state_of(const OilModel& model, Phase phase, double temperature, double pr
 }
 
 Caloric caloric_of(const OilModel& model, Phase, double t, double) {
-  const auto [a, b, c] = model.heat_capacity;
-  const auto integral = [a = a, b = b, c = c](double x) { return x * (a + x * (b / 2.0 + x * c / 3.0)); };
-  return {integral(t) - integral(enthalpy_zero), a + t * (b + t * c)};
+  const auto& c = model.heat_capacity;
+  const auto integral = [&](double x) { return x * (c[0] + x * (c[1] / 2.0 + x * c[2] / 3.0)); };
+  return {integral(t) - integral(enthalpy_zero), c[0] + t * (c[1] + t * c[2])};
 }
 
 Limits reach_of(const OilModel& model) {
