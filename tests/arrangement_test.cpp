@@ -246,6 +246,7 @@ TEST_CASE("arrangement: NaN never becomes an answer and a caller's bug is thrown
   for (const auto& a : several) {
     CHECK(std::isnan(effectiveness(a, nan, 1.0)));
     CHECK(std::isnan(effectiveness(a, 1.0, nan)));
+    CHECK(std::isnan(largest_effectiveness(a, nan)));
     CHECK(!ntu_for(a, nan, 0.3).has_value());
     CHECK(!ntu_for(a, 1.0, nan).has_value());
     CHECK(!lmtd_correction(a, nan, 1.0).has_value());

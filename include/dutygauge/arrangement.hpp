@@ -52,7 +52,8 @@ struct Arrangement {
 ///
 /// Closed forms where there are any. Numerical: E with an odd number of passes, G and H
 /// with four or more, J with an odd number, X with the shell stream mixed nowhere, and
-/// everything unequal. K is a pool stirred to one temperature, isothermal at R = 0.
+/// everything unequal; X of that kind counts an NTU of at most 150 a pass. K is a pool
+/// stirred to one temperature, isothermal at R = 0. NaN in, NaN out.
 /// Source: Underwood (1934), Bowman (1936) and Bowman, Mueller & Nagle (1940) for E and
 ///         trains; Schindler & Bates (1960) G; Jaw (1964) J; Nusselt (1911) X.
 double effectiveness(const Arrangement& arrangement, double capacity_ratio, double ntu);

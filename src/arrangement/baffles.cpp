@@ -111,7 +111,8 @@ double effectiveness_with_baffles(const Arrangement& arrangement, double capacit
   const bool equal = arrangement.pass_areas == decltype(arrangement.pass_areas){};
   if (!is_built(arrangement) || arrangement.shell_type != 'E' || !equal || baffles < 0)
     throw std::invalid_argument("arrangement: baffles are counted in E shells with equal passes");
-  if (!(capacity_ratio >= 0.0 && ntu >= 0.0)) throw std::invalid_argument("arrangement: negative R or NTU");
+  if (!(capacity_ratio >= 0.0 && ntu >= 0.0))
+    throw std::invalid_argument("arrangement: R and NTU are not negative");
   const int count = baffles + 1, shells = arrangement.shells_in_series;
   const double share = ntu / shells, across = capacity_ratio * share / count;
   const auto nodes =

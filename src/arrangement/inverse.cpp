@@ -30,7 +30,7 @@ bool is_two_pass(const Arrangement& shell) {
 /// far from the maximum.
 Peak peak_of_shell(const Arrangement& shell, double r) {
   const double everywhere = effectiveness(shell, r, infinity);
-  if (is_two_pass(shell)) return {infinity, everywhere};
+  if (is_two_pass(shell) || std::isnan(everywhere)) return {infinity, everywhere};
   constexpr double first = -2.5, step = 0.34;
   const double shift = std::log(std::max(1.0, r)), last = std::log(last_ntu);
   const auto loss = [&](double log_ntu) { return -effectiveness(shell, r, std::exp(log_ntu - shift)); };

@@ -44,6 +44,8 @@ Matrix short_exponential(const Matrix& generator) {
 /// Of a slice so short that all temperatures along it are nearly those at its left end.
 Passage thin_slice(const Matrix& generator, const Indices& f, const Indices& b) {
   const Matrix across = short_exponential(generator);
+  const auto count = across.rows();
+  if (b.empty()) return {across, Matrix(count, 0), Matrix(0, count), Matrix(0, 0)};
   const Eigen::PartialPivLU<Matrix> back(across(b, b));
   Passage slice;
   slice.backward_backward = back.inverse();
@@ -65,11 +67,14 @@ void rows_to_one(Matrix& same, Matrix& other) {
 
 Passage in_series(const Passage& left, const Passage& right) {
   // What goes forward at the joint has been sent back and forth any number of times.
-  const auto count = left.forward_forward.rows();
-  const Eigen::PartialPivLU<Matrix> joint(Matrix::Identity(count, count) -
-                                          left.forward_backward * right.backward_forward);
-  const Matrix by_forward = joint.solve(left.forward_forward);
-  const Matrix by_backward = joint.solve(left.forward_backward * right.backward_backward);
+  const auto forward = left.forward_forward.rows(), backward = left.backward_backward.rows();
+  Matrix at_joint(forward, forward + backward);
+  at_joint << left.forward_forward, left.forward_backward * right.backward_backward;
+  at_joint = (Matrix::Identity(forward, forward) - left.forward_backward * right.backward_forward)
+                 .partialPivLu()
+                 .solve(at_joint)
+                 .eval();
+  const auto by_forward = at_joint.leftCols(forward), by_backward = at_joint.rightCols(backward);
   Passage whole;
   whole.forward_forward = right.forward_forward * by_forward;
   whole.forward_backward = right.forward_forward * by_backward + right.forward_backward;
