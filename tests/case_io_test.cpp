@@ -63,7 +63,7 @@ Document rewritten(Document document, units::System system) {
 
 /// Numbers that hold a whole problem, in a fixed order.
 std::vector<double> numbers_of(const Case& a_case) {
-  const auto& [exchanger, shell, tube, methods] = a_case.problem;
+  const auto& [exchanger, shell, tube, methods, factors] = a_case.problem;
   std::vector<double> numbers = {exchanger.area,
                                  exchanger.effective_length,
                                  exchanger.tube_side.inside_diameter,
@@ -80,7 +80,9 @@ std::vector<double> numbers_of(const Case& a_case) {
                                  exchanger.shell_side.tube_to_baffle,
                                  exchanger.shell_side.bundle_to_shell,
                                  exchanger.shell_side.nozzle_out_area,
-                                 exchanger.wall_conductivity.at(320.0)};
+                                 exchanger.wall_conductivity.at(320.0),
+                                 factors.tube_film,
+                                 factors.shell_film};
   for (const auto* stream : {&shell, &tube}) {
     const auto state = fluids::state(stream->fluid, stream->inlet_temperature, stream->inlet_pressure);
     for (const double value :
