@@ -166,56 +166,10 @@ constexpr Row rows[] = {
      "march: along the streams with local properties; mean: at the mean temperatures", "march|mean"},
 };
 
-constexpr Bounds densities = positive(30'000.0);
-constexpr Bounds heat_capacities = positive(1e5);
-constexpr Bounds conductivities = positive(1000.0);
-constexpr Bounds viscosities = positive(1e6);
-constexpr const char* phases = "liquid|gas";
-constexpr const char* phase_help = "left out: liquid, listed as assumed";
-
-constexpr Row fluid_rows_of_all_families[] = {
-    {"constant", block, optional, Kind::ratio, any, "", "the same properties at every temperature"},
-    {"constant.density", quantity, required, Kind::density, densities, "865 kg/m3", "mass of a volume"},
-    {"constant.heat_capacity", quantity, required, Kind::heat_capacity, heat_capacities, "2.05 kJ/kg.K",
-     "at constant pressure"},
-    {"constant.conductivity", quantity, required, Kind::conductivity, conductivities, "0.13 W/m.K",
-     "of the fluid"},
-    {"constant.viscosity", quantity, required, Kind::viscosity, viscosities, "22 cP",
-     "dynamic, not kinematic"},
-    {"constant.phase", word, optional, Kind::ratio, any, "liquid", phase_help, phases},
-    {"table", block, optional, Kind::ratio, any, "", "properties at several temperatures"},
-    {"table.phase", word, optional, Kind::ratio, any, "liquid", phase_help, phases},
-    {"table.rows", list, required, Kind::ratio, any, "", "two or more, in rising temperature"},
-    {"table.rows.#", block, optional, Kind::ratio, any, "", "one temperature"},
-    {"table.rows.#.temperature", quantity, required, Kind::temperature, temperatures, "40 degC",
-     "of the row"},
-    {"table.rows.#.density", quantity, required, Kind::density, densities, "865 kg/m3", "mass of a volume"},
-    {"table.rows.#.heat_capacity", quantity, required, Kind::heat_capacity, heat_capacities, "2.05 kJ/kg.K",
-     "at constant pressure"},
-    {"table.rows.#.conductivity", quantity, required, Kind::conductivity, conductivities, "0.13 W/m.K",
-     "of the fluid"},
-    {"table.rows.#.viscosity", quantity, required, Kind::viscosity, viscosities, "22 cP",
-     "dynamic, not kinematic"},
-    {"two_point", block, optional, Kind::ratio, any, "", "the inlet and the outlet column of a sheet"},
-    {"two_point.phase", word, optional, Kind::ratio, any, "liquid", phase_help, phases},
-    {"two_point.at", pair, required, Kind::temperature, temperatures, "165 -> 105 degF",
-     "temperatures of the two columns"},
-    {"two_point.density", pair, required, Kind::density, densities, "700 -> 741 kg/m3", "in both columns"},
-    {"two_point.heat_capacity", pair, required, Kind::heat_capacity, heat_capacities, "2.3 -> 2.1 kJ/kg.K",
-     "in both columns"},
-    {"two_point.conductivity", pair, required, Kind::conductivity, conductivities, "0.11 -> 0.12 W/m.K",
-     "in both columns"},
-    {"two_point.viscosity", pair, required, Kind::viscosity, viscosities, "0.4 -> 0.6 cP", "in both columns"},
-};
-
 }  // namespace
 
 std::span<const Row> case_rows() {
   return rows;
-}
-
-std::span<const Row> fluid_rows() {
-  return fluid_rows_of_all_families;
 }
 
 }  // namespace dutygauge::case_io
