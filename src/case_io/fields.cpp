@@ -93,7 +93,6 @@ constexpr Unread unread[] = {
     {"operating_cases", "other cases of the same unit"},
     {"present", "the unit as it is today"},
     {"anchor", "a reading of the running unit"},
-    {"claims", "what a sheet states"},
     {"accepted", "findings somebody has decided on"},
     {"requirements", "a purchaser's own limits"},
     {"guarantee", "what a vendor guarantees"},

@@ -20,6 +20,7 @@ std::string stream_name(const rating::Problem& problem, Side side);
 std::string_view word(Severity severity);
 std::string_view word(Ground ground);
 std::string_view word(tubeside::Regime regime);
+std::string_view word(bids::Agreement agreement);
 
 /// The finding's text with its two numbers in a system of units.
 std::string sentence(const Finding& finding, units::System system);
