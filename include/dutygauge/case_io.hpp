@@ -6,6 +6,7 @@
 #include <string_view>
 #include <vector>
 
+#include "dutygauge/bids.hpp"
 #include "dutygauge/findings.hpp"
 #include "dutygauge/rating.hpp"
 #include "dutygauge/service.hpp"
@@ -76,6 +77,7 @@ struct Case {
   units::System display = units::System::metric;
   rating::Problem problem;
   service::Service service;
+  bids::Claims claims;  ///< of the sheet, as built
   Inputs inputs;        ///< as typed, and assumed, in SI
   Assumptions assumed;  ///< made while reading and deriving
   Findings findings;    ///< the same

@@ -3,6 +3,7 @@
 #include <string_view>
 #include <vector>
 
+#include "dutygauge/bids.hpp"
 #include "dutygauge/findings.hpp"
 #include "dutygauge/service.hpp"
 
@@ -15,6 +16,7 @@ struct Result {
   std::string title, tag, input_sha256;
   units::System display = units::System::metric;
   service::Assessment assessment;
+  std::vector<bids::ClaimVerdict> claims{};  ///< of the sheet, as built
   Inputs inputs;
   Assumptions assumed;
   Findings findings;  ///< all, the gravest first

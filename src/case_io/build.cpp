@@ -96,6 +96,7 @@ Case build_plain(const Document& document) {
   const auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
   check_inlets(reading);
   const rating::Methods methods = methods_of(reading);
+  bids::Claims claims = claims_of(reading);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");
@@ -114,6 +115,7 @@ Case build_plain(const Document& document) {
                     .tube_side = tube_side->stream,
                     .methods = methods};
   result.service = service_of(entries, result.display);
+  result.claims = std::move(claims);
   append(result.assumed, reading.assumed());
   append(result.assumed, derived.assumed);
   append(result.findings, derived.findings);

@@ -30,5 +30,7 @@ std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 
 /// Builds the case of a document without overlays. Throws InputError.
 Case build_plain(const Document& document);
+/// What the sheet claims; empty where it claims nothing.
+bids::Claims claims_of(Reading& reading);
 
 }  // namespace dutygauge::case_io

@@ -26,6 +26,9 @@ report::Result rate(const case_io::Case& a_case) {
                         .findings = a_case.findings};
   const auto& judged = result.assessment.findings;
   result.findings.insert(result.findings.end(), judged.begin(), judged.end());
+  result.claims = bids::audit(a_case.claims, result.assessment);
+  const auto contradictions = bids::findings_of(result.claims);
+  result.findings.insert(result.findings.end(), contradictions.begin(), contradictions.end());
   std::ranges::stable_sort(result.findings, std::ranges::greater{}, &Finding::severity);
   return result;
 }

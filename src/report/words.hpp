@@ -19,6 +19,7 @@ std::string stream_name(const rating::Problem& problem, Side side);
 
 std::string_view word(Ground ground);
 std::string_view word(tubeside::Regime regime);
+std::string_view word(bids::Agreement agreement);
 
 /// The value of an assumption as it would be typed.
 std::string as_typed(const Assumption& assumption, units::System system, int significant);
