@@ -73,10 +73,13 @@ std::string inlet_fault(const Stream& stream, std::string_view side) {
 
 Findings check_outcome(const Unit& unit, const Outcome& outcome) {
   const Problem& problem = *unit.problem;
-  Findings findings = shellside::check_bundle(unit.bundle);
-  append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
-  append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
-                                        outcome.local.tube_bulk, outcome.local.tube_wall));
+  Findings findings;
+  if (problem.exchanger.shell_drawn) findings = shellside::check_bundle(unit.bundle);
+  if (problem.exchanger.shell_drawn && !problem.shell_side.film_law)
+    append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
+  if (problem.exchanger.tubes_drawn)
+    append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
+                                          outcome.local.tube_bulk, outcome.local.tube_wall));
   check_stream(problem.shell_side, "shell side", outcome.shell_outlet, outcome.local.walls.shell_wetted,
                findings);
   check_stream(problem.tube_side, "tube side", outcome.tube_outlet, outcome.local.walls.tube_wetted,
