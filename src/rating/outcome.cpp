@@ -97,10 +97,13 @@ std::string inlet_fault(const Stream& stream, std::string_view side) {
 
 Findings check_outcome(const Unit& unit, const Outcome& outcome) {
   const Problem& problem = *unit.problem;
-  Findings findings = shellside::check_bundle(unit.bundle);
-  append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
-  append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
-                                        outcome.local.tube_bulk, outcome.local.tube_wall));
+  Findings findings;
+  if (problem.exchanger.shell_drawn) findings = shellside::check_bundle(unit.bundle);
+  if (problem.exchanger.shell_drawn && !problem.shell_side.film_law)
+    append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
+  if (problem.exchanger.tubes_drawn)
+    append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
+                                          outcome.local.tube_bulk, outcome.local.tube_wall));
   const Met shell{outcome.shell_outlet, outcome.shell_mean, outcome.local.walls.shell_wetted};
   const Met tube{outcome.tube_outlet, outcome.tube_mean, outcome.local.walls.tube_wetted};
   check_stream(problem.shell_side, "shell side", shell,
