@@ -112,6 +112,13 @@ Rating rate(const Problem& problem);
 /// root. No outcome where a stream would leave the range of its fluid.
 Rating rate_mean(const Problem& problem);
 
+/// How far a march is refined: slices of each line are doubled from the first number until
+/// the duty moves by less than the tolerance, or the most is reached.
+struct Refinement {
+  int first_slices = 4, most_slices = 64;
+  double tolerance = 1e-5;  ///< relative, of the duty
+};
+
 /// Rates along the paths of the two streams. Every stretch of a stream is cut into
 /// slices with the heat balance held in enthalpy (collocation of order 4); films, walls
 /// and properties are those of each place, and slices are doubled until the duty moves
@@ -119,7 +126,7 @@ Rating rate_mean(const Problem& problem);
 /// stream is continuous along its run: what few baffles cost is not in it.
 /// No outcome where a stream leaves the range of its fluid, or where the temperatures
 /// do not settle.
-Rating rate_march(const Problem& problem);
+Rating rate_march(const Problem& problem, const Refinement& refinement = {});
 
 /// What a duty asks of the surface: outlets, films and U are those at that duty.
 struct Needed {

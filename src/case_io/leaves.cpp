@@ -86,6 +86,35 @@ Outcome read_quantity(Entry entry) {
   return from_value(entry, units::read(entry.text, field.kind));
 }
 
+/// API degrees, Watson factor: numbers in which per cent would mean something else.
+Outcome read_number(Entry entry) {
+  const auto amount = units::number(entry.text);
+  if (!amount)
+    return misread(*entry.field, quoted(entry.text) + " is not a plain number",
+                   "write a number alone, with a point for decimals");
+  entry.value.si = *amount;
+  return checked(std::move(entry));
+}
+
+Outcome read_either_viscosity(Entry entry) {
+  auto read = units::read(entry.text, Kind::kinematic_viscosity);
+  if (std::holds_alternative<Misread>(read)) {
+    auto as_dynamic = units::read(entry.text, Kind::viscosity);
+    entry.dynamic = std::holds_alternative<units::Value>(as_dynamic);
+    if (entry.dynamic) read = std::move(as_dynamic);
+  }
+  if (auto* mistake = std::get_if<Misread>(&read)) mistake->expected = expected_of(*entry.field);
+  return from_value(std::move(entry), std::move(read));
+}
+
+Outcome read_property(Entry entry) {
+  auto read = units::read_value_at(entry.text, entry.field->kind);
+  if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
+  units::ValueAt& known = std::get<units::ValueAt>(read);
+  entry.at_temperature = known.temperature;
+  return from_value(std::move(entry), std::move(known.value));
+}
+
 Outcome read_angle(Entry entry) {
   const Field& field = *entry.field;
   Outcome outcome = from_value(entry, units::read(entry.text, Kind::angle));
@@ -104,7 +133,7 @@ Outcome read_flow(Entry entry) {
   entry.value = std::move(flow.amount);
   for (auto& open : flow.taken_for_granted) entry.value.taken_for_granted.push_back(std::move(open));
   entry.basis = flow.basis;
-  entry.basis_temperature = flow.basis_temperature;
+  entry.at_temperature = flow.basis_temperature;
   return checked(std::move(entry));
 }
 
@@ -171,8 +200,14 @@ Outcome read_by_form(Entry entry) {
     case Form::whole:
     case Form::whole_or_list:
       return from_value(entry, units::read(entry.text, Kind::count));
+    case Form::number:
+      return read_number(std::move(entry));
     case Form::quantity:
       return read_quantity(std::move(entry));
+    case Form::either_viscosity:
+      return read_either_viscosity(std::move(entry));
+    case Form::property:
+      return read_property(std::move(entry));
     case Form::angle:
       return read_angle(std::move(entry));
     case Form::wall:

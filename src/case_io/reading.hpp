@@ -21,7 +21,8 @@ struct Entry {
   units::Value value{};  ///< of numbers; the first of a pair; the amount of a flow
   double second = 0;     ///< of a pair
   units::FlowBasis basis = units::FlowBasis::mass;
-  double basis_temperature = 0;  ///< [K]
+  double at_temperature = 0;  ///< [K] where a volume flow is measured, or a property holds
+  bool dynamic = false;       ///< a viscosity that may be either: dynamic, not kinematic
 
   bool is_word() const;
   units::Kind kind() const;  ///< of `value`: a flow's depends on what was written

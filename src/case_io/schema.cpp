@@ -48,12 +48,22 @@ ordered_json leaf(const Field& field) {
       return whole_number(field);
     case Form::text:
       return {{"type", {"string", "number", "boolean"}}};
+    case Form::number:
+      return {{"type", {"number", "string"}}};
     case Form::quantity:
       if (field.kind == units::Kind::ratio) return {{"type", {"string", "number"}}};
       [[fallthrough]];
     default:
       return {{"type", "string"}, {"minLength", 1}};
   }
+}
+
+/// Fluids that need no more than their name.
+ordered_json names_of_fluids() {
+  ordered_json names = ordered_json::array();
+  for (const fluids::CatalogueEntry& entry : fluids::catalogue())
+    if (entry.written.empty() || entry.name == "seawater") names.push_back(std::string(entry.name));
+  return names;
 }
 
 ordered_json object_of(const FieldTable& table, const std::string& block);
@@ -70,7 +80,7 @@ ordered_json schema_of(const FieldTable& table, const Field& field) {
     ordered_json family = object_of(table, field.key);
     family["minProperties"] = 1;
     family["maxProperties"] = 1;
-    json = {{"anyOf", {{{"enum", {"water"}}}, family}}};
+    json = {{"anyOf", {{{"enum", names_of_fluids()}}, family}}};
   } else {
     json = leaf(field);
     if (!field.example.empty() && json.contains("type") && json["type"] == "string")

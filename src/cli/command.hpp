@@ -70,7 +70,7 @@ std::string version();
 /// The known word that a misspelling most likely means; empty if none is near.
 std::string_view nearest(std::string_view typed, std::span<const std::string_view> known);
 
-/// "; did you mean 'X'?" or nothing.
+/// " (did you mean 'X'?)" or nothing.
 std::string did_you_mean(std::string_view typed, std::span<const std::string_view> known);
 
 /// The system of units asked for with --units. Throws CallError.

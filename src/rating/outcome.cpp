@@ -81,6 +81,7 @@ Findings check_outcome(const Unit& unit, const Outcome& outcome) {
                findings);
   check_stream(problem.tube_side, "tube side", outcome.tube_outlet, outcome.local.walls.tube_wetted,
                findings);
+  check_arrangement(unit, outcome, findings);
   return findings;
 }
 
