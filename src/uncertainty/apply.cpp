@@ -1,0 +1,80 @@
+#include <boost/math/distributions/normal.hpp>
+#include <cmath>
+#include <numbers>
+#include <stdexcept>
+
+#include "dutygauge/uncertainty.hpp"
+
+namespace dutygauge::uncertainty {
+namespace {
+
+/// Symmetric around 0 with standard deviation 1, from -sqrt(6) to sqrt(6).
+double triangular(double p) {
+  const double half_width = std::sqrt(6.0);
+  return p < 0.5 ? half_width * (std::sqrt(2.0 * p) - 1.0) : half_width * (1.0 - std::sqrt(2.0 * (1.0 - p)));
+}
+
+/// A value's deviation in standard deviations.
+double deviation(Distribution distribution, double deviate) {
+  const double p = boost::math::cdf(boost::math::normal(), deviate);
+  if (distribution == Distribution::uniform) return std::numbers::sqrt3 * (2.0 * p - 1.0);
+  return distribution == Distribution::triangular ? triangular(p) : deviate;
+}
+
+void apply_to_stream(Varied varied, double value, rating::Stream& stream) {
+  switch (varied) {
+    case Varied::fouling:
+      stream.fouling_resistance *= value;
+      return;
+    case Varied::density:
+      stream.fluid.scale.density *= value;
+      return;
+    case Varied::heat_capacity:
+      stream.fluid.scale.heat_capacity *= value;
+      return;
+    case Varied::conductivity:
+      stream.fluid.scale.conductivity *= value;
+      return;
+    case Varied::viscosity:
+      stream.fluid.scale.viscosity *= value;
+      return;
+    case Varied::flow:
+      stream.mass_flow *= value;
+      return;
+    case Varied::inlet_temperature:
+      stream.inlet_temperature += value;
+      return;
+    default:
+      throw std::invalid_argument("uncertainty::apply: not of a stream");
+  }
+}
+
+}  // namespace
+
+double drawn(const Source& source, double deviate) {
+  const bool moved = source.varied == Varied::inlet_temperature;
+  if (source.distribution != Distribution::lognormal)
+    return (moved ? 0.0 : 1.0) + source.sigma * deviation(source.distribution, deviate);
+  if (moved) throw std::invalid_argument("uncertainty::drawn: a temperature has no lognormal error");
+  return std::exp(deviate * std::sqrt(std::log1p(source.sigma * source.sigma)));
+}
+
+void apply(const Source& source, double deviate, rating::Problem& problem) {
+  const double value = drawn(source, deviate);
+  const bool shell = source.side == Side::shell;
+  switch (source.varied) {
+    case Varied::film:
+      (shell ? problem.factors.shell_film : problem.factors.tube_film) *= value;
+      return;
+    case Varied::drop:
+      (shell ? problem.factors.shell_drop : problem.factors.tube_drop) *= value;
+      return;
+    case Varied::wall_conductivity:
+      for (double& conductivity : problem.exchanger.wall_conductivity.value) conductivity *= value;
+      return;
+    default:
+      apply_to_stream(source.varied, value, shell ? problem.shell_side : problem.tube_side);
+  }
+}
+
+}  // namespace dutygauge::uncertainty
