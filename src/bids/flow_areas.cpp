@@ -27,11 +27,15 @@ void check_count(Sheet& sheet) {
               .computed = {{holes, 0.0}},
               .ground = Ground::geometry,
               .against = "the holes of the drawing",
-              .causes = {{0.5 * holes, "U-tubes are counted, not holes"},
-                         {2.0 * holes, "holes of both legs counted twice: U-tubes given as tubes"},
-                         {holes - exchanger.as_described.plugged, "plugged tubes are left out"}},
+              .causes =
+                  {
+                      {0.5 * holes, "U-tubes are counted, not holes"},
+                      {2.0 * holes, "holes of both legs counted twice: U-tubes given as tubes"},
+                  },
               .otherwise = "another count than the drawing's",
               .if_empty = ""};
+  if (const int plugged = exchanger.as_described.plugged; plugged > 0)
+    check.causes.push_back({holes - plugged, "plugged tubes are left out"});
   if (shells > 1) check.causes.push_back({shells * holes, "tubes of all shells, not of one"});
   // A count is exact: 1 % of it would be several tubes.
   if (claim && claim->value != holes && fits(*claim, {holes, 0.0})) {
@@ -128,16 +132,24 @@ void check_nozzles(Sheet& sheet) {
               .against = "flow and bore of a nozzle",
               .otherwise = "rho v2 of another flow or bore than any nozzle drawn has",
               .if_empty = "no nozzle bore is given"};
+  const auto& claim = sheet.claims.nozzle_rho_v2;
+  std::optional<Number> meant;  // the nozzle whose slip the claim is
   for (const Nozzle& nozzle : nozzles) {
     if (!nozzle.bore) continue;
     const double flux = nozzle.stream.mass_flow / banks / (0.25 * pi * *nozzle.bore * *nozzle.bore);
     const double value = flux * flux / density(nozzle.stream, nozzle.temperature);
     check.computed.push_back({value, 0.0});
-    if (banks > 1) check.causes.push_back({value * banks * banks, "the whole flow through one nozzle"});
-    check.causes.push_back(
-        {0.5 * value, fmt::format("velocity head (half of rho v2) of the {} nozzle", nozzle.name)});
+    const Cause slips[] = {
+        {0.5 * value, fmt::format("velocity head (half of rho v2) of the {} nozzle", nozzle.name)},
+        {value * (banks > 1 ? banks * banks : std::nan("")), "the whole flow through one nozzle"}};
+    for (const Cause& slip : slips) {
+      check.causes.push_back(slip);
+      if (claim && !meant && fits(*claim, {slip.value, 0.0})) meant = Number{value, 0.0};
+    }
   }
-  judge(sheet, sheet.claims.nozzle_rho_v2, check);
+  const bool is_right = claim && !check.computed.empty() && fits(*claim, *nearest(*claim, check.computed));
+  if (meant && !is_right) check.computed = {*meant};
+  judge(sheet, claim, check);
 }
 
 }  // namespace
