@@ -156,7 +156,7 @@ TEST_CASE("case_io: exchangers and services that cannot be are named at their ke
 }
 
 TEST_CASE("case_io: what this version does not read is refused by name") {
-  for (const char* key : {"operating_cases", "present", "anchor", "claims", "accepted", "requirements",
+  for (const char* key : {"operating_cases", "present", "anchor", "accepted", "requirements",
                           "guarantee", "inquiry", "bidder", "readings", "plan"})
     check({{key,
             and_also(std::string(key) + ": {a: 1}"),
