@@ -11,15 +11,27 @@ class Generator {
  public:
   explicit Generator(unsigned seed) : engine_(seed) {}
 
-  /// A problem whose drawing nobody objects to.
-  dutygauge::rating::Problem next() {
+  /// A problem of an E shell whose drawing nobody objects to.
+  dutygauge::rating::Problem next() { return next({'E'}); }
+
+  dutygauge::rating::Problem next_of_any_shell() { return next({'E', 'F', 'G', 'H', 'J', 'X'}); }
+
+ private:
+  dutygauge::rating::Problem next(const std::vector<char>& shells) {
     for (;;) {
-      const auto drawing = description();
+      auto drawing = description();
+      drawing.shell_type = one_of<char>(shells);
+      if (drawing.shell_type != 'E') drawing.flow_direction.reset();
       if (!dutygauge::geometry::objections(drawing).empty()) continue;
+      if (!dutygauge::arrangement::objections(
+               {.shell_type = drawing.shell_type, .tube_passes = drawing.tube_passes})
+               .empty())
+        continue;
       dutygauge::rating::Problem problem;
       problem.exchanger = dutygauge::geometry::derive(drawing).value;
       problem.methods.shell_side = one_of<dutygauge::shellside::Method>(
           {dutygauge::shellside::Method::bell_delaware, dutygauge::shellside::Method::kern});
+      if (drawing.shell_type == 'X') problem.methods.shell_side = dutygauge::shellside::Method::bell_delaware;
       problem.shell_side = stream(problem.exchanger.shells_in_parallel * between(0.5, 60.0));
       problem.tube_side = stream(problem.exchanger.shells_in_parallel * between(0.5, 60.0));
       // Streams that enter equally warm exchange nothing.
@@ -36,7 +48,6 @@ class Generator {
     return choices[static_cast<std::size_t>(whole(0, static_cast<int>(choices.size()) - 1))];
   }
 
- private:
   dutygauge::geometry::Description description() {
     dutygauge::geometry::Description d;
     d.shells_in_series = whole(1, 3);

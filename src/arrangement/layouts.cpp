@@ -2,82 +2,19 @@
 #include <cmath>
 #include <vector>
 
+#include "dutygauge/arrangement/paths.hpp"
 #include "network.hpp"
 #include "shells.hpp"
 
-/// The flow paths of E, F, G, H and J shells. The shell is cut into segments along its
-/// length; in each, the shell stream runs once (E, J) or on its way in and, beyond a
-/// longitudinal baffle, on its way out (F, G, H), every tube stream beside one of the two.
 namespace dutygauge::arrangement::shells {
 namespace {
 
-/// Tubes that run together: a pass, or the half of it on one side of the baffle.
-struct TubeRun {
-  int beside;            ///< 0 the shell stream's way in, 1 its way out
-  bool forward;          ///< away from the left end
-  double capacity_rate;  ///< share of the tube stream
-  double area;           ///< share of the surface
-};
-
-struct Layout {
-  int segments = 1;
-  int ways = 1;  ///< of the shell stream in each segment
-  std::vector<TubeRun> runs;
-
+/// The same with the streams of all segments numbered through.
+struct Layout : FlowPaths {
   int width() const { return ways + static_cast<int>(runs.size()); }
   int way(int segment, int which) const { return segment * width() + which; }
   int run(int segment, int which) const { return segment * width() + ways + which; }
 };
-
-int segments_of(char shell_type) {
-  switch (shell_type) {
-    case 'G':
-    case 'J':
-      return 2;
-    case 'H':
-      return 4;
-    default:
-      return 1;
-  }
-}
-
-double area_share(const Arrangement& shell, int pass) {
-  double sum = 0.0;
-  for (double area : shell.pass_areas) sum += area;
-  return sum > 0.0 ? shell.pass_areas[static_cast<std::size_t>(pass)] / sum : 1.0 / shell.tube_passes;
-}
-
-Layout layout_of(const Arrangement& shell) {
-  const char type = shell.shell_type;
-  const bool against = shell.first_tube_pass == FirstTubePass::against_shell_flow;
-  Layout layout{.segments = segments_of(type), .ways = type == 'E' || type == 'J' ? 1 : 2, .runs = {}};
-  if (layout.ways == 2 && shell.tube_passes == 1) {
-    layout.runs = {{.beside = 0, .forward = true, .capacity_rate = 0.5, .area = 0.5},
-                   {.beside = 1, .forward = true, .capacity_rate = 0.5, .area = 0.5}};
-    return layout;
-  }
-  for (int pass = 0; pass < shell.tube_passes; ++pass) {
-    const bool first_half = pass < shell.tube_passes / 2;
-    const bool starts_forward = type != 'E' || !against;
-    layout.runs.push_back({.beside = layout.ways == 2 && first_half == against ? 1 : 0,
-                           .forward = (pass % 2 == 0) == starts_forward,
-                           .capacity_rate = 1.0,
-                           .area = area_share(shell, pass)});
-  }
-  return layout;
-}
-
-/// Whether the shell stream runs forward in a segment: nozzles between two segments send
-/// it to both sides.
-bool shell_forward(const Layout& layout, int segment, int way) {
-  const bool inwards = layout.segments == 1 || segment % 2 == 1;
-  return (way == 0) == inwards;
-}
-
-double shell_share(const Arrangement& shell, const Layout& layout, int segment) {
-  if (shell.shell_type == 'J') return segment == 0 ? shell.tube_inlet_share : 1.0 - shell.tube_inlet_share;
-  return 1.0 / layout.segments;
-}
 
 network::Matrix segment_of(const Arrangement& shell, const Layout& layout, int segment, double r,
                            double ntu) {
@@ -86,7 +23,7 @@ network::Matrix segment_of(const Arrangement& shell, const Layout& layout, int s
   const double part = ntu / layout.segments;
   for (int way = 0; way < layout.ways; ++way)
     streams.push_back({.inverse_capacity_rate = r / shell_share(shell, layout, segment),
-                       .forward = shell_forward(layout, segment, way)});
+                       .forward = layout.shell_forward(segment, way)});
   for (const TubeRun& run : layout.runs) {
     contacts.push_back(
         {.one = run.beside, .other = static_cast<int>(streams.size()), .conductance = run.area * part});
@@ -131,7 +68,7 @@ void join_shell(const Arrangement& shell, const Layout& layout, network::Network
 }  // namespace
 
 double by_network(const Arrangement& shell, double r, double ntu) {
-  const Layout layout = layout_of(shell);
+  const Layout layout{flow_paths(shell)};
   network::Network network;
   for (int segment = 0; segment < layout.segments; ++segment)
     network.stretches.push_back(segment < 2 ? segment_of(shell, layout, segment, r, ntu)

@@ -77,9 +77,20 @@ std::string text_of(const Entries& entries, std::string_view key) {
   return std::string(word(entries, key).value_or(""));
 }
 
+std::vector<Accepted> accepted_of(const Reading& reading) {
+  std::vector<Accepted> accepted;
+  for (int i = 0;; ++i) {
+    const std::string item = fmt::format("accepted.{}", i);
+    if (!reading.has(item)) return accepted;
+    const auto& entries = reading.entries();
+    accepted.push_back({text_of(entries, item + ".id"), text_of(entries, item + ".because"),
+                        text_of(entries, item + ".by")});
+  }
+}
+
 }  // namespace
 
-Case build(const Document& document) {
+Case build_plain(const Document& document) {
   Reading reading(document, case_fields());
   const auto description = exchanger_of(reading);
   const auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
@@ -97,6 +108,7 @@ Case build(const Document& document) {
   result.title = text_of(entries, "title");
   result.tag = text_of(entries, "tag");
   result.sha256 = document.sha256;
+  result.accepted = accepted_of(reading);
   result.display = display_of(entries);
   result.problem = {.exchanger = derived.value,
                     .shell_side = shell_side->stream,

@@ -34,10 +34,14 @@ Stop anchor_refused(const YAML::Mark& mark) {
           "remove the anchor, or put quotes round a text that begins with '&'"};
 }
 
+/// Whether a key is a temperature with a decimal point, as in `viscosity: {37.8 degC: 4 cSt}`.
+bool is_decimal_key(std::string_view path, std::string_view key) {
+  return last_segment(path) == "viscosity" && first_dot(key) == std::string_view::npos;
+}
+
 /// Blocks under which a key may itself be a dotted key.
 bool holds_dotted_keys(std::string_view path) {
-  const auto first = path.substr(0, path.find('.'));
-  return first == "operating_cases" || first == "present";
+  return path.starts_with("operating_cases.") || path == "present" || path.starts_with("present.");
 }
 
 /// Builds a Document from the parser's events and refuses what a case has no use for.
@@ -139,7 +143,8 @@ class Builder : public YAML::EventHandler {
     if (key.empty() || key.size() > longest_value)
       note(at, frame.path, key.empty() ? "a key is empty" : "a key of this length is no key",
            "a word before the colon", "write the key");
-    else if (key.find('.') != std::string::npos && !holds_dotted_keys(frame.path))
+    else if (key.find('.') != std::string::npos && !holds_dotted_keys(frame.path) &&
+             !is_decimal_key(frame.path, key))
       note(at, joined(frame.path, key), "a key with dots", "one word before the colon",
            "nest the blocks, one word a level; dotted keys are for overlays only");
     else if (!frame.keys.insert(key).second)

@@ -55,7 +55,7 @@ constexpr Row rows[] = {
      "against_shell_flow|with_shell_flow"},
     {"exchanger.shell", block, required, Kind::ratio, any, "", "one shell"},
     {"exchanger.shell.inside_diameter", bore, required, Kind::length, positive(10.0), "489 mm",
-     "or a pipe: NPS 20 sch 20"},
+     "of the shell, or a pipe: NPS 20 sch 20"},
     {"exchanger.shell.nozzle_in", bore, usual, Kind::length, positive(5.0), "154 mm",
      "bore, or a pipe: NPS 6 sch 40"},
     {"exchanger.shell.nozzle_out", bore, usual, Kind::length, positive(5.0), "154 mm",
@@ -76,7 +76,7 @@ constexpr Row rows[] = {
     {"exchanger.tubes.outside_diameter", quantity, required, Kind::length, positive(0.3), "19.05 mm",
      "of the tubes"},
     {"exchanger.tubes.wall", wall, required, Kind::length, positive(0.05), "2.11 mm",
-     "or a gauge: 14 BWG, 14 BWG min"},
+     "of a tube; or a gauge: 14 BWG, 14 BWG min"},
     {"exchanger.tubes.length", quantity, required, Kind::length, positive(40.0), "4.88 m",
      "between the tubesheets' outer faces; U-tubes: straight part"},
     {"exchanger.tubes.tubesheet_thickness", quantity, usual, Kind::length, from_zero(1.0), "45 mm",
@@ -112,7 +112,7 @@ constexpr Row rows[] = {
     {"exchanger.baffles.outlet_spacing", quantity, usual, Kind::length, positive(20.0), "295 mm",
      "last baffle to tubesheet"},
     {"exchanger.baffles.thickness", quantity, usual, Kind::length, positive(0.3), "6 mm", "of one baffle"},
-    {"exchanger.clearances", block, usual, Kind::ratio, any, "", "diametral"},
+    {"exchanger.clearances", block, usual, Kind::ratio, any, "", "gaps, all diametral"},
     {"exchanger.clearances.tube_to_baffle", quantity, usual, Kind::length, from_zero(0.1), "0.8 mm",
      "hole less tube"},
     {"exchanger.clearances.shell_to_baffle", quantity, usual, Kind::length, from_zero(0.5), "4.8 mm",
@@ -146,16 +146,29 @@ constexpr Row rows[] = {
     {"streams.*.allowable_pressure_drop", quantity, usual, Kind::pressure_difference, positive(1e8),
      "100 kPa // 70 kPa", "flange to flange"},
 
-    {"service", block, usual, Kind::ratio, any, "", "what must hold; every line"},
+    {"service", block, usual, Kind::ratio, any, "", "what must hold, every line of it"},
     {"service.*_outlet", block, usual, Kind::ratio, any, "",
      "limits of the shell-side outlet // limits of the tube-side outlet"},
     {"service.*_outlet.at_most", quantity, usual, Kind::temperature, temperatures, "58 degC // 45 degC",
-     "outlet temperature"},
+     "the highest outlet temperature"},
     {"service.*_outlet.at_least", quantity, optional, Kind::temperature, temperatures, "40 degC // 31 degC",
-     "outlet temperature"},
+     "the lowest outlet temperature"},
     {"service.duty", block, optional, Kind::ratio, any, "", "heat to be moved"},
-    {"service.duty.at_least", quantity, optional, Kind::power, positive(1e10), "400 kW", "duty"},
-    {"service.duty.at_most", quantity, optional, Kind::power, positive(1e10), "900 kW", "duty"},
+    {"service.duty.at_least", quantity, optional, Kind::power, positive(1e10), "400 kW", "the least duty"},
+    {"service.duty.at_most", quantity, optional, Kind::power, positive(1e10), "900 kW", "the most duty"},
+
+    {"operating_cases", block, optional, Kind::ratio, any, "",
+     "what the same unit must do; each is rated, the worst governs"},
+    {"operating_cases.?", overlay, optional, Kind::ratio, any, "{streams.shell_side.flow: x1.15}",
+     "where a case differs: new values, or factors on those above"},
+    {"present", overlay, optional, Kind::ratio, any, "{since: 2026-01-31, exchanger.tubes.plugged: 4}",
+     "the unit as it is, where it differs from as built"},
+    {"accepted", list, optional, Kind::ratio, any,
+     "[{id: service.fails_clean, because: known, by: A. Person}]", "findings somebody has decided on"},
+    {"accepted.#", block, optional, Kind::ratio, any, "", "one finding"},
+    {"accepted.#.id", text, required, Kind::ratio, any, "service.fails_clean", "of the finding"},
+    {"accepted.#.because", text, required, Kind::ratio, any, "known since the last stop", "the reason"},
+    {"accepted.#.by", text, required, Kind::ratio, any, "A. Person", "who has decided"},
 
     {"claims", block, optional, Kind::ratio, any, "", "what the sheet says of the exchanger as built"},
     {"claims.for", text, optional, Kind::ratio, any, "base", "the operating case the sheet speaks of"},
@@ -204,56 +217,10 @@ constexpr Row rows[] = {
      "march: along the streams with local properties; mean: at the mean temperatures", "march|mean"},
 };
 
-constexpr Bounds densities = positive(30'000.0);
-constexpr Bounds heat_capacities = positive(1e5);
-constexpr Bounds conductivities = positive(1000.0);
-constexpr Bounds viscosities = positive(1e6);
-constexpr const char* phases = "liquid|gas";
-constexpr const char* phase_help = "left out: liquid, listed as assumed";
-
-constexpr Row fluid_rows_of_all_families[] = {
-    {"constant", block, optional, Kind::ratio, any, "", "the same properties at every temperature"},
-    {"constant.density", quantity, required, Kind::density, densities, "865 kg/m3", "mass of a volume"},
-    {"constant.heat_capacity", quantity, required, Kind::heat_capacity, heat_capacities, "2.05 kJ/kg.K",
-     "at constant pressure"},
-    {"constant.conductivity", quantity, required, Kind::conductivity, conductivities, "0.13 W/m.K",
-     "of the fluid"},
-    {"constant.viscosity", quantity, required, Kind::viscosity, viscosities, "22 cP",
-     "dynamic, not kinematic"},
-    {"constant.phase", word, optional, Kind::ratio, any, "liquid", phase_help, phases},
-    {"table", block, optional, Kind::ratio, any, "", "properties at several temperatures"},
-    {"table.phase", word, optional, Kind::ratio, any, "liquid", phase_help, phases},
-    {"table.rows", list, required, Kind::ratio, any, "", "two or more, in rising temperature"},
-    {"table.rows.#", block, optional, Kind::ratio, any, "", "one temperature"},
-    {"table.rows.#.temperature", quantity, required, Kind::temperature, temperatures, "40 degC",
-     "of the row"},
-    {"table.rows.#.density", quantity, required, Kind::density, densities, "865 kg/m3", "mass of a volume"},
-    {"table.rows.#.heat_capacity", quantity, required, Kind::heat_capacity, heat_capacities, "2.05 kJ/kg.K",
-     "at constant pressure"},
-    {"table.rows.#.conductivity", quantity, required, Kind::conductivity, conductivities, "0.13 W/m.K",
-     "of the fluid"},
-    {"table.rows.#.viscosity", quantity, required, Kind::viscosity, viscosities, "22 cP",
-     "dynamic, not kinematic"},
-    {"two_point", block, optional, Kind::ratio, any, "", "the inlet and the outlet column of a sheet"},
-    {"two_point.phase", word, optional, Kind::ratio, any, "liquid", phase_help, phases},
-    {"two_point.at", pair, required, Kind::temperature, temperatures, "165 -> 105 degF",
-     "temperatures of the two columns"},
-    {"two_point.density", pair, required, Kind::density, densities, "700 -> 741 kg/m3", "in both columns"},
-    {"two_point.heat_capacity", pair, required, Kind::heat_capacity, heat_capacities, "2.3 -> 2.1 kJ/kg.K",
-     "in both columns"},
-    {"two_point.conductivity", pair, required, Kind::conductivity, conductivities, "0.11 -> 0.12 W/m.K",
-     "in both columns"},
-    {"two_point.viscosity", pair, required, Kind::viscosity, viscosities, "0.4 -> 0.6 cP", "in both columns"},
-};
-
 }  // namespace
 
 std::span<const Row> case_rows() {
   return rows;
-}
-
-std::span<const Row> fluid_rows() {
-  return fluid_rows_of_all_families;
 }
 
 }  // namespace dutygauge::case_io

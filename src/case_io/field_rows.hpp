@@ -23,4 +23,7 @@ std::span<const Row> case_rows();
 /// Keys relative to a fluid.
 std::span<const Row> fluid_rows();
 
+/// Keys relative to a block `given` of a fluid.
+std::span<const Row> given_rows();
+
 }  // namespace dutygauge::case_io

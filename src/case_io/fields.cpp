@@ -32,7 +32,12 @@ Field field_of(const Row& row, std::string key, bool shell) {
 }
 
 void add_fluid(std::vector<Field>& fields, const std::string& key) {
-  for (const Row& row : fluid_rows()) fields.push_back(field_of(row, joined(key, row.key), true));
+  for (const Row& row : fluid_rows()) {
+    const std::string row_key = joined(key, row.key);
+    fields.push_back(field_of(row, row_key, true));
+    if (last_segment(row_key) != "given") continue;
+    for (const Row& given : given_rows()) fields.push_back(field_of(given, joined(row_key, given.key), true));
+  }
 }
 
 /// All rows of one side that stand together, so that a block's rows follow each other.
@@ -79,7 +84,7 @@ std::vector<Field> all_fluid_fields() {
 std::string indices_hidden(std::string_view key) {
   std::string result;
   while (!key.empty()) {
-    const auto dot = key.find('.');
+    const auto dot = first_dot(key);
     const auto segment = key.substr(0, dot);
     const bool is_index = std::ranges::all_of(segment, [](char c) { return c >= '0' && c <= '9'; });
     result += is_index ? "#" : segment;
@@ -90,10 +95,7 @@ std::string indices_hidden(std::string_view key) {
 }
 
 constexpr Unread unread[] = {
-    {"operating_cases", "other cases of the same unit"},
-    {"present", "the unit as it is today"},
     {"anchor", "a reading of the running unit"},
-    {"accepted", "findings somebody has decided on"},
     {"requirements", "a purchaser's own limits"},
     {"guarantee", "what a vendor guarantees"},
     {"inquiry", "the inquiry a bid answers"},
@@ -116,19 +118,13 @@ constexpr Unread unread[] = {
     {"streams.*.outlet", "an outlet given instead of a flow"},
     {"streams.*.fouling_area", "fouling on the other surface"},
     {"streams.*.split", "streams that divide unevenly"},
-    {"streams.*.fluid.given", "known properties of a built-in fluid"},
-    {"fluid.given", "known properties of a built-in fluid"},
     {"service.confidence", "how sure a yes must be"},
 };
-
-constexpr std::string_view later_fluids =
-    "seawater|air|nitrogen|oxygen|hydrogen|methane|carbon_dioxide|oil|petroleum|ethylene_glycol_water|"
-    "propylene_glycol_water|calcium_chloride_water|gas_mixture|steam";
 
 /// Whether `key` is what `pattern` means, or stands below it. "*" is one segment.
 bool is_at_or_below(std::string_view key, std::string_view pattern) {
   while (!pattern.empty()) {
-    const auto key_dot = key.find('.'), pattern_dot = pattern.find('.');
+    const auto key_dot = first_dot(key), pattern_dot = first_dot(pattern);
     const auto segment = pattern.substr(0, pattern_dot);
     if (key.empty() || (segment != "*" && segment != key.substr(0, key_dot))) return false;
     key = key_dot == std::string_view::npos ? std::string_view{} : key.substr(key_dot + 1);
@@ -158,8 +154,14 @@ std::string kind_in_words(const Field& field) {
       return "a whole number";
     case Form::whole_or_list:
       return "a whole number, or one for each tube pass";
+    case Form::number:
+      return "a plain number";
     case Form::quantity:
       return std::string(units::name(field.kind));
+    case Form::either_viscosity:
+      return "a kinematic or dynamic viscosity";
+    case Form::property:
+      return fmt::format("{} at a temperature,", units::name(field.kind));
     case Form::wall:
       return "a length or a gauge";
     case Form::bore:
@@ -170,6 +172,8 @@ std::string kind_in_words(const Field& field) {
       return fmt::format("two values a -> b, each {}", units::name(field.kind));
     case Form::fluid:
       return std::string(known_fluids);
+    case Form::overlay:
+      return "a block of values by dotted key,";
   }
   return {};
 }
@@ -205,10 +209,6 @@ std::string expected_of(const Field& field) {
                         !field.words.empty() || field.form == Form::boolean || field.form == Form::version;
   if (!is_plain && !field.example.empty()) text += " such as " + field.example;
   return text;
-}
-
-bool is_later_fluid(std::string_view name) {
-  return is_one_of(name, later_fluids);
 }
 
 const Unread* find_unread(std::string_view key) {

@@ -14,22 +14,26 @@ namespace dutygauge::case_io {
 
 /// How a key's value is written.
 enum class Form {
-  block,          ///< a map of the keys below it
-  list,           ///< a list of blocks
-  text,           ///< free text
-  word,           ///< one of `words`
-  boolean,        ///< true or false
-  version,        ///< the format's version
-  tema,           ///< three TEMA letters
-  whole,          ///< a whole number
-  whole_or_list,  ///< a whole number, or one for each tube pass
-  quantity,       ///< a number with a unit of `kind`
-  angle,          ///< an angle that is one of `words`
-  wall,           ///< a length or a gauge
-  bore,           ///< a length or a nominal pipe
-  flow,           ///< a mass or volume flow
-  pair,           ///< "a -> b" of `kind`
-  fluid,          ///< a fluid's name, or a block of one family
+  block,             ///< a map of the keys below it
+  list,              ///< a list of blocks
+  text,              ///< free text
+  word,              ///< one of `words`
+  boolean,           ///< true or false
+  version,           ///< the format's version
+  tema,              ///< three TEMA letters
+  whole,             ///< a whole number
+  whole_or_list,     ///< a whole number, or one for each tube pass
+  number,            ///< a plain number
+  quantity,          ///< a number with a unit of `kind`
+  either_viscosity,  ///< kinematic or dynamic
+  property,          ///< a quantity "at" a temperature
+  angle,             ///< an angle that is one of `words`
+  wall,              ///< a length or a gauge
+  bore,              ///< a length or a nominal pipe
+  flow,              ///< a mass or volume flow
+  pair,              ///< "a -> b" of `kind`
+  fluid,             ///< a fluid's name, or a block of one family
+  overlay,           ///< values by dotted key, laid on the case
 };
 
 enum class Need {
@@ -82,11 +86,13 @@ const FieldTable& fluid_fields();
 /// "a length such as 19.05 mm": what a row's value should be.
 std::string expected_of(const Field& field);
 
-/// Whether a fluid is of the case format but not built in yet.
-bool is_later_fluid(std::string_view name);
+/// Blocks in which operating cases may differ.
+inline constexpr std::string_view blocks_that_may_differ = "exchanger|streams|service|methods";
 
 /// What `fluid` may be, in words.
-inline constexpr std::string_view known_fluids = "water, or a block with one of constant, table, two_point";
+inline constexpr std::string_view known_fluids =
+    "a name ('dutygauge fluid --list' has all), or a block with one of constant, table, two_point, oil, "
+    "petroleum, gas_mixture, seawater, a glycol or a brine";
 
 /// What a key of the case format means that this version does not read yet; null for others.
 struct Unread {

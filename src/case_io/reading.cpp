@@ -40,6 +40,7 @@ bool Entry::is_word() const {
 }
 
 units::Kind Entry::kind() const {
+  if (dynamic) return units::Kind::viscosity;
   if (field->form != Form::flow) return field->kind;
   return basis == units::FlowBasis::mass ? units::Kind::mass_flow : units::Kind::volume_flow;
 }
@@ -137,10 +138,6 @@ void Reading::check_key(const std::string& key, const Position& at, bool is_bloc
     return refuse(key, at, fmt::format("not read yet by this version: {}", unread->meaning),
                   keys_of(table_, parent_of(key)), is_block ? "leave the block out" : "leave the key out");
   const Field* field = table_.find(key);
-  const Field* block = table_.find(parent_of(key));
-  if (field == nullptr && block != nullptr && block->form == Form::fluid && is_later_fluid(last_segment(key)))
-    return refuse(key, at, "this fluid is not built in yet", std::string(known_fluids),
-                  "give its properties as a table");
   if (field == nullptr) return refuse_unknown(key, at);
   const bool fits =
       is_block ? takes_block(field->form) && (is_list == takes_list(field->form)) : takes_value(field->form);
@@ -152,6 +149,11 @@ void Reading::check_key(const std::string& key, const Position& at, bool is_bloc
 }
 
 void Reading::refuse_unknown(const std::string& key, const Position& at) {
+  const Field* block = table_.find(parent_of(key));
+  const std::string name(last_segment(key));
+  if (block != nullptr && block->form == Form::fluid && fluids::nearest_name(name) == name)
+    return refuse(key, at, fmt::format("{} is a fluid without data of its own", name), "its name alone",
+                  fmt::format("write fluid: {}", name));
   const Suggestion suggestion = suggest(table_, key);
   if (!suggestion.meant.empty()) suggested_.insert(suggestion.meant);
   refuse(key, at, "there is no such key", suggestion.expected, suggestion.remedy);

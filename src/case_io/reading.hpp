@@ -18,10 +18,12 @@ struct Entry {
   const Field* field = nullptr;
   std::string text{};  ///< as typed; the value of words and texts
   int line = 0;
+  double factor = 1.0;   ///< already in `value` and shown in `text`
   units::Value value{};  ///< of numbers; the first of a pair; the amount of a flow
   double second = 0;     ///< of a pair
   units::FlowBasis basis = units::FlowBasis::mass;
-  double basis_temperature = 0;  ///< [K]
+  double at_temperature = 0;  ///< [K] where a volume flow is measured, or a property holds
+  bool dynamic = false;       ///< a viscosity that may be either: dynamic, not kinematic
 
   bool is_word() const;
   units::Kind kind() const;  ///< of `value`: a flow's depends on what was written

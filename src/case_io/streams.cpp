@@ -14,11 +14,27 @@ using units::FlowBasis;
 using units::Kind;
 
 constexpr double standard_atmosphere =
-    101325.0;  // where written volume flows "at" a temperature are measured [Pa]
+    101325.0;  // of gauge pressures and of gas volumes "at" a temperature [Pa]
 
 bool is_bare_pressure(const Reading& reading, const std::string& key) {
   const auto found = reading.entries().find(key);
   return found != reading.entries().end() && found->second.value.bare_pressure;
+}
+
+/// What would be objected to if the pressure were a gauge pressure, and the phase then.
+struct IfGauge {
+  bool objected = false;
+  Phase phase = Phase::liquid;
+};
+
+IfGauge if_gauge(const Reading& reading, const std::string& side, const Inlet& inlet,
+                 const fluids::Made& made) {
+  const fluids::Inlet absolute{*inlet.temperature, *inlet.pressure + standard_atmosphere};
+  if (const auto name = word(reading.entries(), side + ".fluid")) {
+    const fluids::Made other = fluids::make_named(shown(*name), absolute);
+    return {!other.objections.empty(), other.fluid.phase};
+  }
+  return {!fluids::object_to_inlet(made.fluid, absolute).empty(), made.fluid.phase};
 }
 
 /// A pressure without a datum is read as absolute, unless that decides what the fluid is.
@@ -33,12 +49,33 @@ void check_datum(Reading& reading, const std::string& side, const Inlet& inlet, 
   };
   if (made.objections.empty() && made.fluid.phase == Phase::gas)
     return note("the density of a gas depends on it");
-  const auto if_gauge =
-      fluid_of(reading, side + ".fluid", {inlet.temperature, *inlet.pressure + standard_atmosphere});
-  if (!if_gauge) return;
-  const bool differ = made.objections.empty() != if_gauge->objections.empty() ||
-                      (made.objections.empty() && made.fluid.phase != if_gauge->fluid.phase);
+  const IfGauge other = if_gauge(reading, side, inlet, made);
+  const bool differ = made.objections.empty() == other.objected ||
+                      (made.objections.empty() && made.fluid.phase != other.phase);
   if (differ) note("the phase at the inlet depends on it");
+}
+
+/// Gases whose density at 101325 Pa follows from their model, not from a sheet made for another pressure.
+bool knows_pressure(const Fluid& fluid) {
+  return std::holds_alternative<fluids::WaterModel>(fluid.model) ||
+         std::holds_alternative<fluids::GasModel>(fluid.model) ||
+         std::holds_alternative<fluids::AirModel>(fluid.model);
+}
+
+/// Where a written volume flow is measured: gases "at" a temperature have 101325 Pa there, whether
+/// they could be rated there or not; liquids are under the pressure of the inlet.
+std::optional<double> density_there(Reading& reading, const std::string& key, const Fluid& fluid,
+                                    const fluids::Inlet& there) {
+  const auto usable = fluids::usable_temperatures(fluid, there.pressure);
+  const double density = fluids::reference_density(fluid, there.temperature, there.pressure);
+  const bool inside = there.temperature >= usable.low && there.temperature <= usable.high;
+  if ((inside || fluid.phase == Phase::gas) && std::isfinite(density) && density > 0.0) return density;
+  reading.note(
+      key,
+      fmt::format("the density at {} is not known: {}", units::typed(there.temperature, Kind::temperature),
+                  fluids::why_it_ends(fluid, there.pressure, there.temperature > usable.low)),
+      "a mass flow, or a volume flow where the fluid is known", "give the mass flow");
+  return {};
 }
 
 /// The density [kg/m3] that turns the written volume flow into a mass flow; empty with a mistake noted.
@@ -54,25 +91,15 @@ std::optional<double> flow_density(Reading& reading, const std::string& side, co
     return {};
   }
   const bool at_inlet = flow.basis != FlowBasis::temperature;
-  const double temperature = at_inlet ? *inlet.temperature : flow.basis_temperature;
-  const double pressure = at_inlet ? *inlet.pressure : standard_atmosphere;
-  const bool knows_pressure = std::holds_alternative<fluids::WaterModel>(fluid.model);
-  if (!at_inlet && is_gas && !knows_pressure) {
+  if (!at_inlet && is_gas && !knows_pressure(fluid)) {
     reading.note(key, "the fluid's properties do not give the density of this gas at 101325 Pa",
                  "a mass flow, or a volume flow at inlet",
                  "convert it with the gas's density at the stated temperature");
     return {};
   }
-  const auto usable = fluids::usable_temperatures(fluid, pressure);
-  const double density = fluids::state(fluid, temperature, pressure).density;
-  if (temperature >= usable.low && temperature <= usable.high && std::isfinite(density) && density > 0.0)
-    return density;
-  const bool below = temperature < usable.low;
-  reading.note(key,
-               fmt::format("the density at {} is not known: {}", units::typed(temperature, Kind::temperature),
-                           fluids::why_it_ends(fluid, pressure, !below)),
-               "a mass flow, or a volume flow where the fluid is known", "give the mass flow");
-  return {};
+  return density_there(reading, key, fluid,
+                       {at_inlet ? *inlet.temperature : flow.at_temperature,
+                        at_inlet || !is_gas ? *inlet.pressure : standard_atmosphere});
 }
 
 std::optional<double> mass_flow(Reading& reading, const std::string& side, const Fluid& fluid,

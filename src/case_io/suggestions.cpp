@@ -23,10 +23,14 @@ std::vector<const Field*> children(const FieldTable& table, std::string_view blo
 /// How many leading segments two keys share.
 std::size_t shared_segments(std::string_view a, std::string_view b) {
   std::size_t count = 0;
-  while (!a.empty() && !b.empty() && a.substr(0, a.find('.')) == b.substr(0, b.find('.'))) {
+  const auto rest = [](std::string_view key) {
+    const auto dot = first_dot(key);
+    return dot == std::string_view::npos ? std::string_view{} : key.substr(dot + 1);
+  };
+  while (!a.empty() && !b.empty() && a.substr(0, first_dot(a)) == b.substr(0, first_dot(b))) {
     ++count;
-    a = a.find('.') == std::string_view::npos ? std::string_view{} : a.substr(a.find('.') + 1);
-    b = b.find('.') == std::string_view::npos ? std::string_view{} : b.substr(b.find('.') + 1);
+    a = rest(a);
+    b = rest(b);
   }
   return count;
 }

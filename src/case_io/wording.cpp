@@ -22,6 +22,18 @@ void for_each_word(std::string_view words, Use use) {
   }
 }
 
+bool is_decimal_point(std::string_view key, std::size_t dot) {
+  const auto is_digit = [](char c) { return c >= '0' && c <= '9'; };
+  return dot > 0 && dot + 1 < key.size() && is_digit(key[dot - 1]) && is_digit(key[dot + 1]);
+}
+
+std::size_t last_dot(std::string_view key) {
+  auto dot = key.rfind('.');
+  while (dot != std::string_view::npos && is_decimal_point(key, dot))
+    dot = dot == 0 ? std::string_view::npos : key.rfind('.', dot - 1);
+  return dot;
+}
+
 }  // namespace
 
 std::string shown(std::string_view text, std::size_t longest) {
@@ -87,13 +99,23 @@ std::string_view nearest(std::string_view typed, std::string_view words) {
   return best;
 }
 
+std::size_t first_dot(std::string_view key) {
+  auto dot = key.find('.');
+  while (dot != std::string_view::npos && is_decimal_point(key, dot)) dot = key.find('.', dot + 1);
+  return dot;
+}
+
+bool begins_like_a_factor(std::string_view text) {
+  return text.size() > 1 && text[0] == 'x' && std::string_view("0123456789.+-").find(text[1]) != text.npos;
+}
+
 std::string_view last_segment(std::string_view key) {
-  const auto dot = key.rfind('.');
+  const auto dot = last_dot(key);
   return dot == std::string_view::npos ? key : key.substr(dot + 1);
 }
 
 std::string_view parent_of(std::string_view key) {
-  const auto dot = key.rfind('.');
+  const auto dot = last_dot(key);
   return dot == std::string_view::npos ? std::string_view{} : key.substr(0, dot);
 }
 

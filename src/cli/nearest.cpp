@@ -34,7 +34,7 @@ std::string_view nearest(std::string_view typed, std::span<const std::string_vie
 
 std::string did_you_mean(std::string_view typed, std::span<const std::string_view> known) {
   const auto near = nearest(typed, known);
-  return near.empty() ? "" : fmt::format("; did you mean '{}'?", near);
+  return near.empty() ? "" : fmt::format(" (did you mean '{}'?)", near);
 }
 
 }  // namespace dutygauge::cli

@@ -34,7 +34,7 @@ std::vector<std::string_view> spellings(const Command& command) {
 [[noreturn]] void refuse_unknown(const Command& command, std::string typed) {
   const std::string bare = typed.substr(std::min(typed.find_first_not_of('-'), typed.size()));
   const auto near = nearest(bare, spellings(command));
-  const std::string hint = near.empty() ? "" : fmt::format("; did you mean '--{}'?", near);
+  const std::string hint = near.empty() ? "" : fmt::format(" (did you mean '--{}'?)", near);
   throw CallError(fmt::format("unknown option '{}'{}{}", typed, hint, see_help(command)));
 }
 

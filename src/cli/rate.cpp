@@ -66,7 +66,7 @@ std::vector<std::string> refusals(const report::Result& result, const std::strin
   std::vector<std::string> lines;
   for (const auto& one : result.assumed)
     lines.push_back(fmt::format(
-        "{}: error: {}: not given, and --strict takes no assumption; it would be {} ({}); write it down",
+        "{}: error: {}: left open, and --strict takes no assumption; it would be {} ({}); write it down",
         file, one.key, one.word.empty() ? units::typed(one.value, one.kind) : one.word, one.why));
   return lines;
 }

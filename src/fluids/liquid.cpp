@@ -141,8 +141,9 @@ Made make_liquid(std::string_view name) {
   if (row == nullptr) {
     const std::string near = nearest_name(name);
     return refused("", fmt::format("'{}' is not a fluid known here", name),
-                   near.empty() ? "a built-in name" : fmt::format("perhaps '{}'", near),
-                   "correct the name, or give the properties as two_point or table");
+                   near.empty() ? "a built-in name" : near,
+                   near.empty() ? "correct the name, or give the properties as two_point or table"
+                                : fmt::format("write {} if that is meant", near));
   }
   Made made;
   made.fluid.model = LiquidModel{row};

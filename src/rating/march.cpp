@@ -56,8 +56,8 @@ March::March(const Unit& unit, int slices) : unit_(unit), network_(connect(unit.
   for (const Zone& zone : network_.zones)
     for (const Zone::Beside& beside : zone.tubes)
       for (int i = 0; i < points; ++i)
-        meet(beside.line, beside.counter ? points - 1 - i : i, zone.shell_line, i, zone.area,
-             zone.area * point_weight(i, slices));
+        meet(beside.line, beside.counter ? points - 1 - i : i, zone.shell_line, i, beside.area,
+             beside.area * point_weight(i, slices));
   for (const Field& field : network_.fields)
     for (int row = 0; row < points; ++row)
       for (int i = 0; i < points; ++i)

@@ -9,15 +9,10 @@
 namespace dutygauge::rating {
 namespace {
 
-constexpr int first_slices = 4, most_slices = 64;
-constexpr double duty_tolerance = 1e-5;
-
 /// Integrals over the surface of one bank, each divided by the surface.
 struct Means {
   double flux = 0, difference = 0;       ///< [W/m2], [K]
   overall::Resistances difference_over;  ///< temperature difference across each layer [K]
-  overall::WallTemperatures walls{0, 0, 0};
-  double shell_ideal_ratio = 0;
   tubeside::PressureDrop tube_drop;
   shellside::PressureDrop shell_drop;
 };
@@ -33,12 +28,8 @@ void add(Means& means, const Unit& unit, const Meeting& meeting) {
   means.difference_over.wall += w * flux * at.resistances.wall;
   means.difference_over.shell_fouling += w * flux * at.resistances.shell_fouling;
   means.difference_over.shell_film += w * flux * at.resistances.shell_film;
-  means.walls.tube_wetted += w * at.walls.tube_wetted;
-  means.walls.shell_wetted += w * at.walls.shell_wetted;
-  means.walls.metal_mean += w * at.walls.metal_mean;
-  const auto tube =
-      tubeside::pressure_drop(unit.problem->exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall);
-  const auto shell = shellside::pressure_drop(unit.bundle, unit.shell_flow, at.shell_bulk, at.shell_wall);
+  const auto tube = tube_drop(unit, at);
+  const auto shell = shell_drop(unit, at);
   means.tube_drop.friction += w * tube.friction;
   means.tube_drop.turns += w * tube.turns;
   means.tube_drop.nozzles += w * tube.nozzles;
@@ -73,11 +64,12 @@ void show_whole(const Unit& unit, const Means& means, double u, Local& local) {
        .shell_film = means.difference_over.shell_film * scale};
   local.u_dirty = u;
   local.u_clean = 1.0 / r.clean_sum();
-  local.walls = means.walls;
-  const double tube_film = unit.tube.outside_diameter / unit.tube.inside_diameter / r.tube_film;
+  local.walls = overall::wall_temperatures(r, local.tube_bulk.temperature, local.shell_bulk.temperature,
+                                           u * (local.shell_bulk.temperature - local.tube_bulk.temperature));
+  const double tube_film = unit.problem->exchanger.outside_per_inside / r.tube_film;
   local.tube_film.nusselt *= tube_film / local.tube_film.coefficient;
   local.tube_film.coefficient = tube_film;
-  local.shell_film.coefficient = 1.0 / r.shell_film;
+  local.shell_film.coefficient = 1.0 / (r.shell_film * local.fin_effectiveness);
   local.shell_film.ideal = ideal_share / r.shell_film;
 }
 
@@ -128,9 +120,8 @@ Outcome outcome_of(const Unit& unit, const March& march) {
   fill_dimensionless(unit, trial, outcome);
   const double shell_gain = problem.shell_side.mass_flow * march.mixed_enthalpy(march.network().shell_outlet);
   outcome.balance_error = std::abs(std::abs(shell_gain) - std::abs(duty)) / duty;
-  outcome.tube_drop = means.tube_drop.times(problem.exchanger.shells_in_series * problem.factors.tube_drop);
-  outcome.shell_drop =
-      means.shell_drop.times(problem.exchanger.shells_in_series * problem.factors.shell_drop);
+  outcome.tube_drop = means.tube_drop;
+  outcome.shell_drop = means.shell_drop;
   fill_profile(unit, march, outcome);
   return outcome;
 }
@@ -147,10 +138,10 @@ std::string outside_fault(const Problem& problem, const March::Outside& outside)
 
 }  // namespace
 
-MarchResult march_through(const Unit& unit, const Local& start) {
+MarchResult march_through(const Unit& unit, const Local& start, const Refinement& refinement) {
   MarchResult result;
   double last_duty = 0;
-  for (int slices = first_slices; slices <= most_slices; slices *= 2) {
+  for (int slices = refinement.first_slices;; slices *= 2) {
     March march(unit, slices);
     if (!march.run(start)) {
       result.fault =
@@ -162,17 +153,17 @@ MarchResult march_through(const Unit& unit, const Local& start) {
       return result;
     }
     const double duty = duty_of(unit, march);
-    const bool settled = slices > first_slices && std::abs(duty - last_duty) <= duty_tolerance * duty;
+    const bool settled =
+        slices > refinement.first_slices && std::abs(duty - last_duty) <= refinement.tolerance * duty;
     last_duty = duty;
-    if (settled || slices == most_slices) {
+    if (settled || 2 * slices > refinement.most_slices) {
       result.outcome = outcome_of(unit, march);
       return result;
     }
   }
-  return result;
 }
 
-Rating rate_march(const Problem& problem) {
+Rating rate_march(const Problem& problem, const Refinement& refinement) {
   Rating rating;
   rating.no_result = inlet_fault(problem.shell_side, "shell-side");
   if (rating.no_result.empty()) rating.no_result = inlet_fault(problem.tube_side, "tube-side");
@@ -180,7 +171,7 @@ Rating rate_march(const Problem& problem) {
   const Unit unit = prepare(problem);
   rating.largest_duty = duty_limit(problem).duty;
   const Bulk inlets{problem.tube_side.inlet_temperature, problem.shell_side.inlet_temperature};
-  MarchResult result = march_through(unit, local(unit, inlets, {}));
+  MarchResult result = march_through(unit, local(unit, inlets, {}), refinement);
   rating.no_result = result.fault;
   if (!result.outcome) return rating;
   rating.march_duty = result.outcome->duty;

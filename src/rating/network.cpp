@@ -1,6 +1,9 @@
 #include "network.hpp"
 
-#include <stdexcept>
+#include <utility>
+
+#include "dutygauge/arrangement/paths.hpp"
+#include "dutygauge/rating.hpp"
 
 namespace dutygauge::rating {
 namespace {
@@ -11,10 +14,10 @@ using Feeds = std::vector<Feed>;
 class Builder {
  public:
   Builder(const geometry::Exchanger& exchanger, int slices)
-      : shape_(exchanger.as_described),
-        parallel_(exchanger.flow_direction == geometry::FlowDirection::parallel),
-        first_pass_counter_(exchanger.first_tube_pass == geometry::FirstTubePass::against_shell_flow),
+      : shell_type_(arrangement_of(exchanger)),
+        parallel_(shell_type_.flow == arrangement::Flow::parallel),
         area_(1.0 / exchanger.shells_in_series) {
+    shell_type_.shells_in_series = 1;
     network_.slices = slices;
     network_.tube_end.resize(static_cast<std::size_t>(exchanger.shells_in_series));
     network_.shell_end.resize(static_cast<std::size_t>(exchanger.shells_in_series));
@@ -53,160 +56,71 @@ class Builder {
     for (int i : lines) network_.lines[index(i)].feeds = feeds;
   }
 
-  void zone(int shell_line, std::vector<Zone::Beside> tubes, double area) {
-    network_.zones.push_back({shell_line, std::move(tubes), area_ * area});
-  }
-
   void add_shell() {
     entries_.emplace_back();
-    switch (shape_.shell_type) {
-      case 'E':
-        return add_run(shape_.tube_passes);
-      case 'F':
-        return add_two_runs();
-      case 'G':
-        return add_split(1);
-      case 'H':
-        return add_split(2);
-      case 'J':
-        return add_divided();
-      case 'X':
-        return add_crossflow();
-      default:
-        throw std::invalid_argument("rating: no connections are known for this shell type");
-    }
+    if (shell_type_.shell_type == 'X') return add_crossflow();
+    add_along(arrangement::flow_paths(shell_type_));
   }
 
-  /// E: one run, the passes beside it turn by turn with and against the shell stream.
-  void add_run(int passes) {
-    const int shell = line(false, 1.0, 1);
-    std::vector<Zone::Beside> tubes = chain(passes, 1, first_counter(passes));
-    entries_.back().shell = {shell};
-    entries_.back().tube = {tubes.front().line};
-    ends(tubes.back().line, {{shell, 1.0}});
-    zone(shell, tubes, 1.0 / passes);
-  }
-
-  bool first_counter(int passes) const { return passes == 1 ? !parallel_ : first_pass_counter_; }
-
-  /// `passes` tube lines, each fed by the one before, turning round after each.
-  std::vector<Zone::Beside> chain(int passes, int first_pass, bool counter) {
-    std::vector<Zone::Beside> tubes;
-    for (int k = 0; k < passes; ++k) {
-      Feeds feeds;
-      if (k > 0) feeds = {{tubes.back().line, 1.0}};
-      tubes.push_back({line(true, 1.0, first_pass + k, feeds), counter});
-      counter = !counter;
-    }
-    return tubes;
-  }
-
-  /// F: two shell runs in series, half of the tube passes beside each; the tube
-  /// stream meets the second run first.
-  void add_two_runs() {
-    const int half = shape_.tube_passes / 2;
-    const int first = line(false, 1.0, 1);
-    const int second = line(false, 1.0, 2, {{first, 1.0}});
-    auto beside_second = chain(half, 1, half == 1 || first_pass_counter_);
-    auto beside_first = chain(half, half + 1, half == 1 || first_pass_counter_);
-    network_.lines[index(beside_first.front().line)].feeds = {{beside_second.back().line, 1.0}};
-    entries_.back().shell = {first};
-    entries_.back().tube = {beside_second.front().line};
-    ends(beside_first.back().line, {{second, 1.0}});
-    zone(first, beside_first, 0.5 / half);
-    zone(second, beside_second, 0.5 / half);
-  }
-
-  /// A tube pass through `shells` zones one after another; with or against each in turn.
-  struct Leg {
-    std::vector<int> lines;
-    bool forward;  ///< from left to right
-  };
-
-  /// J: the shell stream enters in the middle and leaves at both ends.
-  void add_divided() {
-    const int left = line(false, 0.5, 1), right = line(false, 0.5, 1);
-    std::vector<Zone::Beside> beside_left, beside_right;
-    int last = -1;
-    for (int pass = 1; pass <= shape_.tube_passes; ++pass) {
-      const bool forward = pass % 2 == 1;
-      const int first_half = pass_line(pass, last, 1.0);
-      const int second_half = line(true, 1.0, pass, {{first_half, 1.0}});
-      // The shell halves run outwards from the middle.
-      beside_left.push_back({forward ? first_half : second_half, forward});
-      beside_right.push_back({forward ? second_half : first_half, !forward});
-      last = second_half;
-    }
-    entries_.back().shell = {left, right};
-    ends(last, {{left, 0.5}, {right, 0.5}});
-    zone(left, beside_left, 0.5 / shape_.tube_passes);
-    zone(right, beside_right, 0.5 / shape_.tube_passes);
-  }
-
-  /// A line of a pass: fed by the line before, or by what enters the shell.
-  int pass_line(int pass, int before, double flow) {
-    if (before >= 0) return line(true, flow, pass, {{before, 1.0}});
-    const int first = line(true, flow, pass);
-    entries_.back().tube.push_back(first);
-    return first;
-  }
-
-  /// G and H: `patterns` split-flow patterns side by side. In each the shell stream
-  /// runs outwards above the longitudinal baffle and back below it; the first half
-  /// of the tube passes lies below, by the shell outlet. One pass: half of the tubes
-  /// above and half below, in the same direction.
-  void add_split(int patterns) {
-    const double flow = 0.5 / patterns;
-    const int columns = 2 * patterns;
-    std::vector<int> above, below;
+  /// Every shell whose streams run along it: lines for the ways of the shell stream and
+  /// the runs of the tubes in each segment, zones where they lie side by side.
+  void add_along(const arrangement::FlowPaths& paths) {
+    const int runs = static_cast<int>(paths.runs.size());
+    std::vector<std::vector<int>> way(index(paths.segments)), run(index(paths.segments));
     Feeds shell_leaves;
-    for (int c = 0; c < columns; ++c) {
-      above.push_back(line(false, flow, 1));
-      below.push_back(line(false, flow, 2, {{above.back(), 1.0}}));
-      entries_.back().shell.push_back(above.back());
-      shell_leaves.push_back({below.back(), flow});
-    }
-    std::vector<std::vector<Zone::Beside>> beside_above(index(columns)), beside_below(index(columns));
-    const int passes = shape_.tube_passes;
-    Feeds tubes_leave;
-    if (passes == 1) {
-      tubes_leave = {{traverse(1, -1, 0.5, true, false, beside_below), 0.5},
-                     {traverse(1, -1, 0.5, true, true, beside_above), 0.5}};
-    } else {
-      int last = -1;
-      for (int pass = 1; pass <= passes; ++pass) {
-        const bool upper = pass > passes / 2;
-        last = traverse(pass, last, 1.0, pass % 2 == 1, upper, upper ? beside_above : beside_below);
+    for (int segment = 0; segment < paths.segments; ++segment) {
+      const double share = arrangement::shell_share(shell_type_, paths, segment);
+      for (int w = 0; w < paths.ways; ++w)
+        way[index(segment)].push_back(
+            line(false, share, w + 1, w == 0 ? Feeds{} : Feeds{{way[index(segment)][0], 1.0}}));
+      entries_.back().shell.push_back(way[index(segment)].front());
+      shell_leaves.push_back({way[index(segment)].back(), share});
+      for (int r = 0; r < runs; ++r) {
+        const double flow = paths.runs[index(r)].capacity_rate;
+        run[index(segment)].push_back(line(true, flow, flow < 1.0 ? 1 : r + 1));
       }
-      tubes_leave = {{last, 1.0}};
     }
-    network_.tube_end[index(shell_)] = tubes_leave;
     network_.shell_end[index(shell_)] = shell_leaves;
-    const double area = 1.0 / (columns * (passes == 1 ? 2 : passes));
-    for (int c = 0; c < columns; ++c) {
-      zone(above[index(c)], beside_above[index(c)], area);
-      zone(below[index(c)], beside_below[index(c)], area);
-    }
+    join_tubes(paths, run);
+    for (int segment = 0; segment < paths.segments; ++segment)
+      for (int w = 0; w < paths.ways; ++w) add_zone(paths, segment, w, way, run);
   }
 
-  /// One tube pass along all columns; returns its last line. Above the baffle the shell
-  /// stream runs outwards (left in even columns), below it inwards.
-  int traverse(int pass, int before, double flow, bool forward, bool upper,
-               std::vector<std::vector<Zone::Beside>>& beside) {
-    const int columns = static_cast<int>(beside.size());
-    for (int k = 0; k < columns; ++k) {
-      const int column = forward ? k : columns - 1 - k;
-      const bool shell_runs_left = (column % 2 == 0) == upper;
-      before = pass_line(pass, before, flow);
-      beside[index(column)].push_back({before, shell_runs_left == forward});
+  /// Feeds the runs of tubes: segment by segment in their direction, one run after another.
+  void join_tubes(const arrangement::FlowPaths& paths, const std::vector<std::vector<int>>& run) {
+    Feeds leaves;
+    int before = -1;
+    for (std::size_t r = 0; r < paths.runs.size(); ++r) {
+      const arrangement::TubeRun& tubes = paths.runs[r];
+      if (tubes.capacity_rate < 1.0) before = -1;  // side by side with the others
+      for (int k = 0; k < paths.segments; ++k) {
+        const int at = run[index(tubes.forward ? k : paths.segments - 1 - k)][r];
+        if (before >= 0)
+          network_.lines[index(at)].feeds = {{before, 1.0}};
+        else
+          entries_.back().tube.push_back(at);
+        before = at;
+      }
+      if (tubes.capacity_rate < 1.0) leaves.push_back({before, tubes.capacity_rate});
     }
-    return before;
+    network_.tube_end[index(shell_)] = leaves.empty() ? Feeds{{before, 1.0}} : leaves;
+  }
+
+  void add_zone(const arrangement::FlowPaths& paths, int segment, int way_number,
+                const std::vector<std::vector<int>>& way, const std::vector<std::vector<int>>& run) {
+    std::vector<Zone::Beside> tubes;
+    for (std::size_t r = 0; r < paths.runs.size(); ++r)
+      if (paths.runs[r].beside == way_number)
+        tubes.push_back({run[index(segment)][r],
+                         paths.runs[r].forward != paths.shell_forward(segment, way_number),
+                         area_ * paths.runs[r].area / paths.segments});
+    network_.zones.push_back({way[index(segment)][index(way_number)], std::move(tubes)});
   }
 
   /// X: each pass is a field of tube rows crossed by the whole shell stream, which is
   /// mixed between fields; the shell stream meets the last pass first.
   void add_crossflow() {
-    const int passes = shape_.tube_passes, points = network_.points();
+    const int passes = shell_type_.tube_passes;
     Feeds tubes_before, shell_before;
     std::vector<int> first_tube(index(passes)), first_shell(index(passes));
     for (int pass = 1; pass <= passes; ++pass) {
@@ -222,7 +136,6 @@ class Builder {
     }
     network_.tube_end[index(shell_)] = tubes_before;
     network_.shell_end[index(shell_)] = shell_before;
-    static_cast<void>(points);
   }
 
   int bundle(bool tube_side, int pass, const Feeds& feeds) {
@@ -244,13 +157,8 @@ class Builder {
     return feeds;
   }
 
-  void ends(int tube_line, Feeds shell) {
-    network_.tube_end[index(shell_)] = {{tube_line, 1.0}};
-    network_.shell_end[index(shell_)] = std::move(shell);
-  }
-
-  const geometry::Description& shape_;
-  bool parallel_, first_pass_counter_;
+  arrangement::Arrangement shell_type_;  ///< of one shell
+  bool parallel_;
   double area_;  ///< of one shell, share of the bank
   int shell_ = 0;
   std::vector<Entries> entries_;

@@ -27,10 +27,10 @@ struct Zone {
   struct Beside {
     int line;
     bool counter;  ///< runs against the shell line
+    double area;   ///< of the tube line in the zone, share of one bank's surface
   };
   int shell_line;
   std::vector<Beside> tubes;
-  double area;  ///< of each tube line in the zone, share of one bank's surface
 };
 
 /// A crossflow field: tube rows side by side, the shell stream crossing all of them.

@@ -7,6 +7,7 @@ namespace {
 
 // Sorted by key. `standing` says how we know the text, not how good the source is.
 constexpr Source table[] = {
+    {"ahmad_1988", "Ahmad, Linnhoff & Smith, J. Heat Transfer 110, 304-310 (1988)", "recalled"},
     {"api_mpms_11_1",
      "API MPMS 11.1 / ASTM D1250-80, tables 54A, B and D: density of petroleum against temperature",
      "secondary"},
