@@ -77,7 +77,8 @@ void check_areas(Sheet& sheet) {
   if (!sheet.claims.area_effective) {
     sheet.area = with_and_without_plugs(s, s.effective, s.sheet_slack, 1.0);
     if (sheet.claims.area_gross)
-      sheet.area.push_back({sheet.claims.area_gross->value * divisor, sheet.claims.area_gross->rounding});
+      sheet.area.push_back(
+          {sheet.claims.area_gross->value * divisor, sheet.claims.area_gross->rounding * divisor});
   }
   Check gross{.key = "area.gross",
               .computed = with_and_without_plugs(s, s.gross, 0.0, divisor),
