@@ -8,8 +8,8 @@
 namespace dutygauge::bids {
 namespace {
 
-// Two standard deviations and less of the scatter published for our methods (Palen & Taborek
-// 1969 for the shell side, recalled): a question beyond, never a contradiction.
+// A question beyond, never a contradiction. This project's own choice, after the scatter
+// published for such methods (shell side: Palen & Taborek 1969, recalled).
 constexpr double film_scatter = 0.25, shell_drop_scatter = 0.40, tube_drop_scatter = 0.20;
 
 struct Beside {
