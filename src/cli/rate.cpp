@@ -114,17 +114,6 @@ Rated rate_file(const std::string& file, const Wishes& wishes) {
   }
 }
 
-std::size_t jobs(const Call& call) {
-  const auto typed = call.value("jobs");
-  if (!typed) return 1;
-  const auto number = units::number(*typed);
-  if (!number || *number < 1.0 || *number > 1024.0 ||
-      *number != static_cast<double>(static_cast<int>(*number)))
-    throw CallError(
-        fmt::format("--jobs: '{}' is not a number of jobs; expected a whole number from 1 to 1024", *typed));
-  return static_cast<std::size_t>(*number);
-}
-
 std::vector<Rated> rate_all(const std::vector<std::string>& files, const Wishes& wishes, std::size_t jobs) {
   const tbb::global_control limit(tbb::global_control::max_allowed_parallelism, jobs);
   std::vector<Rated> all(files.size());
@@ -166,7 +155,7 @@ int run_rate(const Call& call, Streams streams) {
                       .strict = call.has("strict"),
                       .all = call.has("verbose"),
                       .display = units_asked_for(call)};
-  const std::size_t at_a_time = jobs(call);
+  const std::size_t at_a_time = jobs_asked_for(call);
   const auto files = files_named(call.arguments);
   if (std::ranges::find(files, "-") != files.end() && isatty(STDIN_FILENO) == 1)
     log.note("waiting for a case on standard input; end it with Ctrl-D");

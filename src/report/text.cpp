@@ -1,6 +1,7 @@
 #include <fmt/core.h>
 
 #include "dutygauge/report.hpp"
+#include "table_parts.hpp"
 #include "page.hpp"
 #include "sections.hpp"
 #include "words.hpp"
@@ -29,13 +30,10 @@ void closing(Page& page, const Result& result) {
 }  // namespace
 
 void heading(Page& page, const Result& result) {
-  const std::string right = "input " + result.input_sha256.substr(0, 8);
-  std::string left = result.tag;
-  if (!result.title.empty()) left += (left.empty() ? "" : "  ") + result.title;
-  if (left.empty()) left = result.file;
-  const std::size_t width = page_width - right.size() - 2;
-  page.line(fmt::format("{:<{}}  {}", clipped(ascii(left), width), width, right));
-  page.line(std::string(page_width, '-'));
+  heading(page, CaseName{.file = result.file,
+                         .title = result.title,
+                         .tag = result.tag,
+                         .input_sha256 = result.input_sha256});
 }
 
 void answer(Page& page, const Result& result) {
