@@ -16,6 +16,9 @@ service::Assessment assess_both_ways(const rating::Problem& problem, const servi
 /// Rates and judges a case: what `dutygauge rate` does with one file.
 report::Result rate(const case_io::Case& a_case);
 
+/// Puts into a result what levers and assumptions are worth. `document`: the case it came from.
+void weigh(const case_io::Document& document, report::Result& result);
+
 /// What moves the line that governs, each lever by itself, the strongest first.
 std::vector<report::Lever> levers(const case_io::Document& document);
 

@@ -18,6 +18,7 @@ constexpr Option rate_options[] = {
 
 constexpr Option units_option = {"units", "", "SYSTEM", "units of the page: si, metric or us"};
 constexpr Option one_json_option = {"json", "", "", "one JSON object, in SI"};
+constexpr Option case_option = {"case", "", "NAME", "which operating case; without it, the first"};
 constexpr Option points_at_a_time = {"jobs", "", "N",
                                      "rate N points at a time; the result is the same for any N"};
 
@@ -28,6 +29,7 @@ constexpr Option sweep_options[] = {
     {"vary", "", "KEY=RANGE", "FROM..TO:STEPS with a unit, or factors; once or twice", true},
     one_json_option,
     {"csv", "", "FILE", "the table as CSV in SI; - is standard output, instead of the page"},
+    case_option,
     units_option,
     points_at_a_time,
     out_option,
@@ -41,6 +43,7 @@ constexpr Option reach_options[] = {
     {"push", "", "KEY", "the input that is pushed; KEY=RANGE to look through a range of your own"},
     {"over", "", "KEY=RANGE", "a second input: FROM..TO:STEPS with a unit, or factors"},
     one_json_option,
+    case_option,
     units_option,
     points_at_a_time,
     out_option,
@@ -49,7 +52,7 @@ constexpr Option reach_options[] = {
 constexpr std::string_view compare_examples[] = {
     "dutygauge compare before.yaml after.yaml          what changed going in, and coming out",
     "dutygauge compare --json before.yaml after.yaml   the same for a script"};
-constexpr Option compare_options[] = {one_json_option, units_option, out_option, force_option};
+constexpr Option compare_options[] = {case_option, one_json_option, units_option, out_option, force_option};
 
 constexpr std::string_view explain_examples[] = {
     "dutygauge explain exchanger.baffles.cut            what a key of the case file means",

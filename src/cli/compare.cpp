@@ -3,6 +3,7 @@
 #include "command.hpp"
 #include "dutygauge/cli.hpp"
 #include "dutygauge/explore.hpp"
+#include "vary.hpp"
 
 namespace dutygauge::cli {
 
@@ -10,8 +11,8 @@ int run_compare(const Call& call, Streams streams) {
   if (call.arguments.size() != 2) throw CallError("compare takes two cases: compare A.yaml B.yaml");
   if (std::ranges::count(call.arguments, "-") > 1)
     throw CallError("standard input (-) can be read only once");
-  case_io::Document a = case_io::read_file(call.arguments.front());
-  const case_io::Document b = case_io::read_file(call.arguments.back());
+  const auto a = operating_case(call, case_io::read_file(call.arguments.front()));
+  const auto b = operating_case(call, case_io::read_file(call.arguments.back()));
   report::Comparison comparison = explore::compare(a, b);
   if (const auto display = units_asked_for(call)) comparison.a.display = *display;
   deliver(call, call.has("json") ? report::json(comparison) + "\n" : report::text(comparison), streams.out);

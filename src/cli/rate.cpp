@@ -91,10 +91,12 @@ Rated without_result(int status, const std::string& file, std::vector<std::strin
 }
 
 Rated rate_case(const std::string& file, const Wishes& wishes) {
-  case_io::Case a_case = case_io::build(case_io::read_file(file));
+  const case_io::Document document = case_io::read_file(file);
+  case_io::Case a_case = case_io::build(document);
   // --units is for the page: the words of a JSON result are the same whatever is asked for.
   a_case.display = wishes.json ? units::System::metric : wishes.display.value_or(a_case.display);
-  const report::Result result = explore::rate(a_case);
+  report::Result result = explore::rate(a_case);
+  explore::weigh(case_io::overlaid(document, a_case.operating_case), result);
   if (wishes.strict && !result.assumed.empty())
     return without_result(input_at_fault, file, refusals(result, file), wishes.json);
   return {.status = status_of(result),

@@ -2,6 +2,8 @@
 
 #include <fmt/core.h>
 
+#include <algorithm>
+
 namespace dutygauge::cli {
 namespace {
 
@@ -52,11 +54,21 @@ explore::Variation variation(std::string_view option, const case_io::Document& d
   return std::get<explore::Variation>(read);
 }
 
+case_io::Document operating_case(const Call& call, const case_io::Document& document) {
+  const auto names = case_io::operating_cases(document);
+  const std::string wanted = call.value("case").value_or(names.front());
+  if (std::ranges::find(names, wanted) != names.end()) return case_io::overlaid(document, wanted);
+  const std::vector<std::string_view> known(names.begin(), names.end());
+  throw CallError(fmt::format("--case: {} has no operating case '{}'{}", document.file, wanted,
+                              did_you_mean(wanted, known)));
+}
+
 case_io::Document case_given(const Call& call, std::string_view command) {
   if (call.arguments.size() != 1)
     throw CallError(fmt::format("{} takes one case: a file, or - for standard input", command));
   case_io::Document document = case_io::read_file(call.arguments.front());
-  case_io::build(document);  // a case at fault is said before what is wrong with the options
+  case_io::build_all(document);  // a case at fault is said before what is wrong with the options
+  document = operating_case(call, document);
   if (const auto asked = call.value("units")) {
     units_asked_for(call);
     document.leaves["display"].text = *asked;

@@ -18,6 +18,9 @@ explore::Dial dial_named(std::string_view option, const case_io::Document& docum
 explore::Variation variation(std::string_view option, const case_io::Document& document,
                              const std::string& typed);
 
+/// The operating case that --case names, else the first, as the unit is. Throws CallError.
+case_io::Document operating_case(const Call& call, const case_io::Document& document);
+
 /// The one case a command is given, in the units asked for. Throws CallError, InputError.
 case_io::Document case_given(const Call& call, std::string_view command);
 

@@ -86,7 +86,7 @@ Follower::Follower(const case_io::Document& document, const Dial& dial)
 
 Reading Follower::at(double value) const {
   Reading reading{.value = value};
-  const Point point = rated(turned(document_, dial_, value));
+  const Point point = rated(document_, {{dial_, value}});
   if (!point.assessment) {
     reading.unsettled = point.unsettled;
     reading.stopper = point.stopper;

@@ -95,12 +95,18 @@ std::vector<std::optional<report::Effect>> effects(const case_io::Document& docu
     const Assumption& one = result.assumed[i];
     const auto found = one.low && one.high ? dial(document, one.key) : std::nullopt;
     if (!found) continue;
-    const std::vector<Point> there = {rated(turned(document, *found, *one.low)),
-                                      rated(turned(document, *found, *one.high))};
+    const std::vector<Point> there = {rated(document, {{*found, *one.low}}),
+                                      rated(document, {{*found, *one.high}})};
     const bool known = std::ranges::any_of(there, [](const Point& p) { return p.assessment.has_value(); });
     if (known) all[i] = effect_of(*here.assessment, there);
   }
   return all;
+}
+
+void weigh(const case_io::Document& document, report::Result& result) {
+  if (!result.assessment.rating.outcome) return;
+  result.levers = levers(document);
+  result.effects = effects(document, result);
 }
 
 }  // namespace dutygauge::explore

@@ -83,7 +83,7 @@ class Puller {
     const std::string key = "exchanger.tubes.plugged";
     const auto given = document_.leaves.lower_bound(key);
     if (given == document_.leaves.end() || !given->first.starts_with(key)) return;
-    pulls_.push_back({"plugged tubes renewed", key, with_value(document_, key, "0")});
+    pulls_.push_back({"plugged tubes renewed", key, case_io::with_value(document_, key, "0")});
   }
 
   const case_io::Document& document_;

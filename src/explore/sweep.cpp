@@ -101,16 +101,16 @@ report::Sweep sweep(const case_io::Document& document, const std::vector<Variati
   }
   sweep.rows.resize(count);
   tbb::parallel_for(std::size_t{0}, count, [&](std::size_t i) {
-    case_io::Document changed = document;
     report::SweepRow& row = sweep.rows[i];
+    std::vector<std::pair<Dial, double>> turns;
     std::size_t group = count, rest = i;
     for (const auto& one : variations) {
       group /= one.values.size();
       row.at.push_back(one.values[rest / group]);
       rest %= group;
-      changed = turned(changed, one.dial, row.at.back());
+      turns.emplace_back(one.dial, row.at.back());
     }
-    const Point point = rated(changed);
+    const Point point = rated(document, turns);
     if (point.assessment)
       row.running = running(*point.assessment);
     else

@@ -13,13 +13,6 @@ using units::Kind;
 
 constexpr int exact = 16;  // significant digits that bring a value back
 
-template <class Map>
-void erase_below(Map& map, const std::string& key) {
-  const std::string start = key + ".";
-  auto at = map.lower_bound(start);
-  while (at != map.end() && at->first.starts_with(start)) at = map.erase(at);
-}
-
 /// The kind whose name in words the field table gives; empty for words, texts and blocks.
 std::optional<Kind> kind_named(const std::string& name) {
   if (name == "whole number") return Kind::count;
@@ -37,6 +30,15 @@ void take_basis(Dial& dial, const std::string& text) {
   }
 }
 
+/// A value as it would be typed for that dial, exact.
+std::string typed(const Dial& dial, double value) {
+  std::string text = units::typed(value, dial.kind, units::System::si, exact);
+  if (dial.kind != Kind::volume_flow) return text;
+  if (dial.basis != units::FlowBasis::temperature) return text + " at inlet";
+  return fmt::format("{} at {}", text,
+                     units::typed(dial.basis_temperature, Kind::temperature, units::System::si, exact));
+}
+
 /// Of the rating's sentence: whether it only says that the iteration found no rest.
 bool did_not_settle(const rating::Rating& rating) {
   return rating.no_result.find("do not settle") != std::string::npos;
@@ -49,20 +51,6 @@ std::string range_that_ends(const rating::Rating& rating) {
 
 }  // namespace
 
-case_io::Document with_value(case_io::Document document, const std::string& key, const std::string& text) {
-  erase_below(document.leaves, key);
-  erase_below(document.blocks, key);
-  document.blocks.erase(key);
-  for (std::size_t dot = key.rfind('.'); dot != std::string::npos && dot > 0; dot = key.rfind('.', dot - 1)) {
-    document.leaves.erase(key.substr(0, dot));  // a fluid's name becomes a block
-    document.blocks.try_emplace(key.substr(0, dot));
-  }
-  case_io::Leaf& leaf = document.leaves[key];
-  leaf.text = text;
-  leaf.quoted = false;
-  return document;
-}
-
 std::optional<Dial> dial(const case_io::Document& document, std::string_view key) {
   const case_io::Case a_case = case_io::build(document);
   Dial dial{.key = std::string(key)};
@@ -74,7 +62,8 @@ std::optional<Dial> dial(const case_io::Document& document, std::string_view key
     if (found->is_word) return {};
     dial.kind = found->kind;
     dial.own = found->si;
-    if (dial.is_flow) take_basis(dial, found->as_typed);
+    if (const auto leaf = document.leaves.find(dial.key); dial.is_flow && leaf != document.leaves.end())
+      take_basis(dial, leaf->second.text);
     return dial;
   }
   if (!help || help->key != key) return {};
@@ -84,33 +73,31 @@ std::optional<Dial> dial(const case_io::Document& document, std::string_view key
   return dial;
 }
 
-std::string typed(const Dial& dial, double value) {
-  std::string text = units::typed(value, dial.kind, units::System::si, exact);
-  if (dial.kind != Kind::volume_flow) return text;
-  if (dial.basis != units::FlowBasis::temperature) return text + " at inlet";
-  return fmt::format("{} at {}", text,
-                     units::typed(dial.basis_temperature, Kind::temperature, units::System::si, exact));
-}
-
 case_io::Document turned(const case_io::Document& document, const Dial& dial, double value) {
-  return with_value(document, dial.key, typed(dial, value));
+  return case_io::with_value(document, dial.key, typed(dial, value));
 }
 
 Point rated(const case_io::Document& document) {
+  return rated(document, {});
+}
+
+Point rated(const case_io::Document& document, const std::vector<std::pair<Dial, double>>& turns) {
   Point point;
   try {
-    const case_io::Case a_case = case_io::build(document);
+    case_io::Document changed = document;
+    for (const auto& [dial, value] : turns) changed = turned(changed, dial, value);
+    const case_io::Case a_case = case_io::build(changed);
     service::Service service = a_case.service;
     service.words = a_case.display;
     auto assessment = service::judge(a_case.problem, service);
     const rating::Rating& rating = assessment.rating;
-    if (!rating.outcome) {
-      point.unsettled = did_not_settle(rating);
-      if (!point.unsettled) point.stopper = range_that_ends(rating);
-      point.why = rating.no_result;
+    if (rating.outcome) {
+      point.assessment = std::move(assessment);
       return point;
     }
-    point.assessment = std::move(assessment);
+    point.unsettled = did_not_settle(rating);
+    if (!point.unsettled) point.stopper = range_that_ends(rating);
+    point.why = rating.no_result;
   } catch (const case_io::InputError& error) {
     const case_io::Mistake& first = error.mistakes().front();
     point.stopper = first.key.empty() ? "case" : first.key;

@@ -7,12 +7,6 @@
 /// Internal to explore: a case file changed, and one point of it rated.
 namespace dutygauge::explore {
 
-/// The document with the value of `key` replaced, or put in with the blocks it needs.
-case_io::Document with_value(case_io::Document document, const std::string& key, const std::string& text);
-
-/// A value as it would be typed for that dial, exact.
-std::string typed(const Dial& dial, double value);
-
 /// One point: judged, or why it cannot be.
 struct Point {
   std::optional<service::Assessment> assessment;  ///< with an outcome
@@ -21,6 +15,8 @@ struct Point {
   std::string why;         ///< a sentence
 };
 Point rated(const case_io::Document& document);
+/// The same with dials turned to values.
+Point rated(const case_io::Document& document, const std::vector<std::pair<Dial, double>>& turns);
 
 report::Running running(const service::Assessment& assessment);
 report::CaseName name_of(const case_io::Case& a_case);

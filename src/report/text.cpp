@@ -1,9 +1,9 @@
 #include <fmt/core.h>
 
 #include "dutygauge/report.hpp"
-#include "table_parts.hpp"
 #include "page.hpp"
 #include "sections.hpp"
+#include "table_parts.hpp"
 #include "words.hpp"
 
 namespace dutygauge::report {
@@ -52,6 +52,7 @@ std::string text(const Result& result, const TextOptions& options) {
     how_sure(page, result);
     page.blank();
     what_limits(page, result);
+    levers(page, result);
   }
   assumed(page, result, options);
   page.blank();
