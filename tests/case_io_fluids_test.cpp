@@ -145,6 +145,9 @@ TEST_CASE("case_io: volume flows become mass by the fluid's own density where th
   // Wet gas is counted as if nothing condensed, although it could not be rated there.
   CHECK(relative(flow("{gas_mixture: {mole_fractions: {nitrogen: 0.993, water: 0.007}}}", "3600 Nm3/h"),
                  ideal(0.993 * 28.0134e-3 + 0.007 * 18.01528e-3, 273.15)) < 3e-3);
+  const auto steam = built(with("temperature: 29 degC", "temperature: 160 degC",
+                                with("62 m3/h at inlet", "3600 Nm3/h", with_tube_fluid("steam"))));
+  CHECK(relative(steam.problem.tube_side.mass_flow, ideal(18.01528e-3, 273.15)) < 3e-3);
   const auto standard = built(with("62 m3/h at inlet", "9000 Nm3/h", with_tube_fluid("air")));
   CHECK(assumes(standard, "streams.tube_side.flow"));
 }
