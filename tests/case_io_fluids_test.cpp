@@ -185,6 +185,9 @@ TEST_CASE("case_io: mistakes in fluids are met where they stand") {
       {"a doubled temperature",
        tube("{oil: {viscosity: {40 degC: 46 cSt, 40 degC: 6 cSt}}}"),
        {"viscosity.40 degC: the key is given twice"}},
+      {"a viscosity without temperatures",
+       tube("{oil: {viscosity: 46 cSt}}"),
+       {"fluid.oil.viscosity: a single value", "the temperature written as its key"}},
       {"one point", tube("{oil: {viscosity: {40 degC: 46 cSt}}}"), {"fluid.oil.viscosity:", "two points"}},
       {"a temperature without unit",
        tube("{oil: {viscosity: {40.5: 46 cSt, 100 degC: 6 cSt}}}"),
@@ -286,4 +289,10 @@ TEST_CASE("rating: a wall that would freeze a cooled stream is found at its cold
     REQUIRE(result.assessment.rating.outcome);
     CHECK(says(result.findings, "fluids.wall_changes_phase"));
   }
+}
+
+TEST_CASE("case_io: a list of lists where a block belongs is one mistake") {
+  const auto lines = refused::lines_of(with_tube_fluid("{table: {rows: [[1, [2]]]}}"));
+  REQUIRE_MESSAGE(lines.size() == 1, refused::shown(lines));
+  CHECK(lines[0].find("fluid.table.rows.0: a list stands here") != std::string::npos);
 }

@@ -114,9 +114,13 @@ void Reading::note_all(const Objections& objections) {
 }
 
 bool Reading::is_refused(std::string_view key) const {
-  for (; !key.empty(); key = parent_of(key))
-    if (refused_.contains(key)) return true;
-  return false;
+  // Every dot counts: in lists of lists indices stand side by side like decimals.
+  while (!refused_.contains(key)) {
+    const auto dot = key.rfind('.');
+    if (dot == std::string_view::npos) return false;
+    key = key.substr(0, dot);
+  }
+  return true;
 }
 
 void Reading::refuse(const std::string& key, const Position& at, std::string what, std::string expected,

@@ -80,7 +80,8 @@ std::string keys_of(const FieldTable& table, std::string_view block) {
   const auto fields = children(table, block);
   for (std::size_t i = 0; i < fields.size() && i < most_listed; ++i) {
     const auto name = last_segment(fields[i]->key);
-    names += fmt::format("{}{}", i == 0 ? "" : ", ", name == "?" ? "any name" : name);
+    names += fmt::format("{}{}", i == 0 ? "" : ", ",
+                         name == "?" ? fmt::format("any name ({})", fields[i]->help) : std::string(name));
   }
   if (fields.size() > most_listed) names += ", ...";
   return fmt::format("{} {}", block.empty() ? "one of" : "a block with", names);
