@@ -147,6 +147,19 @@ TEST_CASE("explore: a page of four cases fits a screen and begins with a sentenc
         4);
 }
 
+TEST_CASE("explore: the rows of a page of cases keep to a line each, whatever the names and units are") {
+  auto text = text_with("");
+  text.replace(text.find("name: naphtha"), 13, "name: naphtha of the second unit");
+  text.replace(text.find("  both: {"), 9, "  a_case_with_a_rather_long_name: {");
+  const auto document = case_io::read_document(text, "naphtha-cooler.yaml");
+  for (const auto system : {units::System::si, units::System::metric, units::System::us}) {
+    const auto lines = lines_of(report::text(explore::rate(document, system), {}));
+    CHECK(std::ranges::count_if(lines, [](const auto& line) { return line.ends_with("missed"); }) == 2);
+    CHECK(std::ranges::all_of(lines, [](const auto& line) { return line.size() <= 100; }));
+    CHECK(lines.size() <= 50);
+  }
+}
+
 TEST_CASE("cli: the status is 1 if any operating case misses, whichever governs") {
   std::ostringstream out, err;
   CHECK(cli::run({"rate", naphtha}, out, err) == cli::not_met);

@@ -159,8 +159,8 @@ constexpr Row rows[] = {
 
     {"operating_cases", block, optional, Kind::ratio, any, "",
      "what the same unit must do; each is rated, the worst governs"},
-    {"operating_cases.?", overlay, optional, Kind::ratio, any, "{streams.shell_side.flow: x1.15}",
-     "where a case differs: new values, or factors on those above"},
+    {"operating_cases.?", overlay, optional, Kind::ratio, any, "{}",
+     "where a case differs: {streams.shell_side.flow: x1.15}"},
     {"present", overlay, optional, Kind::ratio, any, "{since: 2026-01-31, exchanger.tubes.plugged: 4}",
      "the unit as it is, where it differs from as built"},
     {"accepted", list, optional, Kind::ratio, any,

@@ -26,7 +26,7 @@ bool is_list_item(std::string_view key) {
 
 /// A name where any will do.
 std::string_view name_of_any(std::string_view key) {
-  return key == "operating_cases.?" ? "more_oil" : "sheet";
+  return key == "operating_cases.?" ? "base" : "sheet";
 }
 
 /// The key of the case that an overlay's key means: all behind the case's name.

@@ -76,8 +76,8 @@ std::optional<Objected> refused(std::string_view key, bool is_plain_block) {
     return Objected{fmt::format("{} is the same in every operating case", first),
                     "a key of exchanger, streams, service or methods", "leave it out here"};
   if (is_plain_block && field->form == Form::block)
-    return Objected{"a block stands here; its keys are written as one dotted key each",
-                    fmt::format("such as {}.{}", key, "...: value"),
+    return Objected{"a block stands here; an overlay has one dotted key a value",
+                    "a dotted key such as streams.shell_side.flow",
                     "write the whole key with its dots before the colon"};
   return {};
 }

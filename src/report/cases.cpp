@@ -16,7 +16,7 @@ using service::Assessment;
 using service::Quantity;
 using units::Kind;
 
-constexpr std::size_t longest_case = 14;
+constexpr std::size_t longest_case = 10, longest_stream = 9;
 
 std::string spoken(std::string name) {
   std::ranges::replace(name, '_', ' ');
@@ -94,7 +94,7 @@ void add_outlet(const Result& result, const Figures& figures, std::vector<Column
     const auto* same = same_line(assessment, line);
     return same == nullptr ? std::string() : figures.number(same->limit, Kind::temperature);
   });
-  columns.push_back({clipped(stream_name(result.assessment.problem, side), 13), "outlet",
+  columns.push_back({clipped(stream_name(result.assessment.problem, side), longest_stream), "outlet",
                      figures.unit(Kind::temperature), limit, [=](const Assessment& assessment) {
                        return figures.number(service::actual(line, *assessment.rating.outcome),
                                              Kind::temperature);
