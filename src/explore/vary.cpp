@@ -49,6 +49,13 @@ std::string range_that_ends(const rating::Rating& rating) {
   return tube ? "tube_side.fluid_range" : "shell_side.fluid_range";
 }
 
+/// What is said against a fluid at an inlet is where its range ends.
+std::string stopper_of(const std::string& key) {
+  if (key.starts_with("streams.shell_side.fluid")) return "shell_side.fluid_range";
+  if (key.starts_with("streams.tube_side.fluid")) return "tube_side.fluid_range";
+  return key.empty() ? "case" : key;
+}
+
 }  // namespace
 
 std::optional<Dial> dial(const case_io::Document& document, std::string_view key) {
@@ -100,8 +107,8 @@ Point rated(const case_io::Document& document, const std::vector<std::pair<Dial,
     point.why = rating.no_result;
   } catch (const case_io::InputError& error) {
     const case_io::Mistake& first = error.mistakes().front();
-    point.stopper = first.key.empty() ? "case" : first.key;
-    point.why = fmt::format("{}: {}", point.stopper, first.what);
+    point.stopper = stopper_of(first.key);
+    point.why = fmt::format("{}: {}", first.key, first.what);
   }
   return point;
 }
