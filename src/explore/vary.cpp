@@ -45,8 +45,12 @@ bool did_not_settle(const rating::Rating& rating) {
 }
 
 std::string range_that_ends(const rating::Rating& rating) {
-  const bool tube = rating.no_result.find("tube-side") != std::string::npos;
-  return tube ? "tube_side.fluid_range" : "shell_side.fluid_range";
+  const auto names = [&rating](std::string_view side) {
+    return rating.no_result.find(side) != std::string::npos;
+  };
+  return names("tube-side")    ? "tube_side.fluid_range"
+         : names("shell-side") ? "shell_side.fluid_range"
+                               : "no_result";
 }
 
 /// What is said against a fluid at an inlet is where its range ends.
