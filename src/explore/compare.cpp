@@ -1,3 +1,5 @@
+#include <fmt/format.h>
+
 #include <map>
 
 #include "vary.hpp"
@@ -10,7 +12,8 @@ using Texts = std::map<std::string, std::string>;
 /// Inputs by key as they stand in the file, or as they were assumed.
 Texts texts_of(const case_io::Document& document, const case_io::Case& a_case) {
   Texts texts;
-  for (const auto& [key, leaf] : document.leaves) texts[key] = leaf.text;
+  for (const auto& [key, leaf] : document.leaves)
+    texts[key] = leaf.factor == 1.0 ? leaf.text : fmt::format("{} x{}", leaf.text, leaf.factor);
   for (const Input& input : a_case.inputs)
     if (input.origin != "typed") texts.try_emplace(input.key, input.as_typed + " (" + input.origin + ")");
   return texts;

@@ -22,6 +22,18 @@ const Finding* remark(const Reading& reading, const std::string& id) {
   return found == reading.remarks.end() ? nullptr : &*found;
 }
 
+void fill(std::string& text, std::string_view token, double value, units::Kind kind, units::System system) {
+  for (auto at = text.find(token); at != std::string::npos; at = text.find(token))
+    text.replace(at, token.size(), units::typed(value, kind, system, 4));
+}
+
+std::string sentence(const Finding& finding, units::System system) {
+  std::string text = finding.text;
+  fill(text, "{value}", finding.value, finding.kind, system);
+  fill(text, "{limit}", finding.limit, finding.kind, system);
+  return text;
+}
+
 /// Remarks that one reading has and the other has not.
 std::vector<std::string> remarks_that_differ(const Reading& low, const Reading& high) {
   std::vector<std::string> ids;
@@ -82,7 +94,7 @@ void Follower::compare(const Reading& low, const Reading& high, std::vector<repo
     const Reading& with = without(a) ? b : a;
     const Finding* finding = remark(with, id);
     found.push_back({.name = id,
-                     .what = finding ? finding->text : "",
+                     .what = finding ? sentence(*finding, case_.display) : "",
                      .value = with.value,
                      .fails_above = without(a),
                      .stops = false});

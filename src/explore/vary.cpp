@@ -45,8 +45,19 @@ bool did_not_settle(const rating::Rating& rating) {
 }
 
 std::string range_that_ends(const rating::Rating& rating) {
-  const bool tube = rating.no_result.find("tube-side") != std::string::npos;
-  return tube ? "tube_side.fluid_range" : "shell_side.fluid_range";
+  const auto names = [&rating](std::string_view side) {
+    return rating.no_result.find(side) != std::string::npos;
+  };
+  return names("tube-side")    ? "tube_side.fluid_range"
+         : names("shell-side") ? "shell_side.fluid_range"
+                               : "no_result";
+}
+
+/// What is said against a fluid at an inlet is where its range ends.
+std::string stopper_of(const std::string& key) {
+  if (key.starts_with("streams.shell_side.fluid")) return "shell_side.fluid_range";
+  if (key.starts_with("streams.tube_side.fluid")) return "tube_side.fluid_range";
+  return key.empty() ? "case" : key;
 }
 
 }  // namespace
@@ -100,8 +111,8 @@ Point rated(const case_io::Document& document, const std::vector<std::pair<Dial,
     point.why = rating.no_result;
   } catch (const case_io::InputError& error) {
     const case_io::Mistake& first = error.mistakes().front();
-    point.stopper = first.key.empty() ? "case" : first.key;
-    point.why = fmt::format("{}: {}", point.stopper, first.what);
+    point.stopper = stopper_of(first.key);
+    point.why = fmt::format("{}: {}", first.key, first.what);
   }
   return point;
 }

@@ -44,15 +44,10 @@ std::string answer(const Reach& reach) {
   return text + ".";
 }
 
-std::string first_clause(std::string text) {
-  text = text.substr(0, text.find(". "));
-  return text.substr(0, text.find(':'));
-}
-
+/// A remark's first clause: the rest says why it matters, which -v of a rating shows.
 std::string remark(const Limit& limit) {
-  std::string words = first_clause(limit.what);
-  if (words.find('{') != std::string::npos) words = limit.name;
-  return words;
+  const std::string clause = limit.what.substr(0, limit.what.find(". "));
+  return fmt::format("{} ({})", clause.substr(0, clause.find("; ")), limit.name);
 }
 
 std::vector<std::string> limit_row(const Reach& reach, const Limit& limit) {
@@ -67,7 +62,7 @@ std::vector<std::string> limit_row(const Reach& reach, const Limit& limit) {
 void limits(Page& page, const Reach& reach) {
   for (const bool up : {true, false}) {
     std::vector<std::vector<std::string>> rows = {
-        {up ? "GOING UP" : "GOING DOWN", up ? "of now" : "", "", "in the order met"}};
+        {up ? "GOING UP" : "GOING DOWN", "of now", "", "in the order met"}};
     for (const Limit& limit : reach.limits)
       if ((limit.value >= reach.pushed.own.value_or(0.0)) == up) {
         auto row = limit_row(reach, limit);
@@ -85,7 +80,7 @@ void limits(Page& page, const Reach& reach) {
 }
 
 std::string name_of_end(const std::optional<Limit>& limit) {
-  return limit ? limit->name : "nothing met";
+  return limit ? short_name(limit->name) : "nothing met";
 }
 
 void map(Page& page, const Reach& reach) {
@@ -94,8 +89,8 @@ void map(Page& page, const Reach& reach) {
   const auto display = reach.about.display;
   page.blank();
   page.section("MAP", fmt::format("where everything holds, for {} over {}", axis.key, reach.over->key));
-  std::vector<std::vector<std::string>> rows = {{fmt::format("  {}", plain_words(reach.over->key)), "least",
-                                                 "of now", "set by", "most", "of now", "stops at"}};
+  std::vector<std::vector<std::string>> rows = {
+      {"  over", "least", "of now", "set by", "most", "of now", "stops at"}};
   for (const ReachRow& row : reach.map) {
     std::vector<std::string> cells = {"  " + units::typed(row.over, reach.over->kind, display, 5)};
     if (!row.room) {
@@ -127,7 +122,7 @@ Json limit_json(const Reach& reach, const Limit& limit) {
           {"relieved_by", limit.relieved_by.empty() ? Json(nullptr) : Json(limit.relieved_by)},
           {"fails", limit.fails_above ? "above" : "below"},
           {"stops", limit.stops},
-          {"text", limit.stops ? limit.what : remark(limit)}};
+          {"text", limit.what}};
 }
 
 Json room_json(const Reach& reach, const std::optional<Room>& room) {

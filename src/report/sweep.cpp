@@ -1,7 +1,6 @@
 #include <fmt/core.h>
 
 #include "table_parts.hpp"
-#include "words.hpp"
 
 namespace dutygauge::report {
 namespace {
@@ -27,7 +26,7 @@ const std::vector<Column>& columns() {
 
 std::string service_word(const Running& running) {
   if (!running.met) return "not stated";
-  return *running.met ? "met" : "missed: " + plain_words(running.limited_by);
+  return *running.met ? "met" : "missed: " + short_name(running.limited_by);
 }
 
 using Rows = std::vector<std::vector<std::string>>;

@@ -4,6 +4,9 @@
 
 #include <cmath>
 #include <stdexcept>
+#include <utility>
+
+#include "words.hpp"
 
 namespace dutygauge::report {
 namespace {
@@ -31,6 +34,21 @@ void heading(Page& page, const CaseName& about) {
   const std::size_t width = page_width - right.size() - 2;
   page.line(fmt::format("{:<{}}  {}", clipped(ascii(left), width), width, right));
   page.line(std::string(page_width, '-'));
+}
+
+std::string short_name(std::string_view name) {
+  constexpr std::pair<std::string_view, std::string_view> names[] = {
+      {"service.duty", "duty"},
+      {"service.shell_side_outlet", "shell out"},
+      {"service.tube_side_outlet", "tube out"},
+      {"shell_side.allowable_pressure_drop", "shell drop"},
+      {"tube_side.allowable_pressure_drop", "tube drop"},
+      {"tube_side.velocity", "tube velocity"},
+      {"shell_side.fluid_range", "fluid range"},
+      {"tube_side.fluid_range", "fluid range"}};
+  for (const auto& [known, words] : names)
+    if (known == name) return std::string(words);
+  return clipped(plain_words(name), 24);
 }
 
 void table_closing(Page& page) {

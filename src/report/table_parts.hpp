@@ -11,6 +11,9 @@ namespace dutygauge::report {
 void heading(Page& page, const CaseName& about);
 void table_closing(Page& page);
 
+/// Of a limit or a line of the service, in two words: "shell outlet", "tube drop".
+std::string short_name(std::string_view name);
+
 /// What every object of a varied case begins with.
 nlohmann::ordered_json start_of(const CaseName& about);
 nlohmann::ordered_json running_json(const Running& running);
