@@ -25,20 +25,6 @@ std::string quoted(std::string_view text) {
   return fmt::format("'{}'", shown(text));
 }
 
-/// A gauge that names a least wall comes with a span of its own; nobody wrote a range.
-bool has_span_of_its_own(const Entry& entry) {
-  return entry.field->form == Form::wall && !entry.value.taken_for_granted.empty();
-}
-
-/// Text that means something in the format which this version does not compute with.
-std::optional<Misread> not_yet(const Field& field, const units::Value& value) {
-  if (value.low || value.high)
-    return misread(field, "ranges (a..b) are not supported yet", "give the value itself");
-  if (value.standard_deviation)
-    return misread(field, "deviations (+-) are not supported yet", "give the value itself");
-  return {};
-}
-
 std::string typed_bound(double bound, Kind kind) {
   if (kind == Kind::ratio) return fmt::format("{:.6g} %", 100.0 * bound);
   return units::typed(bound, kind, kind == Kind::length ? units::System::si : units::System::metric);
@@ -63,12 +49,11 @@ std::optional<Misread> out_of_bounds(const Entry& entry, double value) {
                                 : "check the value and its unit");
 }
 
-/// The checks that every number goes through.
+/// The checks that every number goes through: its middle and its ends.
 Outcome checked(Entry entry) {
-  const Field& field = *entry.field;
-  if (!has_span_of_its_own(entry))
-    if (auto mistake = not_yet(field, entry.value)) return *mistake;
-  if (auto mistake = out_of_bounds(entry, entry.value.si)) return *mistake;
+  for (const auto& end : {std::optional(entry.value.si), entry.value.low, entry.value.high})
+    if (end)
+      if (auto mistake = out_of_bounds(entry, *end)) return *mistake;
   return entry;
 }
 
@@ -125,8 +110,10 @@ Outcome read_angle(Entry entry) {
 }
 
 Outcome read_flow(Entry entry) {
-  if (entry.text == "from_duty")
-    return misread(*entry.field, "a flow found from a duty is not read yet by this version", "give the flow");
+  if (entry.text == "from_duty") {
+    entry.from_duty = true;
+    return entry;
+  }
   auto read = units::read_flow(entry.text);
   if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
   units::Flow& flow = std::get<units::Flow>(read);
@@ -142,7 +129,6 @@ Outcome read_pair(Entry entry) {
   if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
   units::Pair& pair = std::get<units::Pair>(read);
   for (const units::Value* value : {&pair.first, &pair.second}) {
-    if (auto mistake = not_yet(*entry.field, *value)) return *mistake;
     if (auto mistake = out_of_bounds(entry, value->si)) return *mistake;
   }
   entry.value = std::move(pair.first);
@@ -227,6 +213,14 @@ Outcome read_by_form(Entry entry) {
   return entry;
 }
 
+/// The document that would settle a value.
+std::string place_of(std::string_view key) {
+  if (key.starts_with("exchanger.baffles") || key.starts_with("exchanger.clearances"))
+    return "bundle drawing";
+  if (key.starts_with("exchanger.pass_lanes")) return "tube layout drawing";
+  return "datasheet";
+}
+
 }  // namespace
 
 void Reading::read_leaves() {
@@ -238,9 +232,10 @@ void Reading::read_leaves() {
 void Reading::read_leaf(const std::string& key, const Leaf& leaf, const Field& field) {
   if (leaf.text.empty() && !leaf.quoted)
     return note(key, "has no value", expected_of(field), "write the value, or leave the key out");
-  if (leaf.text == "unknown" && field.form != Form::text)
-    return note(key, "'unknown' is not supported yet", expected_of(field),
-                field.need == Need::required ? "give a value" : "leave the key out");
+  if (leaf.text == "unknown" && !leaf.quoted && (field.form != Form::text || field.need == Need::required)) {
+    unknown_.insert(key);
+    return;
+  }
   Outcome outcome = read_by_form({.field = &field, .text = leaf.text, .line = leaf.value_at.line});
   if (const auto* mistake = std::get_if<Misread>(&outcome))
     return note(key, mistake->what, mistake->expected, mistake->remedy);
@@ -259,7 +254,30 @@ void Reading::take(const std::string& key, Entry entry) {
     }
     assume(std::move(assumption));
   }
+  assume_spans(key, entry);
   entries_.emplace(key, std::move(entry));
+}
+
+/// What the text leaves open by a range or a deviation of its own.
+void Reading::assume_spans(const std::string& key, const Entry& entry) {
+  const units::Value& value = entry.value;
+  const bool has_range = value.low && value.high && value.taken_for_granted.empty();
+  if (!has_range && !value.standard_deviation) return;
+  Assumption assumption{
+      .key = key,
+      .value = value.si,
+      .kind = entry.kind(),
+      .why = fmt::format("the case gives the range {}: rated at its middle", shown(entry.text)),
+      .low = value.low,
+      .high = value.high,
+      .look_in = place_of(key)};
+  if (value.standard_deviation) {
+    assumption.why =
+        fmt::format("the case gives {}: low and high are one standard deviation away", shown(entry.text));
+    assumption.low = value.si - *value.standard_deviation;
+    assumption.high = value.si + *value.standard_deviation;
+  }
+  assume(std::move(assumption));
 }
 
 }  // namespace dutygauge::case_io
