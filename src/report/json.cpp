@@ -143,7 +143,7 @@ Json shell_side(const service::Assessment& assessment) {
           {"j_bypass", factor(film.j_bypass)},
           {"j_spacing", factor(film.j_spacing)},
           {"j_laminar", factor(film.j_laminar)},
-          {"crossflow_area_m2", crossflow_area(assessment.problem, film)},
+          {"crossflow_area_m2", drawn ? Json(crossflow_area(assessment.problem, film)) : Json(nullptr)},
           {"velocity_m_s", known(film.velocity)},
           {"wall_degC", celsius(outcome.local.walls.shell_wetted)},
           {"pressure_drop_Pa", drawn || by_law ? Json(drop.total()) : Json(nullptr)},
