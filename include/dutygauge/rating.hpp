@@ -132,8 +132,12 @@ struct Rating {
   Findings findings;
 };
 
-/// Rates by the solution the problem names, and reports the duty of the other beside it.
+/// Rates by the solution the problem names.
 Rating rate(const Problem& problem);
+
+/// Puts the duty of the other solution beside a rating; a finding where the two differ by
+/// more than 1 %, with why.
+Findings compare_solutions(const Problem& problem, Rating& rating);
 
 /// Rates by mean properties: one trial duty fixes the outlets, films and U are
 /// taken at the bulk means, and the arrangement closes the balance in one bracketed

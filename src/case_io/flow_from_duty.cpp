@@ -49,7 +49,9 @@ std::optional<Duty> duty_of_other(const Reading& reading, const std::string& oth
   if (!stream || is_from_duty(reading, other)) return {};
   const auto heat = heat_given_off(reading, other, stream->stream);
   if (!heat) return {};
-  return Duty{std::abs(*heat) * stream->stream.mass_flow, {}, {}, "the flow and the outlet of " + other};
+  // The outlet belongs to the flow of the sheet, not to what an overlay makes of it.
+  const double flow = stream->stream.mass_flow / reading.entries().at(key_of(other, "flow")).factor;
+  return Duty{std::abs(*heat) * flow, {}, {}, "the flow and the outlet of " + other};
 }
 
 /// Whether the outlet lies where this stream can go: towards the other's inlet, where its fluid is known.
@@ -89,10 +91,11 @@ void find_flow(Reading& reading, const std::string& name, std::optional<MadeStre
   rating::Stream& stream = made->stream;
   if (!is_reachable(reading, name, stream, other_made->stream)) return;
   const double heat = std::abs(*heat_given_off(reading, name, stream));
-  stream.mass_flow = duty->value / heat;
+  const double factor = reading.entries().at(key).factor;
+  stream.mass_flow = factor * duty->value / heat;
   reading.settle(key, stream.mass_flow);
   const auto flow_at = [&](const std::optional<double>& end) {
-    return end ? std::optional(*end / heat) : std::nullopt;
+    return end ? std::optional(factor * *end / heat) : std::nullopt;
   };
   reading.assume(
       {.key = key,

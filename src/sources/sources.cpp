@@ -47,6 +47,7 @@ constexpr Source table[] = {
     {"nist_sp811", "Thompson & Taylor, Guide for the Use of the SI, NIST SP 811 (2008), appendix B",
      "secondary"},
     {"nusselt_1911", "W. Nusselt, Z. VDI 55, 2021-2024 (1911)", "recalled"},
+    {"palen_1969", "J. W. Palen & J. Taborek, Chem. Eng. Prog. Symp. Ser. 65 (92), 53-63 (1969)", "recalled"},
     {"perry_2008", "Perry's Chemical Engineers' Handbook, 8th ed., McGraw-Hill (2008)", "secondary"},
     {"schindler_1960", "D. L. Schindler & H. T. Bates, Chem. Eng. Prog. Symp. Ser. 56 (30), 203-206 (1960)",
      "recalled"},
