@@ -34,6 +34,9 @@ rating::Methods methods_of(Reading& reading) {
   if (shell_side == "kern" && tema && tema->size() == 3 && (*tema)[1] == 'X')
     reading.note("methods.shell_side", "Kern's method has no crossflow shell (X)", "bell_delaware",
                  "write bell_delaware, or leave the key out");
+  if (shell_side == "kern" && reading.has("exchanger.tubes.fins"))
+    reading.note("methods.shell_side", "Kern's method has no finned tubes", "bell_delaware",
+                 "write bell_delaware, or leave the key out");
   const auto solution = word(reading.entries(), "methods.solution");
   return {.shell_side = shell_side == "kern" ? shellside::Method::kern : shellside::Method::bell_delaware,
           .solution = solution == "mean" ? rating::Solution::mean : rating::Solution::march};

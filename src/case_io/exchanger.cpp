@@ -218,6 +218,10 @@ std::optional<Description> known_by_area(Reading& reading) {
 std::optional<Description> exchanger_of(Reading& reading) {
   check_doubles(reading);
   if (reading.has("exchanger.area")) return known_by_area(reading);
+  if (reading.has("exchanger.wall_resistance"))
+    reading.note("exchanger.wall_resistance", "stands without exchanger.area, and the drawing gives the wall",
+                 "a wall resistance only beside an area",
+                 "leave it out, or give the area instead of dimensions");
   if (!reading.has("exchanger.tubes") || !reading.has("exchanger.shell")) return {};
   const auto missing = missing_keys(reading.entries());
   if (!missing.empty()) {

@@ -100,7 +100,7 @@ constexpr Row rows[] = {
     {"exchanger.tubes.nozzle_out", bore, usual, Kind::length, positive(5.0), "128 mm",
      "bore, or a pipe: NPS 5 sch 40"},
     {"exchanger.tubes.layers", list, optional, Kind::ratio, any,
-     "[{on: inside, thickness: 0.5 mm, conductivity: 0.4 W/m.K}]",
+     "[{\"on\": inside, thickness: 0.5 mm, conductivity: 0.4 W/m.K}]",
      "liners, coatings, the other metal of a duplex tube; from the tube metal on"},
     {"exchanger.tubes.layers.#", block, optional, Kind::ratio, any, "", "one layer"},
     {"exchanger.tubes.layers.#.on", word, required, Kind::ratio, any, "inside",
@@ -127,7 +127,8 @@ constexpr Row rows[] = {
     {"exchanger.baffles.style", word, optional, Kind::ratio, any, "single_segmental",
      "how the baffles are cut", "single_segmental"},
     {"exchanger.baffles.cut", quantity, required, Kind::ratio, positive(0.5), "25 %",
-     "window height over the shell's inside diameter"},
+     "window height over the shell's inside diameter; or 25 % of area: the window's share of the shell's "
+     "cross-section"},
     {"exchanger.baffles.spacing", quantity, usual, Kind::length, positive(20.0), "150 mm",
      "centre to centre; of spacing, count and end spacings what is left out follows"},
     {"exchanger.baffles.count", whole, optional, Kind::count, between(1, 10'000), "27",

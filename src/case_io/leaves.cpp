@@ -4,6 +4,7 @@
 #include <cmath>
 #include <variant>
 
+#include "cut.hpp"
 #include "reading.hpp"
 #include "wording.hpp"
 
@@ -100,11 +101,26 @@ Outcome from_value(Entry entry, units::Read<units::Value> read) {
   return checked(std::move(entry));
 }
 
+constexpr std::string_view of_area = " of area";
+
+Outcome read_cut_by_area(Entry entry) {
+  const std::string_view share = std::string_view(entry.text).substr(0, entry.text.size() - of_area.size());
+  auto read = units::read(share, Kind::ratio);
+  if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
+  entry.value = std::get<units::Value>(std::move(read));
+  if (auto mistake = out_of_bounds(entry, entry.value.si)) return *mistake;
+  for (auto* end : {&entry.value.low, &entry.value.high})
+    if (*end) **end = cut_of_area(**end);
+  const double cut = cut_of_area(entry.value.si);
+  if (auto& deviation = entry.value.standard_deviation)
+    *deviation *= (cut_of_area(entry.value.si + 1e-4) - cut) / 1e-4;
+  entry.value.si = cut;
+  return checked(std::move(entry));
+}
+
 Outcome read_quantity(Entry entry) {
   const Field& field = *entry.field;
-  if (field.kind == Kind::ratio && entry.text.find(" of ") != std::string::npos)
-    return misread(field, fmt::format("{}: a cut by area is not supported yet", quoted(entry.text)),
-                   "give the window's height in per cent of the shell's inside diameter");
+  if (field.key == "exchanger.baffles.cut" && entry.text.ends_with(of_area)) return read_cut_by_area(entry);
   return from_value(entry, units::read(entry.text, field.kind));
 }
 
