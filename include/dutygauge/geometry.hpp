@@ -109,6 +109,9 @@ struct ShellSide {
   bool tubes_in_window = true;                     ///< false: drawn without tubes in the windows
   double nozzle_in_area = 0, nozzle_out_area = 0;  ///< [m2]; 0: not given, no drop counted
 
+  /// Diameter that counts for free area and Re [m]: D_t, of fins that of the plain tube as wide to the flow.
+  double flow_diameter() const { return blocked_diameter.value_or(tube_outside_diameter); }
+
   double tube_centre_circle() const {  ///< D_ctl, through the outermost tube centres [m]
     return inside_diameter - bundle_to_shell - tube_outside_diameter;
   }

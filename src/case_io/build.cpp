@@ -1,5 +1,6 @@
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cmath>
 
 #include "parts.hpp"
@@ -32,6 +33,9 @@ rating::Methods methods_of(Reading& reading) {
   const auto tema = word(reading.entries(), "exchanger.tema");
   if (shell_side == "kern" && tema && tema->size() == 3 && (*tema)[1] == 'X')
     reading.note("methods.shell_side", "Kern's method has no crossflow shell (X)", "bell_delaware",
+                 "write bell_delaware, or leave the key out");
+  if (shell_side == "kern" && reading.has("exchanger.tubes.fins"))
+    reading.note("methods.shell_side", "Kern's method has no finned tubes", "bell_delaware",
                  "write bell_delaware, or leave the key out");
   const auto solution = word(reading.entries(), "methods.solution");
   return {.shell_side = shell_side == "kern" ? shellside::Method::kern : shellside::Method::bell_delaware,
@@ -73,6 +77,20 @@ void append(List& list, const List& more) {
   list.insert(list.end(), more.begin(), more.end());
 }
 
+/// What was looked for and not found is as if left out, and said.
+void show_unknown(const Reading& reading, Assumptions& assumed) {
+  for (const std::string& key : reading.unknown()) {
+    const auto found = std::ranges::find(assumed, key, &Assumption::key);
+    if (found != assumed.end())
+      found->why += "; looked for and not found";
+    else
+      assumed.push_back({.key = key,
+                         .word = "unknown",
+                         .why = "looked for and not found: rated as if left out",
+                         .look_in = "datasheet"});
+  }
+}
+
 std::string text_of(const Entries& entries, std::string_view key) {
   return std::string(word(entries, key).value_or(""));
 }
@@ -93,7 +111,9 @@ std::vector<Accepted> accepted_of(const Reading& reading) {
 Case build_plain(const Document& document) {
   Reading reading(document, case_fields());
   const auto description = exchanger_of(reading);
-  const auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
+  auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
+  find_flows(reading, shell_side, tube_side);
+  const GivenFilm films[] = {given_film_of(reading, "shell_side"), given_film_of(reading, "tube_side")};
   check_inlets(reading);
   const rating::Methods methods = methods_of(reading);
   bids::Claims claims = claims_of(reading);
@@ -114,6 +134,8 @@ Case build_plain(const Document& document) {
                     .shell_side = shell_side->stream,
                     .tube_side = tube_side->stream,
                     .methods = methods};
+  for (const bool is_shell_side : {true, false})
+    put_film(films[is_shell_side ? 0 : 1], is_shell_side, result.problem);
   result.service = service_of(entries, result.display);
   result.claims = std::move(claims);
   append(result.assumed, reading.assumed());
@@ -123,6 +145,8 @@ Case build_plain(const Document& document) {
     append(result.assumed, stream->assumed);
     append(result.findings, stream->findings);
   }
+  for (const GivenFilm& film : films) append(result.findings, film.findings);
+  show_unknown(reading, result.assumed);
   result.inputs = inputs_of(entries, result.assumed, result.display);
   return result;
 }

@@ -79,6 +79,24 @@ void describe_plugging(const Entries& entries, Description& d) {
   }
 }
 
+void describe_layers_and_fins(const Entries& entries, Description& d) {
+  for (std::size_t i = 0;; ++i) {
+    const std::string key = joined("exchanger.tubes.layers", std::to_string(i));
+    const auto on = word(entries, key + ".on");
+    if (!on) break;
+    d.layers.push_back({.inside = *on == "inside",
+                        .thickness = si(entries, key + ".thickness").value_or(0.0),
+                        .conductivity = si(entries, key + ".conductivity").value_or(0.0)});
+  }
+  const std::string fins = "exchanger.tubes.fins";
+  const auto value = [&](const char* name) { return si(entries, joined(fins, name)).value_or(0.0); };
+  if (si(entries, joined(fins, "per_length")))
+    d.fins = {.per_length = value("per_length"),
+              .tip_diameter = value("tip_diameter"),
+              .root_diameter = value("root_diameter"),
+              .thickness = value("thickness")};
+}
+
 Description description_of(const Entries& entries) {
   Description d;
   describe_letters_and_shells(entries, d);
@@ -96,6 +114,9 @@ Description description_of(const Entries& entries) {
     d.baffle_count = *compartments - 1;
   d.sealing_strip_pairs = whole(entries, "exchanger.sealing_strip_pairs");
   d.pass_lanes_along_flow = whole(entries, "exchanger.pass_lanes.along_flow");
+  d.area = si(entries, "exchanger.area");
+  d.wall_resistance = si(entries, "exchanger.wall_resistance");
+  describe_layers_and_fins(entries, d);
   return d;
 }
 
@@ -176,10 +197,31 @@ void check_doubles(Reading& reading) {
                  "one more than count", "correct one, or leave it out");
 }
 
+/// The unit without dimensions; what is given of them beside an area contradicts it.
+std::optional<Description> known_by_area(Reading& reading) {
+  for (const char* key :
+       {"exchanger.shell", "exchanger.baffles", "exchanger.clearances", "exchanger.tubes.count",
+        "exchanger.tubes.length", "exchanger.tubes.layers", "exchanger.tubes.fins"})
+    if (reading.has(key))
+      reading.note(key, "dimensions stand beside exchanger.area, which takes the place of all of them",
+                   "either dimensions or an area", "leave one of them out");
+  const Entries& entries = reading.entries();
+  for (const char* key : {"exchanger.area", "exchanger.tema", "exchanger.tubes.passes"})
+    if (!entries.contains(key)) return {};
+  Description description = description_of(entries);
+  reading.note_all(objections_of(description));
+  return description;
+}
+
 }  // namespace
 
 std::optional<Description> exchanger_of(Reading& reading) {
   check_doubles(reading);
+  if (reading.has("exchanger.area")) return known_by_area(reading);
+  if (reading.has("exchanger.wall_resistance"))
+    reading.note("exchanger.wall_resistance", "stands without exchanger.area, and the drawing gives the wall",
+                 "a wall resistance only beside an area",
+                 "leave it out, or give the area instead of dimensions");
   if (!reading.has("exchanger.tubes") || !reading.has("exchanger.shell")) return {};
   const auto missing = missing_keys(reading.entries());
   if (!missing.empty()) {

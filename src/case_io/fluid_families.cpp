@@ -37,10 +37,21 @@ std::optional<fluids::PropertyRow> row_of(const Entries& entries, const std::str
   return fluids::PropertyRow{*temperature, *density, *heat_capacity, *conductivity, *viscosity};
 }
 
+/// A unit known by its area needs no more of a fluid.
+bool is_heat_capacity_alone(const Source& source) {
+  const auto has = [&](const char* name) { return source.reading.has(source.joined_key(name)); };
+  return source.reading.has("exchanger.area") && !has("density") && !has("conductivity") && !has("viscosity");
+}
+
 std::optional<Made> constant(const Source& source) {
   const auto density = source.value("density"), heat_capacity = source.value("heat_capacity"),
              conductivity = source.value("conductivity"), viscosity = source.value("viscosity");
-  if (!density || !heat_capacity || !conductivity || !viscosity) return {};
+  if (!heat_capacity) return {};
+  if (is_heat_capacity_alone(source)) {
+    // Nothing reads the other three where both films are laws: they only have to be numbers.
+    return fluids::make_constant({1000.0, *heat_capacity, 0.6, 1e-3}, Phase::liquid);
+  }
+  if (!density || !conductivity || !viscosity) return {};
   return fluids::make_constant({*density, *heat_capacity, *conductivity, *viscosity}, phase_of(source));
 }
 

@@ -37,7 +37,7 @@ bool is_read(const Reading& reading, const std::string& block) {
   const std::string below = block + '.';
   const auto& leaves = reading.document().leaves;
   for (auto leaf = leaves.lower_bound(below); leaf != leaves.end() && leaf->first.starts_with(below); ++leaf)
-    if (!reading.entries().contains(leaf->first)) return false;
+    if (reading.has(leaf->first) && !reading.entries().contains(leaf->first)) return false;
   return true;
 }
 

@@ -4,6 +4,7 @@
 #include <cmath>
 #include <variant>
 
+#include "cut.hpp"
 #include "reading.hpp"
 #include "wording.hpp"
 
@@ -23,20 +24,6 @@ Misread misread(const Field& field, std::string what, std::string remedy) {
 
 std::string quoted(std::string_view text) {
   return fmt::format("'{}'", shown(text));
-}
-
-/// A gauge that names a least wall comes with a span of its own; nobody wrote a range.
-bool has_span_of_its_own(const Entry& entry) {
-  return entry.field->form == Form::wall && !entry.value.taken_for_granted.empty();
-}
-
-/// Text that means something in the format which this version does not compute with.
-std::optional<Misread> not_yet(const Field& field, const units::Value& value) {
-  if (value.low || value.high)
-    return misread(field, "ranges (a..b) are not supported yet", "give the value itself");
-  if (value.standard_deviation)
-    return misread(field, "deviations (+-) are not supported yet", "give the value itself");
-  return {};
 }
 
 std::string typed_bound(double bound, Kind kind) {
@@ -99,13 +86,12 @@ std::optional<Misread> factor_refused(const Field& field) {
   }
 }
 
-/// The checks that every number goes through.
+/// The checks that every number goes through: its middle and its ends.
 Outcome checked(Entry entry) {
   entry = times_factor(std::move(entry));
-  const Field& field = *entry.field;
-  if (!has_span_of_its_own(entry))
-    if (auto mistake = not_yet(field, entry.value)) return *mistake;
-  if (auto mistake = out_of_bounds(entry, entry.value.si)) return *mistake;
+  for (const auto& end : {std::optional(entry.value.si), entry.value.low, entry.value.high})
+    if (end)
+      if (auto mistake = out_of_bounds(entry, *end)) return *mistake;
   return entry;
 }
 
@@ -115,11 +101,26 @@ Outcome from_value(Entry entry, units::Read<units::Value> read) {
   return checked(std::move(entry));
 }
 
+constexpr std::string_view of_area = " of area";
+
+Outcome read_cut_by_area(Entry entry) {
+  const std::string_view share = std::string_view(entry.text).substr(0, entry.text.size() - of_area.size());
+  auto read = units::read(share, Kind::ratio);
+  if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
+  entry.value = std::get<units::Value>(std::move(read));
+  if (auto mistake = out_of_bounds(entry, entry.value.si)) return *mistake;
+  for (auto* end : {&entry.value.low, &entry.value.high})
+    if (*end) **end = cut_of_area(**end);
+  const double cut = cut_of_area(entry.value.si);
+  if (auto& deviation = entry.value.standard_deviation)
+    *deviation *= (cut_of_area(entry.value.si + 1e-4) - cut) / 1e-4;
+  entry.value.si = cut;
+  return checked(std::move(entry));
+}
+
 Outcome read_quantity(Entry entry) {
   const Field& field = *entry.field;
-  if (field.kind == Kind::ratio && entry.text.find(" of ") != std::string::npos)
-    return misread(field, fmt::format("{}: a cut by area is not supported yet", quoted(entry.text)),
-                   "give the window's height in per cent of the shell's inside diameter");
+  if (field.key == "exchanger.baffles.cut" && entry.text.ends_with(of_area)) return read_cut_by_area(entry);
   return from_value(entry, units::read(entry.text, field.kind));
 }
 
@@ -162,8 +163,11 @@ Outcome read_angle(Entry entry) {
 }
 
 Outcome read_flow(Entry entry) {
-  if (entry.text == "from_duty")
-    return misread(*entry.field, "a flow found from a duty is not read yet by this version", "give the flow");
+  if (entry.text == "from_duty") {
+    entry.from_duty = true;
+    if (entry.factor != 1.0) entry.text += fmt::format(" x{}", entry.factor);
+    return entry;
+  }
   auto read = units::read_flow(entry.text);
   if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
   units::Flow& flow = std::get<units::Flow>(read);
@@ -178,8 +182,6 @@ Outcome read_pair(Entry entry) {
   auto read = units::read_pair(entry.text, entry.field->kind);
   if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
   units::Pair& pair = std::get<units::Pair>(read);
-  for (const units::Value* value : {&pair.first, &pair.second})
-    if (auto mistake = not_yet(*entry.field, *value)) return *mistake;
   entry.value = std::move(pair.first);
   entry.second = pair.second.si;
   entry = times_factor(std::move(entry));
@@ -266,6 +268,14 @@ Outcome read_by_form(Entry entry) {
   return entry;
 }
 
+/// The document that would settle a value.
+std::string place_of(std::string_view key) {
+  if (key.starts_with("exchanger.baffles") || key.starts_with("exchanger.clearances"))
+    return "bundle drawing";
+  if (key.starts_with("exchanger.pass_lanes")) return "tube layout drawing";
+  return "datasheet";
+}
+
 std::optional<Misread> misplaced_factor(const Field& field, const Leaf& leaf) {
   if (leaf.factor != 1.0) return factor_refused(field);
   if (field.form == Form::text || !begins_like_a_factor(leaf.text)) return {};
@@ -284,9 +294,10 @@ void Reading::read_leaves() {
 void Reading::read_leaf(const std::string& key, const Leaf& leaf, const Field& field) {
   if (leaf.text.empty() && !leaf.quoted)
     return note(key, "has no value", expected_of(field), "write the value, or leave the key out");
-  if (leaf.text == "unknown" && field.form != Form::text)
-    return note(key, "'unknown' is not supported yet", expected_of(field),
-                field.need == Need::required ? "give a value" : "leave the key out");
+  if (leaf.text == "unknown" && !leaf.quoted && (field.form != Form::text || field.need == Need::required)) {
+    unknown_.insert(key);
+    return;
+  }
   if (const auto mistake = misplaced_factor(field, leaf))
     return note(key, mistake->what, mistake->expected, mistake->remedy);
   Outcome outcome =
@@ -308,7 +319,30 @@ void Reading::take(const std::string& key, Entry entry) {
     }
     assume(std::move(assumption));
   }
+  assume_spans(key, entry);
   entries_.emplace(key, std::move(entry));
+}
+
+/// What the text leaves open by a range or a deviation of its own.
+void Reading::assume_spans(const std::string& key, const Entry& entry) {
+  const units::Value& value = entry.value;
+  const bool has_range = value.low && value.high && value.taken_for_granted.empty();
+  if (!has_range && !value.standard_deviation) return;
+  Assumption assumption{
+      .key = key,
+      .value = value.si,
+      .kind = entry.kind(),
+      .why = fmt::format("the case gives the range {}: rated at its middle", shown(entry.text)),
+      .low = value.low,
+      .high = value.high,
+      .look_in = place_of(key)};
+  if (value.standard_deviation) {
+    assumption.why =
+        fmt::format("the case gives {}: low and high are one standard deviation away", shown(entry.text));
+    assumption.low = value.si - *value.standard_deviation;
+    assumption.high = value.si + *value.standard_deviation;
+  }
+  assume(std::move(assumption));
 }
 
 }  // namespace dutygauge::case_io

@@ -25,6 +25,23 @@ struct MadeStream {
   Findings findings;
 };
 
+/// Finds the flows written from_duty from the stated outlets and a duty.
+void find_flows(Reading& reading, std::optional<MadeStream>& shell_side,
+                std::optional<MadeStream>& tube_side);
+
+/// What a case says of one side's film and drop instead of leaving them to the methods.
+struct GivenFilm {
+  std::optional<rating::FilmLaw> film;  ///< as typed
+  bool on_other_surface = false;        ///< the value is on the surface of the other side
+  std::optional<rating::DropLaw> drop;
+  double multiplier = 1;
+  Findings findings;
+};
+GivenFilm given_film_of(Reading& reading, const std::string& side);
+
+/// Puts it into the problem; the exchanger must be there, for the ratio of the surfaces.
+void put_film(const GivenFilm& given, bool is_shell_side, rating::Problem& problem);
+
 /// The stream of "shell_side" or "tube_side"; empty where it cannot be made.
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 

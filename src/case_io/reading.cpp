@@ -4,6 +4,7 @@
 
 #include <cmath>
 
+#include "excuses.hpp"
 #include "suggestions.hpp"
 #include "wording.hpp"
 
@@ -70,7 +71,7 @@ Reading::Reading(const Document& document, const FieldTable& table)
 
 bool Reading::has(std::string_view key) const {
   const std::string name(key);
-  return document_.leaves.contains(name) || document_.blocks.contains(name);
+  return (document_.leaves.contains(name) && !unknown_.contains(name)) || document_.blocks.contains(name);
 }
 
 bool Reading::has_below(std::string_view key) const {
@@ -195,9 +196,12 @@ void Reading::require(const Field& field, const std::string& parent) {
   const std::string key = joined(parent, last_segment(field.key));
   if (has(key) || suggested_.contains(key) || is_at_fault(key)) return;
   const bool has_neighbour = !field.instead.empty() && has(joined(parent, field.instead));
-  if (has_neighbour) return;
+  if (has_neighbour || is_excused(*this, key)) return;
   const std::string help = field.help.empty() ? "" : fmt::format(" ({})", field.help);
   const std::string neighbour = field.instead.empty() ? "" : fmt::format(", or {}", field.instead);
+  if (unknown_.contains(key))
+    return note(key, "is 'unknown', and no practice could stand for it: this value is needed",
+                expected_in(field) + help, "find it" + neighbour + "; a range such as 10..14 serves too");
   note(key, "is missing", expected_in(field) + help, "add it" + neighbour);
 }
 

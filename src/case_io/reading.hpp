@@ -18,9 +18,10 @@ struct Entry {
   const Field* field = nullptr;
   std::string text{};  ///< as typed; the value of words and texts
   int line = 0;
-  double factor = 1.0;   ///< already in `value` and shown in `text`
-  units::Value value{};  ///< of numbers; the first of a pair; the amount of a flow
-  double second = 0;     ///< of a pair
+  double factor = 1.0;     ///< already in `value` and shown in `text`
+  units::Value value{};    ///< of numbers; the first of a pair; the amount of a flow
+  double second = 0;       ///< of a pair
+  bool from_duty = false;  ///< a flow that a duty and an outlet give
   units::FlowBasis basis = units::FlowBasis::mass;
   double at_temperature = 0;  ///< [K] where a volume flow is measured, or a property holds
   bool dynamic = false;       ///< a viscosity that may be either: dynamic, not kinematic
@@ -44,8 +45,14 @@ class Reading {
   const FieldTable& table() const { return table_; }
   const Entries& entries() const { return entries_; }
 
-  /// Whether the file has the key, as a value or a block.
+  /// Whether the file has the key, as a value or a block; what is written `unknown` it has not.
   bool has(std::string_view key) const;
+
+  /// Keys written `unknown`.
+  const std::set<std::string, std::less<>>& unknown() const { return unknown_; }
+
+  /// Puts the value found in the place of a word such as from_duty.
+  void settle(const std::string& key, double si) { entries_.at(key).value.si = si; }
 
   /// Whether anything stands in the block of that key.
   bool has_below(std::string_view key) const;
@@ -79,6 +86,7 @@ class Reading {
   void read_leaves();
   void read_leaf(const std::string& key, const Leaf& leaf, const Field& field);
   void take(const std::string& key, Entry entry);
+  void assume_spans(const std::string& key, const Entry& entry);
   void require_all();
   void require(const Field& field, const std::string& parent);
   Position position_of(std::string_view key) const;
@@ -89,6 +97,7 @@ class Reading {
   Assumptions assumed_;
   std::vector<Mistake> mistakes_;
   std::set<std::string, std::less<>> at_fault_;
+  std::set<std::string, std::less<>> unknown_;
   std::set<std::string, std::less<>> refused_;    ///< keys, with all below them
   std::set<std::string, std::less<>> suggested_;  ///< meant by a misspelt key
 };

@@ -1,6 +1,7 @@
 #include <nlohmann/json.hpp>
 
 #include "dutygauge/case_io.hpp"
+#include "excuses.hpp"
 #include "fields.hpp"
 #include "wording.hpp"
 
@@ -11,7 +12,7 @@ namespace {
 
 using nlohmann::ordered_json;
 
-constexpr const char* whole_pattern = "^ *[0-9]+ *$";
+constexpr const char* whole_pattern = "^ *[0-9]+ *([.][.] *[0-9]+ *)?$|^unknown$";
 
 ordered_json words_of(std::string_view words) {
   ordered_json list = ordered_json::array();
@@ -22,6 +23,7 @@ ordered_json words_of(std::string_view words) {
     if (const auto amount = units::number(word)) list.push_back(static_cast<int>(*amount));
     words = bar == std::string_view::npos ? std::string_view{} : words.substr(bar + 1);
   }
+  list.push_back("unknown");
   return {{"enum", list}};
 }
 
@@ -131,9 +133,40 @@ ordered_json object_of(const FieldTable& table, const std::string& block) {
       object["additionalProperties"] = schema_of(table, field);
     else
       object["properties"][std::string(last_segment(field.key))] = schema_of(table, field);
-    if (field.need == Need::required) add_required(field, object);
+    if (field.need == Need::required && excuse_of(field.key) == Excuse::none) add_required(field, object);
   }
   return object;
+}
+
+/// What is required where no excuse of this kind holds.
+ordered_json demands_of(const FieldTable& table, Excuse excuse) {
+  ordered_json root = ordered_json::object();
+  for (const Field& field : table.all()) {
+    if (field.need != Need::required || excuse_of(field.key) != excuse) continue;
+    ordered_json* place = &root;
+    std::string_view rest = parent_of(field.key);
+    while (!rest.empty()) {
+      const auto dot = rest.find('.');
+      place = &(*place)["properties"][std::string(rest.substr(0, dot))];
+      rest = dot == std::string_view::npos ? std::string_view{} : rest.substr(dot + 1);
+    }
+    add_required(field, *place);
+  }
+  return root;
+}
+
+/// An area takes the place of the dimensions; a scaled shell side that of the baffles.
+ordered_json excuses(const FieldTable& table) {
+  const ordered_json area = {{"properties", {{"exchanger", {{"required", {"area"}}}}}},
+                             {"required", {"exchanger"}}};
+  const ordered_json scaled = {
+      {"properties",
+       {{"methods",
+         {{"properties", {{"shell_side", {{"const", "scaled"}}}}}, {"required", {"shell_side"}}}}}},
+      {"required", {"methods"}}};
+  return ordered_json::array(
+      {{{"if", area}, {"else", demands_of(table, Excuse::area)}},
+       {{"if", {{"anyOf", {area, scaled}}}}, {"else", demands_of(table, Excuse::scaled)}}});
 }
 
 }  // namespace
@@ -143,6 +176,7 @@ std::string schema() {
                        {"title", "dutygauge case"},
                        {"description", "A shell-and-tube exchanger and the service it is to do"}};
   json.update(object_of(case_fields(), ""));
+  json["allOf"] = excuses(case_fields());
   return json.dump(2) + "\n";
 }
 

@@ -106,6 +106,13 @@ std::optional<double> mass_flow(Reading& reading, const std::string& side, const
                                 const Inlet& inlet) {
   const auto found = reading.entries().find(side + ".flow");
   if (found == reading.entries().end()) return {};
+  if (found->second.from_duty) return 0.0;  // found once both streams are known
+  if (reading.has("exchanger.area") && found->second.basis != FlowBasis::mass &&
+      !reading.has(side + ".fluid.constant.density") && reading.has(side + ".fluid.constant")) {
+    reading.note(side + ".flow", "a volume, and the fluid's density is not given",
+                 "a mass flow such as 80 kg/s", "give the mass flow, or the density");
+    return {};
+  }
   if (found->second.basis == FlowBasis::mass) return found->second.value.si;
   const auto density = flow_density(reading, side, fluid, inlet);
   return density ? std::optional(*density * found->second.value.si) : std::nullopt;
@@ -116,12 +123,19 @@ std::string name_of(const Reading& reading, const std::string& side, const Fluid
   return typed ? std::string(*typed) : fluid.name;
 }
 
+/// Where films and drops are laws and the fluid is a heat capacity, nothing depends on the pressure.
+std::optional<double> pressure_of(const Reading& reading, const std::string& side) {
+  const auto typed = si(reading.entries(), side + ".inlet.pressure");
+  const bool matters = !reading.has("exchanger.area") || !reading.has(side + ".fluid.constant") ||
+                       reading.has(side + ".inlet.pressure");
+  return matters ? typed : std::optional(standard_atmosphere);
+}
+
 }  // namespace
 
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& name) {
   const std::string side = "streams." + name;
-  const Inlet inlet{si(reading.entries(), side + ".inlet.temperature"),
-                    si(reading.entries(), side + ".inlet.pressure")};
+  const Inlet inlet{si(reading.entries(), side + ".inlet.temperature"), pressure_of(reading, side)};
   auto made = fluid_of(reading, side + ".fluid", inlet);
   if (!made) return {};
   if (inlet.temperature && inlet.pressure) check_datum(reading, side, inlet, *made);

@@ -118,6 +118,24 @@ void assume_lengths_and_flow(const Description& d, double thickness, Assumptions
                        .look_in = "piping drawing"});
 }
 
+/// Both bases of the area, since sheets state either.
+void report_fins(const Description& d, const Exchanger& exchanger, Findings& findings) {
+  if (!d.fins) return;
+  const double plain = exchanger.area * pi * d.tube_outside_diameter / outside_per_length(d);
+  findings.push_back(
+      {.id = "geometry.fins",
+       .text =
+           fmt::format("area, U and shell-side fouling are on the finned surface, {{value}}. On the plain "
+                       "outside diameter the same tubes have {{limit}}, and U is {:.2f} times as large: see "
+                       "which one a sheet means. The wall is counted from the fins' root",
+                       exchanger.area / plain),
+       .ground = Ground::geometry,
+       .value = exchanger.area,
+       .limit = plain,
+       .kind = units::Kind::area,
+       .source = "taborek_1983"});
+}
+
 void report_plugging(const Description& d, Findings& findings) {
   if (has_u_tubes(d) && d.plugged % 2 != 0)
     findings.push_back(
@@ -191,6 +209,7 @@ Checked<Exchanger> build(const Description& d) {
   set_metal(d, exchanger);
   set_wall_path(d, exchanger);
   report_plugging(d, out.findings);
+  report_fins(d, exchanger, out.findings);
   return out;
 }
 

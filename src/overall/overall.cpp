@@ -9,6 +9,11 @@ double wall_resistance(const Tube& tube, double conductivity) {
          (2.0 * conductivity);
 }
 
+double fin_efficiency(double film, double conductivity, double thickness, double reach) {
+  const double x = reach * std::sqrt(2.0 * film / (conductivity * thickness));
+  return x > 1e-6 ? std::tanh(x) / x : 1.0;
+}
+
 WallTemperatures wall_temperatures(const Resistances& resistances, double tube_bulk, double shell_bulk,
                                    double flux) {
   WallTemperatures walls;

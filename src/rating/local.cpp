@@ -30,6 +30,17 @@ overall::Resistances resistances_of(const Unit& unit, const Local& at, double me
   return r;
 }
 
+/// Heat of the finned surface over what it would be if the fins were as hot as their root.
+double fin_effectiveness(const Unit& unit, double film, double metal_temperature) {
+  const geometry::Exchanger& exchanger = unit.problem->exchanger;
+  if (!exchanger.finned) return 1.0;
+  const geometry::FinnedSurface& fins = *exchanger.finned;
+  const double through_deposit = 1.0 / (1.0 / film + unit.problem->shell_side.fouling_resistance);
+  const double efficiency = overall::fin_efficiency(
+      through_deposit, exchanger.wall_conductivity.at(metal_temperature), fins.thickness, fins.reach);
+  return 1.0 - fins.fin_share * (1.0 - efficiency);
+}
+
 /// Walls at the flux of the rule. With a fixed U the resistance still missing to
 /// it counts as deposit on the shell side, and the wetted walls stay between the streams.
 overall::WallTemperatures walls_of(const Local& at, const Bulk& bulk, const FluxRule& rule) {
@@ -61,6 +72,7 @@ double settle(const Unit& unit, const Bulk& bulk, const FluxRule& rule, int pass
     at.shell_wall = wall_state(problem.shell_side, unit.shell_wall_range, at.walls.shell_wetted);
     at.tube_film = tube_film(unit, at.tube_bulk, at.tube_wall);
     at.shell_film = shell_film(unit, at.shell_bulk, at.shell_wall);
+    at.fin_effectiveness = fin_effectiveness(unit, at.shell_film.coefficient, at.walls.metal_mean);
     at.resistances = resistances_of(unit, at, at.walls.metal_mean);
     const double u_before = at.u_dirty;
     at.u_dirty = 1.0 / at.resistances.sum();

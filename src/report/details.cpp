@@ -11,6 +11,23 @@ namespace {
 
 using units::Kind;
 
+/// What is left to say of a side without dimensions: film, wall and drop.
+void side_by_law(Page& page, const service::Assessment& assessment, Side side, const Figures& figures) {
+  const auto& outcome = *assessment.rating.outcome;
+  const bool shell = side == Side::shell;
+  const auto& stream = shell ? assessment.problem.shell_side : assessment.problem.tube_side;
+  const double film = shell ? outcome.local.shell_film.coefficient : outcome.local.tube_film.coefficient;
+  const double wall = shell ? outcome.local.walls.shell_wetted : outcome.local.walls.tube_wetted;
+  const double drop = shell ? outcome.shell_drop.total() : outcome.tube_drop.total();
+  page.section(
+      shell ? "SHELL SIDE" : "TUBE SIDE",
+      fmt::format("{}: film {} by its law; wetted wall {}; {}.", stream_name(assessment.problem, side),
+                  figures.with_unit(film, Kind::film_coefficient), figures.with_unit(wall, Kind::temperature),
+                  stream.drop_law ? "pressure drop " + figures.with_unit(drop, Kind::pressure_difference, 3) +
+                                        " by its law"
+                                  : "its pressure drop is not known"));
+}
+
 void tube_side(Page& page, const service::Assessment& assessment, const Figures& figures) {
   const auto& outcome = *assessment.rating.outcome;
   const auto& film = outcome.local.tube_film;
@@ -128,8 +145,15 @@ void details(Page& page, const Result& result) {
   const auto& assessment = result.assessment;
   if (assessment.rating.outcome) {
     page.blank();
-    tube_side(page, assessment, figures);
-    shell_side(page, assessment, figures);
+    const auto& exchanger = assessment.problem.exchanger;
+    if (exchanger.tubes_drawn)
+      tube_side(page, assessment, figures);
+    else
+      side_by_law(page, assessment, Side::tube, figures);
+    if (exchanger.shell_drawn)
+      shell_side(page, assessment, figures);
+    else
+      side_by_law(page, assessment, Side::shell, figures);
     in_between(page, assessment, figures);
     page.blank();
     words_used(page);

@@ -104,6 +104,11 @@ void surface_rows(const Result& result, std::vector<Row>& rows) {
                     std::string(limit_word(*margins.surface, "short"))});
 }
 
+bool is_drop_known(const rating::Problem& problem, Side side) {
+  return stream_of(problem, side).drop_law.has_value() ||
+         (side == Side::shell ? problem.exchanger.shell_drawn : problem.exchanger.tubes_drawn);
+}
+
 void drop_row(const Result& result, Side side, double drop, std::vector<Row>& rows) {
   const Figures figures(result.display);
   const auto& service = result.assessment.service;
@@ -116,7 +121,10 @@ void drop_row(const Result& result, Side side, double drop, std::vector<Row>& ro
              no_limit,
              "",
              ""};
-  if (allowable) {
+  if (!is_drop_known(result.assessment.problem, side)) {
+    row[1] = "not known";
+    row[2] = "";
+  } else if (allowable) {
     const double left = 1.0 - drop / *allowable;
     row[3] = at_least_or_most(false, figures.number(*allowable, kind, 3));
     row[4] = signed_percent(left);
@@ -132,8 +140,8 @@ void velocity_rows(const Result& result, const rating::Outcome& outcome, std::ve
     rows.push_back({"  " + stream_name(problem, side) + where, figures.number(velocity, Kind::velocity, 3),
                     figures.unit(Kind::velocity), no_limit, "", ""});
   };
-  add(Side::shell, " velocity, bundle", outcome.local.shell_film.velocity);
-  add(Side::tube, " velocity, tubes", outcome.local.tube_film.velocity);
+  if (problem.exchanger.shell_drawn) add(Side::shell, " velocity, bundle", outcome.local.shell_film.velocity);
+  if (problem.exchanger.tubes_drawn) add(Side::tube, " velocity, tubes", outcome.local.tube_film.velocity);
 }
 
 }  // namespace

@@ -92,16 +92,21 @@ Json tube_side(const service::Assessment& assessment) {
   const auto& outcome = *assessment.rating.outcome;
   const auto& film = outcome.local.tube_film;
   const auto& drop = outcome.tube_drop;
-  return {{"film_W_m2K", film.coefficient},
-          {"reynolds", film.reynolds},
-          {"prandtl", film.prandtl},
-          {"nusselt", film.nusselt},
-          {"regime", word(film.regime)},
-          {"velocity_m_s", film.velocity},
-          {"wall_degC", celsius(outcome.local.walls.tube_wetted)},
-          {"pressure_drop_Pa", drop.total()},
-          {"pressure_drop_parts_Pa",
-           {{"friction", drop.friction}, {"turns", drop.turns}, {"nozzles", drop.nozzles}}}};
+  const bool drawn = assessment.problem.exchanger.tubes_drawn;
+  const auto known = [drawn](auto value) { return drawn ? Json(value) : Json(nullptr); };
+  const bool by_law = assessment.problem.tube_side.drop_law.has_value();
+  const auto part = [&](double value) { return by_law || !drawn ? Json(nullptr) : Json(value); };
+  return {
+      {"film_W_m2K", film.coefficient},
+      {"reynolds", known(film.reynolds)},
+      {"prandtl", known(film.prandtl)},
+      {"nusselt", known(film.nusselt)},
+      {"regime", known(word(film.regime))},
+      {"velocity_m_s", known(film.velocity)},
+      {"wall_degC", celsius(outcome.local.walls.tube_wetted)},
+      {"pressure_drop_Pa", drawn || by_law ? Json(drop.total()) : Json(nullptr)},
+      {"pressure_drop_parts_Pa",
+       {{"friction", part(drop.friction)}, {"turns", part(drop.turns)}, {"nozzles", part(drop.nozzles)}}}};
 }
 
 Json second_opinion(const service::Assessment& assessment) {
@@ -124,26 +129,30 @@ Json shell_side(const service::Assessment& assessment) {
   const auto& outcome = *assessment.rating.outcome;
   const auto& film = outcome.local.shell_film;
   const auto& drop = outcome.shell_drop;
-  const bool factors = assessment.problem.methods.shell_side == shellside::Method::bell_delaware;
+  const bool drawn = assessment.problem.exchanger.shell_drawn;
+  const bool factors = drawn && assessment.problem.methods.shell_side == shellside::Method::bell_delaware;
+  const auto known = [drawn](double value) { return drawn ? Json(value) : Json(nullptr); };
+  const bool by_law = assessment.problem.shell_side.drop_law.has_value();
+  const auto part = [&](double value) { return by_law || !drawn ? Json(nullptr) : Json(value); };
   const auto factor = [factors](double value) { return factors ? Json(value) : Json(nullptr); };
   return {{"film_W_m2K", film.coefficient},
           {"ideal_film_W_m2K", factor(film.ideal)},
-          {"reynolds", film.reynolds},
-          {"prandtl", film.prandtl},
+          {"reynolds", known(film.reynolds)},
+          {"prandtl", known(film.prandtl)},
           {"j_cut", factor(film.j_cut)},
           {"j_leakage", factor(film.j_leakage)},
           {"j_bypass", factor(film.j_bypass)},
           {"j_spacing", factor(film.j_spacing)},
           {"j_laminar", factor(film.j_laminar)},
-          {"crossflow_area_m2", crossflow_area(assessment.problem, film)},
-          {"velocity_m_s", film.velocity},
+          {"crossflow_area_m2", drawn ? Json(crossflow_area(assessment.problem, film)) : Json(nullptr)},
+          {"velocity_m_s", known(film.velocity)},
           {"wall_degC", celsius(outcome.local.walls.shell_wetted)},
-          {"pressure_drop_Pa", drop.total()},
+          {"pressure_drop_Pa", drawn || by_law ? Json(drop.total()) : Json(nullptr)},
           {"pressure_drop_parts_Pa",
-           {{"crossflow", drop.crossflow},
-            {"window", drop.window},
-            {"ends", drop.ends},
-            {"nozzles", drop.nozzles}}},
+           {{"crossflow", part(drop.crossflow)},
+            {"window", part(drop.window)},
+            {"ends", part(drop.ends)},
+            {"nozzles", part(drop.nozzles)}}},
           {"second_opinion", second_opinion(assessment)}};
 }
 

@@ -70,7 +70,8 @@ Assessment assess(const rating::Problem& problem, const Service& service) {
     check_drops(problem, service, *outcome, result.findings);
     rating::Problem by_kern = problem;
     by_kern.methods.shell_side = shellside::Method::kern;
-    if (shellside::objections(problem.exchanger.shell_side, shellside::Method::kern).empty())
+    const bool is_computed = problem.exchanger.shell_drawn && !problem.shell_side.film_law;
+    if (is_computed && shellside::objections(problem.exchanger.shell_side, shellside::Method::kern).empty())
       result.second_opinion = rating::rate(by_kern).outcome;
   }
   result.verdict = verdict_of(service, problem, result.rating, result.margins);

@@ -25,6 +25,13 @@ double laminar_factor(const Bundle& bundle, double reynolds) {
   return std::clamp(factor, 0.4, 1.0);
 }
 
+/// Low fins lose their gaps to slow flow: 0.58 + 0.42 log10(Re/20)/log10(50), 1 from Re 1000 on.
+/// Source: Taborek, HEDH 3.3 (1983), as restated by Thome, Engineering Data Book III, ch. 3.
+double fin_factor(const Bundle& bundle, double reynolds) {
+  if (!bundle.drawing.blocked_diameter || reynolds >= 1000.0) return 1.0;
+  return 0.58 + 0.42 * std::log(std::max(reynolds, 20.0) / 20.0) / std::log(50.0);
+}
+
 void set_flow(const Bundle& bundle, double mass_flux, const fluids::State& bulk, Film& film) {
   film.prandtl = bulk.prandtl();
   film.mass_flux = mass_flux;
@@ -47,7 +54,7 @@ Film kern_film(const Bundle& bundle, double mass_flow, const fluids::State& bulk
 
 Film film(const Bundle& bundle, double mass_flow, const fluids::State& bulk, const fluids::State& wall) {
   if (bundle.method == Method::kern) return kern_film(bundle, mass_flow, bulk, wall);
-  const double diameter = bundle.drawing.tube_outside_diameter;
+  const double diameter = bundle.drawing.flow_diameter();
   Film film;
   set_flow(bundle, mass_flux(bundle, mass_flow), bulk, film);
   film.reynolds = diameter * film.mass_flux / bulk.viscosity;
@@ -62,7 +69,8 @@ Film film(const Bundle& bundle, double mass_flow, const fluids::State& bulk, con
 
   const double root = std::cbrt(film.prandtl);
   const double mass_flux_used = reynolds * bulk.viscosity / diameter;
-  film.ideal = colburn_factor(bundle.bank, reynolds) * bulk.heat_capacity * mass_flux_used / (root * root);
+  film.ideal = colburn_factor(bundle.bank, reynolds) * fin_factor(bundle, reynolds) * bulk.heat_capacity *
+               mass_flux_used / (root * root);
   film.coefficient = film.ideal * film.j_cut * film.j_leakage * film.j_bypass * film.j_spacing *
                      film.j_laminar * wall_factor(bulk, wall);
   return film;

@@ -35,7 +35,7 @@ Reduction reduction(char shell_type) {
 /// Free area at the centreline per length of tube [m].
 double area_per_length(const geometry::ShellSide& shell) {
   return shell.bundle_to_shell + shell.tube_centre_circle() / geometry::rows(shell).gap_divisor *
-                                     (shell.pitch - shell.tube_outside_diameter);
+                                     (shell.pitch - shell.flow_diameter());
 }
 
 /// exp{-C F_sbp [1 - (2 r_ss)^(1/3)]}, 1 from one strip pair per two rows on.
@@ -146,6 +146,9 @@ double nozzle_factor(const geometry::ShellSide& shell) {
 }  // namespace
 
 Objections objections(const geometry::ShellSide& drawing, Method method) {
+  if (method == Method::kern && drawing.blocked_diameter)
+    return {
+        {"methods.shell_side", "Kern's method has no finned tubes", "bell_delaware", "leave the method out"}};
   if (method != Method::kern || drawing.shell_type != 'X') return {};
   return {{"methods.shell_side", "Kern's method has no pure crossflow shell (X)", "bell_delaware",
            "leave the method out"}};

@@ -37,10 +37,11 @@ PressureDrop pressure_drop(const Bundle& bundle, double mass_flow, const fluids:
     drop.crossflow = kern_drop(bundle, flux, bulk, wall);
     return drop;
   }
-  const double reynolds = bundle.drawing.tube_outside_diameter * flux / bulk.viscosity;
+  const double reynolds = bundle.drawing.flow_diameter() * flux / bulk.viscosity;
   const double turbulent = turbulent_share(reynolds);
   const double bypass = numerics::log_blend(bundle.laminar.r_bypass, bundle.turbulent.r_bypass, turbulent);
-  const double per_row = 2.0 * bank_friction(bundle.bank, reynolds) * flux * flux / bulk.density *
+  const double fins = bundle.drawing.blocked_diameter ? 1.4 : 1.0;  // Taborek 1983, low fins
+  const double per_row = 2.0 * fins * bank_friction(bundle.bank, reynolds) * flux * flux / bulk.density *
                          wall_factor(bulk, wall) * bypass;
   drop.crossflow = per_row * bundle.crossflow_rows;
   if (bundle.end_rows == 0.0) return drop;  // pure crossflow: no windows, no ends

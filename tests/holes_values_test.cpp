@@ -1,0 +1,122 @@
+#include <doctest/doctest.h>
+
+#include <algorithm>
+#include <cmath>
+#include <numbers>
+
+#include "case_io_good.hpp"
+#include "case_io_refused.hpp"
+#include "dutygauge/service.hpp"
+#include "support.hpp"
+
+// Sheets with holes: ranges, values looked for in vain, flows found from a duty.
+
+using namespace dutygauge;
+using good::with;
+using support::relative;
+
+namespace {
+
+case_io::Case built(const std::string& text) {
+  return case_io::build(case_io::read_document(text, "x"));
+}
+
+const Assumption* assumed(const case_io::Case& a_case, std::string_view key) {
+  const auto found = std::ranges::find(a_case.assumed, key, &Assumption::key);
+  return found == a_case.assumed.end() ? nullptr : &*found;
+}
+
+}  // namespace
+
+TEST_CASE("case_io: a range is rated at its middle and listed with its ends") {
+  const auto a_case = built(with("spacing: 150 mm", "spacing: 140..160 mm"));
+  const auto plain = built(std::string(good::oil_cooler));
+  const Assumption* line = assumed(a_case, "exchanger.baffles.spacing");
+  REQUIRE(line != nullptr);
+  CHECK(relative(line->value, 0.150) < 1e-12);
+  CHECK(relative(line->low.value(), 0.140) < 1e-12);
+  CHECK(relative(line->high.value(), 0.160) < 1e-12);
+  CHECK(line->look_in == "bundle drawing");
+  CHECK(relative(a_case.problem.exchanger.shell_side.central_spacing,
+                 plain.problem.exchanger.shell_side.central_spacing) < 1e-12);
+}
+
+TEST_CASE("case_io: a deviation is listed with one standard deviation to both sides") {
+  const auto a_case = built(with("flow: 21.5 kg/s", "flow: 21.5 kg/s +- 2 %"));
+  const Assumption* line = assumed(a_case, "streams.shell_side.flow");
+  REQUIRE(line != nullptr);
+  CHECK(relative(line->low.value(), 21.07) < 1e-12);
+  CHECK(relative(line->high.value(), 21.93) < 1e-12);
+  CHECK(line->why.find("one standard deviation") != std::string::npos);
+}
+
+TEST_CASE("case_io: a least wall is listed with its span") {
+  const auto a_case = built(with("wall: 2.11 mm", "wall: 14 BWG min"));
+  const Assumption* line = assumed(a_case, "exchanger.tubes.wall");
+  REQUIRE(line != nullptr);
+  // 14 BWG is 2.108 mm; minimum-wall tubes average about 10 % more (common practice, from memory).
+  CHECK(relative(line->value, 1.10 * 2.108e-3) < 1e-3);
+  CHECK(relative(line->low.value(), 2.108e-3) < 1e-3);
+  CHECK(relative(line->high.value(), 1.2 * 2.108e-3) < 1e-3);
+}
+
+TEST_CASE("case_io: what is unknown is rated as if left out, and said to be looked for") {
+  const auto unknown = built(with("tube_to_baffle: 0.8 mm", "tube_to_baffle: unknown"));
+  const auto left_out = built(with("tube_to_baffle: 0.8 mm, ", ""));
+  CHECK(unknown.problem.exchanger.shell_side.tube_to_baffle ==
+        left_out.problem.exchanger.shell_side.tube_to_baffle);
+  const Assumption* line = assumed(unknown, "exchanger.clearances.tube_to_baffle");
+  REQUIRE(line != nullptr);
+  CHECK(line->why.find("looked for and not found") != std::string::npos);
+  const auto limit = built(with("allowable_pressure_drop: 70 kPa", "allowable_pressure_drop: unknown"));
+  CHECK(!limit.service.tube_side_allowable_drop);
+  REQUIRE(assumed(limit, "streams.tube_side.allowable_pressure_drop") != nullptr);
+  CHECK(assumed(limit, "streams.tube_side.allowable_pressure_drop")->word == "unknown");
+}
+
+TEST_CASE("case_io: a flow from a duty is the other side's heat over its own enthalpy change") {
+  auto text = with("flow: 62 m3/h at inlet", "flow: from_duty\n    outlet: {temperature: 36 degC}");
+  text = with("    flow: 21.5 kg/s\n", "    flow: 21.5 kg/s\n    outlet: {temperature: 56 degC}\n", text);
+  const auto a_case = built(text);
+  const auto& oil = a_case.problem.shell_side;
+  const auto& water = a_case.problem.tube_side;
+  const double duty = 21.5 * 2050.0 * 12.0;  // constant heat capacity of the oil
+  // Water between 29 and 36 degC: 4.179 kJ/kg.K within 0.03 % (IAPWS-IF97 prints 4.1788 at 30 degC).
+  CHECK(relative(water.mass_flow, duty / (4179.0 * 7.0)) < 5e-4);
+  CHECK(oil.mass_flow == 21.5);
+  const Assumption* line = assumed(a_case, "streams.tube_side.flow");
+  REQUIRE(line != nullptr);
+  CHECK(line->why.find("derived") != std::string::npos);
+}
+
+TEST_CASE("case_io: a flow from a stated duty follows the duty and an overlay's factor") {
+  const auto text =
+      with("21.5 kg/s", "from_duty\n    outlet: {temperature: 58 degC}") + "claims: {duty: 410 kW}\n";
+  const double flow = 410e3 / (2050.0 * 10.0);
+  CHECK(relative(built(text).problem.shell_side.mass_flow, flow) < 1e-12);
+  const auto document = case_io::read_document(text, "x");
+  const auto more = case_io::build(case_io::with_factor(document, "streams.shell_side.flow", 1.15));
+  CHECK(relative(more.problem.shell_side.mass_flow, 1.15 * flow) < 1e-12);
+}
+
+TEST_CASE("case_io: a flow from a duty that cannot be is refused with the way out") {
+  refused::check({
+      {"no outlet", with("21.5 kg/s", "from_duty"), {"x:32:11:", "needs the outlet temperature"}},
+      {"no duty",
+       with("21.5 kg/s", "from_duty\n    outlet: {temperature: 58 degC}"),
+       {"x:32:11:", "finds no duty"}},
+      {"the wrong way",
+       with("21.5 kg/s", "from_duty\n    outlet: {temperature: 70 degC}") + "claims: {duty: 410 kW}\n",
+       {"streams.shell_side.outlet.temperature", "less than its inlet temperature"}},
+  });
+}
+
+TEST_CASE("case_io: a cut by area is the height of the window with that share of the cross-section") {
+  const auto cut = built(with("25 %", "25 % of area")).problem.exchanger.shell_side.baffle_cut;
+  const double angle = 2.0 * std::acos(1.0 - 2.0 * cut);
+  CHECK(relative((angle - std::sin(angle)) / (2.0 * std::numbers::pi), 0.25) < 1e-9);
+  // A segment a fifth of the diameter high is 14.24 % of the circle (tables of circular segments, from
+  // memory).
+  CHECK(std::abs(built(with("25 %", "14.24 % of area")).problem.exchanger.shell_side.baffle_cut - 0.2) <
+        1e-4);
+}
