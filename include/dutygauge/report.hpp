@@ -4,6 +4,7 @@
 
 #include "dutygauge/findings.hpp"
 #include "dutygauge/service.hpp"
+#include "dutygauge/uncertainty.hpp"
 
 /// Results to text and JSON. Knows no file format of the input; no physics.
 namespace dutygauge::report {
@@ -14,6 +15,7 @@ struct Result {
   std::string title, tag, input_sha256;
   units::System display = units::System::metric;
   service::Assessment assessment;
+  std::optional<uncertainty::Result> spread{};  ///< of the assessment
   Inputs inputs;
   Assumptions assumed;
   Findings findings;  ///< all, the gravest first

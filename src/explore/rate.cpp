@@ -2,6 +2,7 @@
 #include <filesystem>
 
 #include "dutygauge/explore.hpp"
+#include "how_sure.hpp"
 
 namespace dutygauge::explore {
 
@@ -17,6 +18,9 @@ report::Result rate(const case_io::Case& a_case) {
                         .inputs = a_case.inputs,
                         .assumed = a_case.assumed,
                         .findings = a_case.findings};
+  const service::Assessment* const assessed[] = {&result.assessment};
+  result.spread = how_sure(assessed).front();
+  qualify(result.assessment, result.spread);
   const auto& judged = result.assessment.findings;
   result.findings.insert(result.findings.end(), judged.begin(), judged.end());
   std::ranges::stable_sort(result.findings, std::ranges::greater{}, &Finding::severity);

@@ -8,6 +8,7 @@
 
 #include "dutygauge/report.hpp"
 #include "dutygauge/sources.hpp"
+#include "spread_json.hpp"
 #include "words.hpp"
 
 namespace dutygauge::report {
@@ -44,13 +45,17 @@ int shell_streams(char shell_type) {
   }
 }
 
-Json verdict(const service::Assessment& assessment) {
+using MaybeSpread = std::optional<uncertainty::Result>;
+
+Json verdict(const service::Assessment& assessment, const MaybeSpread& spread) {
   const auto& said = assessment.verdict;
-  return {{"service_met", said.met ? Json(*said.met) : Json(nullptr)},
-          {"grade", nullptr},
-          {"probability", nullptr},
-          {"limited_by", said.limited_by},
-          {"text", assessment.rating.outcome ? said.text : assessment.rating.no_result}};
+  const auto probability = spread ? spread->probability : std::nullopt;
+  return {
+      {"service_met", said.met ? Json(*said.met) : Json(nullptr)},
+      {"grade", probability ? Json(uncertainty::word(uncertainty::grade_of(*probability))) : Json(nullptr)},
+      {"probability", or_null(probability)},
+      {"limited_by", said.limited_by},
+      {"text", assessment.rating.outcome ? said.text : assessment.rating.no_result}};
 }
 
 Json thermal(const service::Assessment& assessment) {
@@ -155,12 +160,10 @@ Json margins(const service::Margins& margins) {
 }
 
 // What each state and each operating case says.
-Json state(const service::Assessment& assessment) {
-  return {{"verdict", verdict(assessment)},
-          {"thermal", thermal(assessment)},
-          {"tube_side", tube_side(assessment)},
-          {"shell_side", shell_side(assessment)},
-          {"margins", margins(assessment.margins)}};
+Json state(const service::Assessment& assessment, const MaybeSpread& spread) {
+  return {{"verdict", verdict(assessment, spread)}, {"thermal", thermal(assessment)},
+          {"tube_side", tube_side(assessment)},     {"shell_side", shell_side(assessment)},
+          {"margins", margins(assessment.margins)}, {"spread", spread_json(spread)}};
 }
 
 Json solutions(const service::Assessment& assessment) {
@@ -261,18 +264,19 @@ std::string one_line(const Json& json) {
 
 std::string json(const Result& result) {
   const auto& assessment = result.assessment;
-  const Json this_state = state(assessment);
+  const Json this_state = state(assessment, result.spread);
   return one_line({{"dutygauge", DUTYGAUGE_VERSION},
                    {"schema_version", schema_version},
                    {"input_sha256", result.input_sha256},
                    {"case", {{"file", result.file}, {"title", result.title}, {"tag", result.tag}}},
                    {"operating_case", "base"},
-                   {"verdict", verdict(assessment)},
+                   {"verdict", verdict(assessment, result.spread)},
                    {"thermal", thermal(assessment)},
                    {"resistances_m2K_W", resistances(assessment)},
                    {"tube_side", tube_side(assessment)},
                    {"shell_side", shell_side(assessment)},
                    {"margins", margins(assessment.margins)},
+                   {"spread", spread_json(result.spread)},
                    {"solutions", solutions(assessment)},
                    {"states", {{"design_fouling", this_state}}},
                    {"operating_cases", {{"base", this_state}}},
