@@ -6,6 +6,7 @@
 #include <string_view>
 #include <vector>
 
+#include "dutygauge/bids.hpp"
 #include "dutygauge/findings.hpp"
 #include "dutygauge/rating.hpp"
 #include "dutygauge/service.hpp"
@@ -44,6 +45,7 @@ struct Leaf {
   std::string text;
   bool quoted = false;
   Position key_at, value_at;
+  double factor = 1.0;  ///< the value read from `text` is multiplied by it
 };
 
 /// One map or list of a case file; stands where its key stands.
@@ -62,15 +64,24 @@ struct Document {
   std::vector<Mistake> mistakes;        ///< that did not stop the reading (doubled keys)
 };
 
+/// A finding that somebody has looked at and decided on.
+struct Accepted {
+  std::string id, because, by;
+};
+
 /// A case ready to be rated.
 struct Case {
   std::string file, title, tag, sha256;
+  std::string operating_case = "base";  ///< its name in the file
+  std::string present_since;            ///< date since when the unit is as rated; empty where as built
   units::System display = units::System::metric;
   rating::Problem problem;
   service::Service service;
+  bids::Claims claims;  ///< of the sheet, as built
   Inputs inputs;        ///< as typed, and assumed, in SI
   Assumptions assumed;  ///< made while reading and deriving
   Findings findings;    ///< the same
+  std::vector<Accepted> accepted;
 };
 
 /// Reads YAML text strictly: one document, no anchors, aliases, tags, merges;
@@ -82,8 +93,30 @@ Document read_document(std::string_view text, std::string file);
 /// Throws InputError; the text says what the system said.
 Document read_file(const std::string& path);
 
-/// Checks every leaf against the field table and builds the case.
-/// Throws InputError with all mistakes at once.
+/// Names of the operating cases in file order; "base" alone where the file states none.
+std::vector<std::string> operating_cases(const Document& document);
+
+/// The document of one operating case as the unit is: `present`, then the case's own
+/// overlay laid on it, as an ordinary document without either block. Messages point to
+/// the overlay's line; what is wrong with the overlays themselves is in its `mistakes`.
+/// Throws std::invalid_argument where the file has no such case.
+Document overlaid(const Document& document, const std::string& operating_case);
+
+/// The same as built: without `present`.
+Document as_built(const Document& document, const std::string& operating_case);
+
+/// The document with another text at a key ("x1.15": times what stands there).
+/// Throws InputError where the format has no such key.
+Document with_value(const Document& document, const std::string& key, const std::string& text);
+
+/// The document with the value of a key multiplied. Throws InputError where it has none.
+Document with_factor(const Document& document, const std::string& key, double factor);
+
+/// Checks every leaf against the field table and builds every operating case as the
+/// unit is, in file order. Throws InputError with all mistakes of all cases at once.
+std::vector<Case> build_all(const Document& document);
+
+/// The first of them, for a document of one case.
 Case build(const Document& document);
 
 /// Reads a fluid alone: `spec` is what stands under `fluid:` in a case, in YAML flow

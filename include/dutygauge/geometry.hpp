@@ -13,6 +13,20 @@ enum class FlowDirection { counter, parallel };
 /// How the first tube pass runs beside the shell stream.
 enum class FirstTubePass { against_shell_flow, with_shell_flow };
 
+/// A layer on the tube metal: a liner or coating, or the other metal of a duplex tube.
+struct Layer {
+  bool inside = true;       ///< in the bore, which it narrows; else on the tube's outside diameter
+  double thickness = 0;     ///< [m]
+  double conductivity = 0;  ///< [W/m.K]
+};
+
+/// Low fins rolled from the tube wall.
+struct Fins {
+  double per_length = 0;                       ///< fins of one metre [1/m]
+  double tip_diameter = 0, root_diameter = 0;  ///< [m]
+  double thickness = 0;                        ///< mean of one fin [m]
+};
+
 /// The exchanger as the case gives it; one shell where not said otherwise. SI.
 struct Description {
   char front_head = 'B', shell_type = 'E', rear_head = 'M';  ///< TEMA letters
@@ -37,8 +51,11 @@ struct Description {
   std::optional<double> tube_conductivity;                ///< [W/m.K]
   std::optional<double> tube_roughness;                   ///< [m]
   std::optional<double> tube_nozzle_in, tube_nozzle_out;  ///< bores [m]
+  std::vector<Layer> layers;                              ///< each side outwards from the metal
+  std::optional<Fins> fins;
 
-  double baffle_cut = 0.25;  ///< window height / shell inside diameter [-]
+  bool baffles_known = true;  ///< false: the shell side is not drawn, its film comes from elsewhere
+  double baffle_cut = 0.25;   ///< window height / shell inside diameter [-]
   std::optional<double> baffle_spacing, inlet_spacing, outlet_spacing;  ///< [m]
   std::optional<int> baffle_count;                                      ///< along the whole shell
   std::optional<double> baffle_thickness;                               ///< [m]
@@ -47,6 +64,10 @@ struct Description {
   std::optional<int> sealing_strip_pairs;
   std::optional<int> pass_lanes_along_flow;
   std::optional<double> pass_lane_width;  ///< [m]
+
+  /// Known by these alone: the effective outside area of the whole unit [m2] and the wall's
+  /// resistance on it [m2.K/W]. Of the rest only letters, shells, passes and flow count then.
+  std::optional<double> area, wall_resistance;
 };
 
 /// Conductivity of the tube metal, linear between rows [K, W/m.K]; held at the ends.
@@ -84,6 +105,7 @@ struct ShellSide {
   double pass_lane_half_width = 0;  ///< L_pl, of all lanes along the flow together [m]
   double effective_length = 0;      ///< [m] tube length exposed to the shell
   bool impingement_plate = false;
+  std::optional<double> blocked_diameter{};        ///< finned: of the plain tube as wide to the flow [m]
   bool tubes_in_window = true;                     ///< false: drawn without tubes in the windows
   double nozzle_in_area = 0, nozzle_out_area = 0;  ///< [m2]; 0: not given, no drop counted
 
@@ -130,19 +152,33 @@ struct Window {
 };
 Window window(const ShellSide& shell);
 
+/// Fins as their efficiency needs them. Areas are those of one tube.
+struct FinnedSurface {
+  double fin_share = 0;    ///< surface of the fins / whole outside surface [-]
+  double root_radius = 0;  ///< [m]
+  double reach = 0;        ///< r_1 (r_2/r_1 - 1)(1 + 0.35 ln(r_2/r_1)), half a fin added to r_2 [m]
+  double thickness = 0;    ///< [m]
+};
+
 /// The exchanger ready to be rated.
 struct Exchanger {
   Description as_described;
   TubeSide tube_side;
   ShellSide shell_side;
   Conductivity wall_conductivity;
+  bool tubes_drawn = true;        ///< false: `tube_side` holds no dimensions, its film is a law
+  bool shell_drawn = true;        ///< false: the same of `shell_side`
+  double wall_length = 0;         ///< resistance of the tube metal on the outside area x conductivity [m]
+  double layer_resistance = 0;    ///< of layers, or of a wall known so, on the outside area [m2.K/W]
+  double outside_per_inside = 1;  ///< outside area / area of the bore [-]
+  std::optional<FinnedSurface> finned;
   int shells_in_series = 1, shells_in_parallel = 1;
   FlowDirection flow_direction = FlowDirection::counter;
   FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
   double effective_length = 0;     ///< L_eff [m]
   double tubesheet_thickness = 0;  ///< [m]
   int tubes_open = 0;              ///< holes open to flow, one shell
-  double area_per_shell = 0;       ///< effective outside area [m2]
+  double area_per_shell = 0;       ///< effective outside area, fins and all [m2]
   double area = 0;                 ///< of all shells [m2]
 };
 

@@ -14,14 +14,41 @@
 /// The solvers: an exchanger and two streams to outlets, duty, films, drops.
 namespace dutygauge::rating {
 
+/// A film that is known instead of computed:
+///
+///     h = value (m/at_flow)^flow_exponent (1 + temperature_slope (T - at_temperature))
+///
+/// and, with `at_state`, times (k/k0)^(2/3) (cp/cp0)^(1/3) (mu0/mu)^(4/15), which is what
+/// Re^0.6 Pr^(1/3) k leaves beside the flow. Without exponent and slope: a fixed film.
+struct FilmLaw {
+  double value = 0;                                  ///< on the stream's own surface [W/m2.K]
+  double at_flow = 1, flow_exponent = 0;             ///< [kg/s] of the whole unit, [-]
+  double temperature_slope = 0, at_temperature = 0;  ///< [1/K], [K]
+  std::optional<fluids::State> at_state{};           ///< where `value` holds
+
+  double at(double mass_flow, const fluids::State& bulk) const;
+};
+
+/// A pressure drop of the whole unit that is known: value (m/at_flow)^flow_exponent [Pa],
+/// and with `at_state` times (rho0/rho) (mu/mu0)^0.2.
+struct DropLaw {
+  double value = 0;                       ///< [Pa]
+  double at_flow = 1, flow_exponent = 0;  ///< [kg/s], [-]
+  std::optional<fluids::State> at_state{};
+
+  double at(double mass_flow, const fluids::State& bulk) const;
+};
+
 /// One stream as it enters the whole unit.
 struct Stream {
   std::string name;
   fluids::Fluid fluid;
-  double mass_flow = 0;           ///< of the whole unit [kg/s]
-  double inlet_temperature = 0;   ///< [K]
-  double inlet_pressure = 0;      ///< [Pa] absolute
-  double fouling_resistance = 0;  ///< on the surface it sits on [m2.K/W]
+  double mass_flow = 0;               ///< of the whole unit [kg/s]
+  double inlet_temperature = 0;       ///< [K]
+  double inlet_pressure = 0;          ///< [Pa] absolute
+  double fouling_resistance = 0;      ///< on the surface it sits on [m2.K/W]
+  std::optional<FilmLaw> film_law{};  ///< in place of the correlation
+  std::optional<DropLaw> drop_law{};  ///< the same
 };
 
 /// How the outlets are found.
@@ -56,6 +83,7 @@ struct Local {
   shellside::Film shell_film;
   overall::Resistances resistances;
   overall::WallTemperatures walls;
+  double fin_effectiveness = 1;     ///< heat of the finned surface / with fins as hot as their root
   double u_dirty = 0, u_clean = 0;  ///< [W/m2.K]
   bool converged = false;
 };
@@ -104,8 +132,12 @@ struct Rating {
   Findings findings;
 };
 
-/// Rates by the solution the problem names, and reports the duty of the other beside it.
+/// Rates by the solution the problem names.
 Rating rate(const Problem& problem);
+
+/// Puts the duty of the other solution beside a rating; a finding where the two differ by
+/// more than 1 %, with why.
+Findings compare_solutions(const Problem& problem, Rating& rating);
 
 /// Rates by mean properties: one trial duty fixes the outlets, films and U are
 /// taken at the bulk means, and the arrangement closes the balance in one bracketed

@@ -1,7 +1,9 @@
 #pragma once
 #include <string>
+#include <string_view>
 #include <vector>
 
+#include "dutygauge/bids.hpp"
 #include "dutygauge/findings.hpp"
 #include "dutygauge/service.hpp"
 #include "dutygauge/uncertainty.hpp"
@@ -16,6 +18,7 @@ struct Result {
   units::System display = units::System::metric;
   service::Assessment assessment;
   std::optional<uncertainty::Result> spread{};  ///< of the assessment
+  std::vector<bids::ClaimVerdict> claims{};  ///< of the sheet, as built
   Inputs inputs;
   Assumptions assumed;
   Findings findings;  ///< all, the gravest first
@@ -31,6 +34,11 @@ std::string text(const Result& result, const TextOptions& options);
 /// The JSON object of one file, schema_version 1, on one line, without newline.
 /// Throws std::logic_error where a number is not finite: null means "not defined".
 std::string json(const Result& result);
+
+/// The finding's text with its two numbers in a system of units.
+std::string sentence(const Finding& finding, units::System system);
+
+std::string_view word(Severity severity);
 
 /// The JSON object that stands for a file without a result: its base name and
 /// the messages, so that a reader of several files sees every one of them.

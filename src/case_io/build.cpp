@@ -78,14 +78,26 @@ std::string text_of(const Entries& entries, std::string_view key) {
   return std::string(word(entries, key).value_or(""));
 }
 
+std::vector<Accepted> accepted_of(const Reading& reading) {
+  std::vector<Accepted> accepted;
+  for (int i = 0;; ++i) {
+    const std::string item = fmt::format("accepted.{}", i);
+    if (!reading.has(item)) return accepted;
+    const auto& entries = reading.entries();
+    accepted.push_back({text_of(entries, item + ".id"), text_of(entries, item + ".because"),
+                        text_of(entries, item + ".by")});
+  }
+}
+
 }  // namespace
 
-Case build(const Document& document) {
+Case build_plain(const Document& document) {
   Reading reading(document, case_fields());
   const auto description = exchanger_of(reading);
   const auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
   check_inlets(reading);
   const rating::Methods methods = methods_of(reading);
+  bids::Claims claims = claims_of(reading);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");
@@ -97,12 +109,14 @@ Case build(const Document& document) {
   result.title = text_of(entries, "title");
   result.tag = text_of(entries, "tag");
   result.sha256 = document.sha256;
+  result.accepted = accepted_of(reading);
   result.display = display_of(entries);
   result.problem = {.exchanger = derived.value,
                     .shell_side = shell_side->stream,
                     .tube_side = tube_side->stream,
                     .methods = methods};
   result.service = service_of(entries, result.display);
+  result.claims = std::move(claims);
   append(result.assumed, reading.assumed());
   append(result.assumed, derived.assumed);
   append(result.findings, derived.findings);

@@ -41,8 +41,7 @@ bool is_decimal_key(std::string_view path, std::string_view key) {
 
 /// Blocks under which a key may itself be a dotted key.
 bool holds_dotted_keys(std::string_view path) {
-  const auto first = path.substr(0, path.find('.'));
-  return first == "operating_cases" || first == "present";
+  return path.starts_with("operating_cases.") || path == "present" || path.starts_with("present.");
 }
 
 /// Builds a Document from the parser's events and refuses what a case has no use for.

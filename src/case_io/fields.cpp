@@ -95,11 +95,7 @@ std::string indices_hidden(std::string_view key) {
 }
 
 constexpr Unread unread[] = {
-    {"operating_cases", "other cases of the same unit"},
-    {"present", "the unit as it is today"},
     {"anchor", "a reading of the running unit"},
-    {"claims", "what a sheet states"},
-    {"accepted", "findings somebody has decided on"},
     {"requirements", "a purchaser's own limits"},
     {"guarantee", "what a vendor guarantees"},
     {"inquiry", "the inquiry a bid answers"},
@@ -176,6 +172,8 @@ std::string kind_in_words(const Field& field) {
       return fmt::format("two values a -> b, each {}", units::name(field.kind));
     case Form::fluid:
       return std::string(known_fluids);
+    case Form::overlay:
+      return "a block of values by dotted key,";
   }
   return {};
 }

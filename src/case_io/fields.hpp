@@ -33,6 +33,7 @@ enum class Form {
   flow,              ///< a mass or volume flow
   pair,              ///< "a -> b" of `kind`
   fluid,             ///< a fluid's name, or a block of one family
+  overlay,           ///< values by dotted key, laid on the case
 };
 
 enum class Need {
@@ -84,6 +85,9 @@ const FieldTable& fluid_fields();
 
 /// "a length such as 19.05 mm": what a row's value should be.
 std::string expected_of(const Field& field);
+
+/// Blocks in which operating cases may differ.
+inline constexpr std::string_view blocks_that_may_differ = "exchanger|streams|service|methods";
 
 /// What `fluid` may be, in words.
 inline constexpr std::string_view known_fluids =

@@ -24,12 +24,25 @@ bool is_list_item(std::string_view key) {
   return key.find('#') != std::string_view::npos;
 }
 
+/// A name where any will do.
+std::string_view name_of_any(std::string_view key) {
+  return key == "operating_cases.?" ? "more_oil" : "sheet";
+}
+
+/// The key of the case that an overlay's key means: all behind the case's name.
+std::string_view without_overlay(std::string_view key) {
+  if (key.starts_with("present.")) return key == "present.since" ? key.substr(0, 7) : key.substr(8);
+  if (!key.starts_with("operating_cases.")) return key;
+  const auto dot = key.find('.', key.find('.') + 1);
+  return dot == std::string_view::npos ? key : key.substr(dot + 1);
+}
+
 /// "  key: example", a comment where it may be left out, and what it means.
 std::string starter_line(const Field& field, bool commented) {
   std::string line = std::string(2 * depth(field.key), ' ');
   if (commented) line += "# ";
   const auto name = last_segment(field.key);
-  line += fmt::format("{}:", name == "?" ? "sheet" : name);
+  line += fmt::format("{}:", name == "?" ? name_of_any(field.key) : name);
   if (field.form != Form::block) line += " " + field.example;
   if (field.help.empty()) return line + "\n";
   if (line.size() > comment_column) return line + "\n";
@@ -71,6 +84,8 @@ std::string kind_of(const Field& field) {
       return "flow";
     case Form::fluid:
       return "fluid";
+    case Form::overlay:
+      return "overlay";
     default:
       return std::string(units::name(field.kind));
   }
@@ -89,6 +104,7 @@ std::string starter_case() {
 }
 
 std::optional<FieldHelp> explain(std::string_view key) {
+  key = without_overlay(key);
   const Field* field = case_fields().find(key);
   if (field == nullptr) field = fluid_fields().find(key);
   if (field == nullptr) field = find_by_end(case_fields(), key);

@@ -63,8 +63,45 @@ std::optional<Misread> out_of_bounds(const Entry& entry, double value) {
                                 : "check the value and its unit");
 }
 
+/// Multiplies what was read, and shows the factor behind the text.
+Entry times_factor(Entry entry) {
+  if (entry.factor == 1.0) return entry;
+  entry.value.si *= entry.factor;
+  entry.second *= entry.factor;
+  for (auto* end : {&entry.value.low, &entry.value.high, &entry.value.standard_deviation})
+    if (*end) **end *= entry.factor;
+  entry.text += fmt::format(" x{}", entry.factor);
+  return entry;
+}
+
+/// Whether a factor means anything there: not on words, counts, or what is counted from a datum.
+std::optional<Misread> factor_refused(const Field& field) {
+  switch (field.form) {
+    case Form::quantity:
+    case Form::pair:
+      if (field.kind == Kind::temperature || field.kind == Kind::pressure)
+        return misread(
+            field, fmt::format("a factor on a {}, which is counted from a datum", units::name(field.kind)),
+            "write the value itself");
+      return {};
+    case Form::either_viscosity:
+    case Form::property:
+    case Form::flow:
+    case Form::wall:
+    case Form::bore:
+      return {};
+    case Form::number:
+    case Form::whole:
+    case Form::whole_or_list:
+      return misread(field, "a factor on a plain number", "write the number itself");
+    default:
+      return misread(field, "a factor on a word", "write the word itself");
+  }
+}
+
 /// The checks that every number goes through.
 Outcome checked(Entry entry) {
+  entry = times_factor(std::move(entry));
   const Field& field = *entry.field;
   if (!has_span_of_its_own(entry))
     if (auto mistake = not_yet(field, entry.value)) return *mistake;
@@ -141,12 +178,13 @@ Outcome read_pair(Entry entry) {
   auto read = units::read_pair(entry.text, entry.field->kind);
   if (auto* mistake = std::get_if<Misread>(&read)) return *mistake;
   units::Pair& pair = std::get<units::Pair>(read);
-  for (const units::Value* value : {&pair.first, &pair.second}) {
+  for (const units::Value* value : {&pair.first, &pair.second})
     if (auto mistake = not_yet(*entry.field, *value)) return *mistake;
-    if (auto mistake = out_of_bounds(entry, value->si)) return *mistake;
-  }
   entry.value = std::move(pair.first);
   entry.second = pair.second.si;
+  entry = times_factor(std::move(entry));
+  for (const double value : {entry.value.si, entry.second})
+    if (auto mistake = out_of_bounds(entry, value)) return *mistake;
   return entry;
 }
 
@@ -222,9 +260,17 @@ Outcome read_by_form(Entry entry) {
     case Form::fluid:
     case Form::block:
     case Form::list:
+    case Form::overlay:
       return entry;
   }
   return entry;
+}
+
+std::optional<Misread> misplaced_factor(const Field& field, const Leaf& leaf) {
+  if (leaf.factor != 1.0) return factor_refused(field);
+  if (field.form == Form::text || !begins_like_a_factor(leaf.text)) return {};
+  return misread(field, quoted(leaf.text) + " is a factor, and there is no value here that it could multiply",
+                 "write the value itself; factors are for operating_cases and present");
 }
 
 }  // namespace
@@ -241,7 +287,10 @@ void Reading::read_leaf(const std::string& key, const Leaf& leaf, const Field& f
   if (leaf.text == "unknown" && field.form != Form::text)
     return note(key, "'unknown' is not supported yet", expected_of(field),
                 field.need == Need::required ? "give a value" : "leave the key out");
-  Outcome outcome = read_by_form({.field = &field, .text = leaf.text, .line = leaf.value_at.line});
+  if (const auto mistake = misplaced_factor(field, leaf))
+    return note(key, mistake->what, mistake->expected, mistake->remedy);
+  Outcome outcome =
+      read_by_form({.field = &field, .text = leaf.text, .line = leaf.value_at.line, .factor = leaf.factor});
   if (const auto* mistake = std::get_if<Misread>(&outcome))
     return note(key, mistake->what, mistake->expected, mistake->remedy);
   take(key, std::get<Entry>(std::move(outcome)));

@@ -28,4 +28,9 @@ struct MadeStream {
 /// The stream of "shell_side" or "tube_side"; empty where it cannot be made.
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 
+/// Builds the case of a document without overlays. Throws InputError.
+Case build_plain(const Document& document);
+/// What the sheet claims; empty where it claims nothing.
+bids::Claims claims_of(Reading& reading);
+
 }  // namespace dutygauge::case_io

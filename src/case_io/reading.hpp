@@ -18,6 +18,7 @@ struct Entry {
   const Field* field = nullptr;
   std::string text{};  ///< as typed; the value of words and texts
   int line = 0;
+  double factor = 1.0;   ///< already in `value` and shown in `text`
   units::Value value{};  ///< of numbers; the first of a pair; the amount of a flow
   double second = 0;     ///< of a pair
   units::FlowBasis basis = units::FlowBasis::mass;

@@ -68,12 +68,34 @@ ordered_json names_of_fluids() {
 
 ordered_json object_of(const FieldTable& table, const std::string& block);
 
+/// Values by dotted key; what they may be is checked where the case is read.
+ordered_json overlay_of(const FieldTable& table) {
+  ordered_json object = {{"type", {"object", "null"}},
+                         {"additionalProperties", false},
+                         {"properties", ordered_json::object()},
+                         {"patternProperties",
+                          {{"^streams\\.(shell|tube)_side\\.fluid\\.", ordered_json::object()},
+                           {"^exchanger\\.tubes\\.plugged\\.", ordered_json::object()}}}};
+  for (const Field& field : table.all()) {
+    const bool may_differ = is_one_of(field.key.substr(0, field.key.find('.')), blocks_that_may_differ);
+    const bool is_listed =
+        field.key.find(".fluid.") == std::string::npos && field.key.find('#') == std::string::npos;
+    if (may_differ && is_listed && field.form != Form::block)
+      object["properties"][field.key] = {{"description", field.help}};
+  }
+  return object;
+}
+
 ordered_json schema_of(const FieldTable& table, const Field& field) {
   ordered_json json;
   if (field.form == Form::block) {
     json = object_of(table, field.key);
   } else if (field.form == Form::list) {
     json = {{"type", "array"}, {"items", object_of(table, field.key + ".#")}};
+  } else if (field.form == Form::overlay) {
+    json = overlay_of(table);
+    if (field.key == "present")
+      json["properties"]["since"] = {{"type", "string"}, {"pattern", "^[0-9]{4}-[0-9]{2}-[0-9]{2}$"}};
   } else if (field.form == Form::whole_or_list) {
     json = {{"anyOf", {whole_number(field), {{"type", "array"}, {"items", whole_number(field)}}}}};
   } else if (field.form == Form::fluid) {

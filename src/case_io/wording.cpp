@@ -105,6 +105,10 @@ std::size_t first_dot(std::string_view key) {
   return dot;
 }
 
+bool begins_like_a_factor(std::string_view text) {
+  return text.size() > 1 && text[0] == 'x' && std::string_view("0123456789.+-").find(text[1]) != text.npos;
+}
+
 std::string_view last_segment(std::string_view key) {
   const auto dot = last_dot(key);
   return dot == std::string_view::npos ? key : key.substr(dot + 1);

@@ -29,6 +29,9 @@ std::string_view nearest(std::string_view typed, std::string_view words);
 /// decimal point: the key of a viscosity is a temperature ("37.8 degC").
 std::size_t first_dot(std::string_view key);
 
+/// Whether a text reads like "x1.15".
+bool begins_like_a_factor(std::string_view text);
+
 /// The last segment of a dotted key, and all before it.
 std::string_view last_segment(std::string_view key);
 std::string_view parent_of(std::string_view key);

@@ -73,6 +73,9 @@ std::string_view nearest(std::string_view typed, std::span<const std::string_vie
 /// " (did you mean 'X'?)" or nothing.
 std::string did_you_mean(std::string_view typed, std::span<const std::string_view> known);
 
+/// Words wrapped at the page's width behind `lead`; the following lines are indented by its width.
+std::string wrapped(std::string_view lead, std::string_view text);
+
 /// The system of units asked for with --units. Throws CallError.
 std::optional<units::System> units_asked_for(const Call& call);
 
@@ -89,5 +92,7 @@ int run_rate(const Call& call, Streams streams);
 int run_explain(const Call& call, Streams streams);
 int run_new(const Call& call, Streams streams);
 int run_schema(const Call& call, Streams streams);
+int run_fluid(const Call& call, Streams streams);
+int run_ntu(const Call& call, Streams streams);
 
 }  // namespace dutygauge::cli

@@ -23,18 +23,6 @@ constexpr std::string_view example_calls[] = {
 
 constexpr std::size_t width = 100;
 
-std::string wrapped(std::string_view text) {
-  std::string lines;
-  while (!text.empty()) {
-    std::size_t length = text.size();
-    if (length > width) length = std::min(text.substr(0, width + 1).find_last_of(' '), width);
-    lines += fmt::format("{}\n", text.substr(0, length));
-    text.remove_prefix(length);
-    text.remove_prefix(std::min(text.find_first_not_of(' '), text.size()));
-  }
-  return lines;
-}
-
 std::string option_line(const Option& option) {
   const std::string letter = option.letter.empty() ? "    " : fmt::format("-{}, ", option.letter);
   const std::string value = option.value.empty() ? "" : fmt::format(" {}", option.value);
@@ -48,6 +36,22 @@ std::string examples_of(std::span<const std::string_view> examples) {
 }
 
 }  // namespace
+
+std::string wrapped(std::string_view lead, std::string_view text) {
+  std::string lines, line(lead);
+  while (!text.empty()) {
+    const auto blank = text.find(' ');
+    const auto next = text.substr(0, blank);
+    text = blank == std::string_view::npos ? std::string_view{} : text.substr(blank + 1);
+    if (line.size() > lead.size() && line.size() + 1 + next.size() > width) {
+      lines += line + "\n";
+      line = std::string(lead.size(), ' ');
+    }
+    if (line.size() > lead.size()) line += ' ';
+    line += next;
+  }
+  return lines + line + "\n";
+}
 
 std::string short_usage() {
   std::string names;
@@ -75,7 +79,7 @@ std::string command_help(const Command& command) {
   text += examples_of(command.examples) + "\nOptions:\n";
   for (const auto& option : command.options) text += option_line(option);
   text += option_line({"help", "h", "", "this text"});
-  if (!command.remarks.empty()) text += "\n" + wrapped(command.remarks);
+  if (!command.remarks.empty()) text += "\n" + wrapped("", command.remarks);
   return text + "\n" + std::string(statuses);
 }
 

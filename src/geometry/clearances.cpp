@@ -134,12 +134,15 @@ void set_lanes(const Description& d, ShellSide& shell, Assumptions& assumed) {
 
 }  // namespace
 
+double bundle_gap(const Description& d) {
+  return d.bundle_to_shell.value_or(default_bundle_to_shell(d.rear_head, d.shell_inside_diameter));
+}
+
 void set_clearances(const Description& d, const Baffles& baffles, ShellSide& shell, Assumptions& assumed) {
   const double span = unsupported_span(d, baffles);
   shell.tube_to_baffle = d.tube_to_baffle.value_or(default_tube_to_baffle(d.tube_outside_diameter, span));
   shell.shell_to_baffle = d.shell_to_baffle.value_or(default_shell_to_baffle(d.shell_inside_diameter));
-  shell.bundle_to_shell =
-      d.bundle_to_shell.value_or(default_bundle_to_shell(d.rear_head, d.shell_inside_diameter));
+  shell.bundle_to_shell = bundle_gap(d);
   // Nothing leaks through the supports of a pure crossflow shell.
   if (d.shell_type != 'X') assume_baffle_clearances(d, span, shell, assumed);
   if (!d.bundle_to_shell) assume_bundle_to_shell(d, shell.bundle_to_shell, assumed);

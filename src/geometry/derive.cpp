@@ -16,7 +16,7 @@ double circle(double diameter) {
   return 0.25 * pi * diameter * diameter;
 }
 
-void set_wall(const Description& d, Exchanger& exchanger) {
+void set_metal(const Description& d, Exchanger& exchanger) {
   if (d.tube_conductivity) {
     exchanger.wall_conductivity = {.temperature = {293.15}, .value = {*d.tube_conductivity}};
     return;
@@ -54,10 +54,9 @@ double nozzle_area(const std::optional<double>& bore, const char* key, Assumptio
   return 0.0;
 }
 
-/// Needs the shell side, for the bends.
 TubeSide tube_side(const Description& d, const Exchanger& exchanger, Assumptions& assumed) {
   TubeSide tubes;
-  tubes.inside_diameter = d.tube_outside_diameter - 2.0 * d.tube_wall;
+  tubes.inside_diameter = bore(d);
   tubes.outside_diameter = d.tube_outside_diameter;
   tubes.passes = d.tube_passes;
   tubes.u_tubes = has_u_tubes(d);
@@ -66,7 +65,7 @@ TubeSide tube_side(const Description& d, const Exchanger& exchanger, Assumptions
   tubes.friction_length = d.tube_length * d.tube_passes;
   if (tubes.u_tubes) {
     // The mean bend is 2/3 of the bundle circle: the integral over the half circle.
-    const double bundle = d.shell_inside_diameter - exchanger.shell_side.bundle_to_shell;
+    const double bundle = d.shell_inside_diameter - bundle_gap(d);
     tubes.friction_length += 0.5 * d.tube_passes * (2.0 / 3.0) * bundle;
   }
   set_roughness(d, tubes, assumed);
@@ -81,6 +80,12 @@ ShellSide shell_side(const Description& d, const Baffles& baffles, double expose
   shell.shell_type = d.shell_type;
   shell.inside_diameter = d.shell_inside_diameter;
   shell.tube_outside_diameter = d.tube_outside_diameter;
+  if (d.fins) {
+    const Fins& fins = *d.fins;
+    shell.tube_outside_diameter = fins.tip_diameter;
+    shell.blocked_diameter =
+        fins.root_diameter + (fins.tip_diameter - fins.root_diameter) * fins.per_length * fins.thickness;
+  }
   shell.pitch = d.tube_pitch;
   shell.layout = d.layout;
   shell.tube_count = d.tube_count;
@@ -170,15 +175,21 @@ Checked<Exchanger> build(const Description& d) {
   exchanger.tubesheet_thickness = tubesheet_thickness(d);
   exchanger.effective_length = effective_length(d);
   exchanger.tubes_open = d.tube_count - d.plugged;
-  exchanger.area_per_shell = pi * d.tube_outside_diameter * exchanger.effective_length * exchanger.tubes_open;
+  exchanger.area_per_shell = outside_per_length(d) * exchanger.effective_length * exchanger.tubes_open;
   exchanger.area = exchanger.area_per_shell * d.shells_in_series * d.shells_in_parallel;
 
   assume_lengths_and_flow(d, exchanger.tubesheet_thickness, out.assumed);
-  const Baffles baffles = place_baffles(d);
-  report_baffles(d, baffles, out);
-  exchanger.shell_side = shell_side(d, baffles, exchanger.effective_length, out.assumed);
+  exchanger.shell_drawn = d.baffles_known;
+  if (d.baffles_known) {
+    const Baffles baffles = place_baffles(d);
+    report_baffles(d, baffles, out);
+    exchanger.shell_side = shell_side(d, baffles, exchanger.effective_length, out.assumed);
+  } else {
+    exchanger.shell_side.shell_type = d.shell_type;
+  }
   exchanger.tube_side = tube_side(d, exchanger, out.assumed);
-  set_wall(d, exchanger);
+  set_metal(d, exchanger);
+  set_wall_path(d, exchanger);
   report_plugging(d, out.findings);
   return out;
 }
@@ -186,6 +197,7 @@ Checked<Exchanger> build(const Description& d) {
 Checked<Exchanger> derive(const Description& description) {
   if (const Objections found = objections(description); !found.empty())
     throw std::invalid_argument("this exchanger cannot be: " + found.front().key + ": " + found.front().what);
+  if (description.area) return {build_by_area(description), {}, {}};
   return build(description);
 }
 

@@ -132,11 +132,7 @@ void check_passes(const Description& d, Objections& out) {
 }
 
 void check_tubes(const Description& d, Objections& out) {
-  if (d.tube_wall >= 0.5 * d.tube_outside_diameter)
-    out.push_back({"exchanger.tubes.wall",
-                   fmt::format("{} leaves no bore in a tube of {}", length(d.tube_wall),
-                               length(d.tube_outside_diameter)),
-                   "less than half the outside diameter", "check wall and outside diameter"});
+  check_wall(d, out);
   if (d.tube_pitch <= d.tube_outside_diameter)
     out.push_back({"exchanger.tubes.pitch",
                    fmt::format("{} leaves no metal between tubes of {}", length(d.tube_pitch),
@@ -278,6 +274,7 @@ void check_window(const Description& d, Objections& out) {
 }  // namespace
 
 Objections objections(const Description& description) {
+  if (description.area) return objections_to_area(description);
   Objections out;
   check_numbers(description, out);
   check_counts(description, out);
@@ -288,12 +285,12 @@ Objections objections(const Description& description) {
   check_tubes(description, out);
   check_fit(description, out);
   check_nozzles(description, out);
-  if (description.shell_type != 'X') {
+  if (description.shell_type != 'X' && description.baffles_known) {
     const std::size_t before = out.size();
     check_baffle_data(description, out);
     if (out.size() == before && effective_length(description) > 0.0) check_baffle_room(description, out);
   }
-  if (out.empty()) check_window(description, out);
+  if (out.empty() && description.baffles_known) check_window(description, out);
   return out;
 }
 

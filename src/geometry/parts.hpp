@@ -25,6 +25,24 @@ double effective_length(const Description& d);
 /// Everything but the checks: needs the drawing's own numbers to be possible.
 Checked<Exchanger> build(const Description& d);
 
+// --- wall, layers, fins (tube_wall.cpp)
+
+/// Outside surface of one metre of tube, fins and all [m2/m].
+double outside_per_length(const Description& d);
+
+/// Of the open tube, layers in it [m]. With fins the wall is counted from their root.
+double bore(const Description& d);
+
+void check_wall(const Description& d, Objections& out);
+
+/// Resistances between the two surfaces, their ratio, and the fins.
+void set_wall_path(const Description& d, Exchanger& exchanger);
+
+// --- known by its area (known_area.cpp)
+
+Objections objections_to_area(const Description& d);
+Exchanger build_by_area(const Description& d);
+
 // --- baffles (baffles.cpp)
 
 /// Baffles of one run, on the straight tubes.
@@ -47,6 +65,9 @@ Baffles place_baffles(const Description& d);
 void report_baffles(const Description& d, const Baffles& baffles, Checked<Exchanger>& out);
 
 // --- clearances, strips, lanes (clearances.cpp)
+
+/// Diametral gap between bundle and shell [m]: as given, or usual for the rear head.
+double bundle_gap(const Description& d);
 
 /// Fills the clearances of `shell`; its diameters must be set.
 void set_clearances(const Description& d, const Baffles& baffles, ShellSide& shell, Assumptions& assumed);

@@ -19,12 +19,15 @@ fluids::State wall_state(const Stream& stream, const fluids::TemperatureRange& r
 
 overall::Resistances resistances_of(const Unit& unit, const Local& at, double metal_temperature) {
   const Problem& problem = *unit.problem;
-  return {
-      .tube_film = overall::on_outside(unit.tube, 1.0 / at.tube_film.coefficient),
-      .tube_fouling = overall::on_outside(unit.tube, problem.tube_side.fouling_resistance),
-      .wall = overall::wall_resistance(unit.tube, problem.exchanger.wall_conductivity.at(metal_temperature)),
-      .shell_fouling = problem.shell_side.fouling_resistance,
-      .shell_film = 1.0 / at.shell_film.coefficient};
+  const geometry::Exchanger& exchanger = problem.exchanger;
+  overall::Resistances r{.tube_film = exchanger.outside_per_inside / at.tube_film.coefficient,
+                         .tube_fouling = exchanger.outside_per_inside * problem.tube_side.fouling_resistance,
+                         .wall = exchanger.layer_resistance,
+                         .shell_fouling = problem.shell_side.fouling_resistance / at.fin_effectiveness,
+                         .shell_film = 1.0 / (at.shell_film.coefficient * at.fin_effectiveness)};
+  if (exchanger.wall_length > 0.0)
+    r.wall += exchanger.wall_length / exchanger.wall_conductivity.at(metal_temperature);
+  return r;
 }
 
 /// Walls at the flux of the rule. With a fixed U the resistance still missing to
@@ -56,11 +59,8 @@ double settle(const Unit& unit, const Bulk& bulk, const FluxRule& rule, int pass
   for (int pass = 0; pass < passes && !at.converged; ++pass) {
     at.tube_wall = wall_state(problem.tube_side, unit.tube_wall_range, at.walls.tube_wetted);
     at.shell_wall = wall_state(problem.shell_side, unit.shell_wall_range, at.walls.shell_wetted);
-    at.tube_film = tubeside::film(problem.exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall);
-    at.shell_film = shellside::film(unit.bundle, unit.shell_flow, at.shell_bulk, at.shell_wall);
-    at.tube_film.nusselt *= problem.factors.tube_film;
-    at.tube_film.coefficient *= problem.factors.tube_film;
-    at.shell_film.coefficient *= problem.factors.shell_film;
+    at.tube_film = tube_film(unit, at.tube_bulk, at.tube_wall);
+    at.shell_film = shell_film(unit, at.shell_bulk, at.shell_wall);
     at.resistances = resistances_of(unit, at, at.walls.metal_mean);
     const double u_before = at.u_dirty;
     at.u_dirty = 1.0 / at.resistances.sum();

@@ -28,9 +28,8 @@ void add(Means& means, const Unit& unit, const Meeting& meeting) {
   means.difference_over.wall += w * flux * at.resistances.wall;
   means.difference_over.shell_fouling += w * flux * at.resistances.shell_fouling;
   means.difference_over.shell_film += w * flux * at.resistances.shell_film;
-  const auto tube =
-      tubeside::pressure_drop(unit.problem->exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall);
-  const auto shell = shellside::pressure_drop(unit.bundle, unit.shell_flow, at.shell_bulk, at.shell_wall);
+  const auto tube = tube_drop(unit, at);
+  const auto shell = shell_drop(unit, at);
   means.tube_drop.friction += w * tube.friction;
   means.tube_drop.turns += w * tube.turns;
   means.tube_drop.nozzles += w * tube.nozzles;
@@ -67,10 +66,10 @@ void show_whole(const Unit& unit, const Means& means, double u, Local& local) {
   local.u_clean = 1.0 / r.clean_sum();
   local.walls = overall::wall_temperatures(r, local.tube_bulk.temperature, local.shell_bulk.temperature,
                                            u * (local.shell_bulk.temperature - local.tube_bulk.temperature));
-  const double tube_film = unit.tube.outside_diameter / unit.tube.inside_diameter / r.tube_film;
+  const double tube_film = unit.problem->exchanger.outside_per_inside / r.tube_film;
   local.tube_film.nusselt *= tube_film / local.tube_film.coefficient;
   local.tube_film.coefficient = tube_film;
-  local.shell_film.coefficient = 1.0 / r.shell_film;
+  local.shell_film.coefficient = 1.0 / (r.shell_film * local.fin_effectiveness);
   local.shell_film.ideal = ideal_share / r.shell_film;
 }
 
@@ -121,9 +120,8 @@ Outcome outcome_of(const Unit& unit, const March& march) {
   fill_dimensionless(unit, trial, outcome);
   const double shell_gain = problem.shell_side.mass_flow * march.mixed_enthalpy(march.network().shell_outlet);
   outcome.balance_error = std::abs(std::abs(shell_gain) - std::abs(duty)) / duty;
-  outcome.tube_drop = means.tube_drop.times(problem.exchanger.shells_in_series * problem.factors.tube_drop);
-  outcome.shell_drop =
-      means.shell_drop.times(problem.exchanger.shells_in_series * problem.factors.shell_drop);
+  outcome.tube_drop = means.tube_drop;
+  outcome.shell_drop = means.shell_drop;
   fill_profile(unit, march, outcome);
   return outcome;
 }

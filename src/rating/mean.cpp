@@ -26,13 +26,8 @@ Outcome outcome_of(const Unit& unit, const Trial& trial, double duty) {
   const double shell_heat = std::abs(duty_to_reach(problem.shell_side, trial.shell_outlet, true));
   const double tube_heat = std::abs(duty_to_reach(problem.tube_side, trial.tube_outlet, true));
   outcome.balance_error = std::abs(shell_heat - tube_heat) / duty;
-  const int in_series = problem.exchanger.shells_in_series;
-  outcome.tube_drop = tubeside::pressure_drop(problem.exchanger.tube_side, unit.tube_flow,
-                                              trial.local.tube_bulk, trial.local.tube_wall)
-                          .times(in_series * problem.factors.tube_drop);
-  outcome.shell_drop =
-      shellside::pressure_drop(unit.bundle, unit.shell_flow, trial.local.shell_bulk, trial.local.shell_wall)
-          .times(in_series * problem.factors.shell_drop);
+  outcome.tube_drop = tube_drop(unit, trial.local);
+  outcome.shell_drop = shell_drop(unit, trial.local);
   return outcome;
 }
 

@@ -131,10 +131,8 @@ std::optional<numerics::Bracket> bracket_area(const Problem& problem, double dut
 /// The resistance that brings the duty down (or up) to the one asked for. Less than no
 /// fouling at all cannot be marched; there the surface margin stands for it.
 double spare_by_march(const Problem& problem, double duty, double u_required, double u_there) {
-  const auto& tube = problem.exchanger.tube_side;
-  const double all_fouling = problem.shell_side.fouling_resistance + problem.tube_side.fouling_resistance *
-                                                                         tube.outside_diameter /
-                                                                         tube.inside_diameter;
+  const double all_fouling = problem.shell_side.fouling_resistance +
+                             problem.tube_side.fouling_resistance * problem.exchanger.outside_per_inside;
   const auto excess = [&](double resistance) {
     return duty_with(problem, 1.0, resistance).value_or(NAN) - duty;
   };

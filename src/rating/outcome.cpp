@@ -13,16 +13,40 @@ void append(Findings& findings, Findings more) {
   findings.insert(findings.end(), std::make_move_iterator(more.begin()), std::make_move_iterator(more.end()));
 }
 
-void check_stream(const Stream& stream, std::string_view side, double outlet, double wall,
+/// What a stream meets on its way.
+struct Met {
+  double outlet;  ///< [K]
+  double mean;    ///< bulk [K]
+  double wall;    ///< wetted, where the bulk is at its mean [K]
+};
+
+/// The wetted wall at the end where a stream leaves and the other one enters: a cooled stream's
+/// coldest, a heated one's hottest. The wall keeps the place between the streams that it has at the
+/// means; with several passes no wall is farther out than this.
+double extreme_wall(const Met& own, double other_inlet, double other_mean) {
+  const double share = (own.wall - other_mean) / (own.mean - other_mean);
+  return other_inlet + share * (own.outlet - other_inlet);
+}
+
+/// A phase change at the extreme wall, else what is to be said of the mean one.
+Findings check_walls(const Stream& stream, std::string_view side, double wall, double extreme) {
+  Findings at_end =
+      fluids::check_wall(stream.fluid, extreme, stream.inlet_pressure, fmt::format("{} at its outlet", side));
+  const bool changes = std::ranges::find(at_end, "fluids.wall_changes_phase", &Finding::id) != at_end.end();
+  return changes
+             ? at_end
+             : fluids::check_wall(stream.fluid, wall, stream.inlet_pressure, fmt::format("{} wall", side));
+}
+
+void check_stream(const Stream& stream, std::string_view side, const Met& met, double extreme,
                   Findings& findings) {
   append(findings, fluids::check_bulk(stream.fluid, stream.inlet_temperature, stream.inlet_pressure,
                                       fmt::format("{} inlet", side)));
   append(findings,
-         fluids::check_bulk(stream.fluid, outlet, stream.inlet_pressure, fmt::format("{} outlet", side)));
+         fluids::check_bulk(stream.fluid, met.outlet, stream.inlet_pressure, fmt::format("{} outlet", side)));
   append(findings,
-         fluids::check_span(stream.fluid, {.inlet = stream.inlet_temperature, .outlet = outlet}, side));
-  append(findings,
-         fluids::check_wall(stream.fluid, wall, stream.inlet_pressure, fmt::format("{} wall", side)));
+         fluids::check_span(stream.fluid, {.inlet = stream.inlet_temperature, .outlet = met.outlet}, side));
+  append(findings, check_walls(stream, side, met.wall, extreme));
 }
 
 }  // namespace
@@ -73,14 +97,19 @@ std::string inlet_fault(const Stream& stream, std::string_view side) {
 
 Findings check_outcome(const Unit& unit, const Outcome& outcome) {
   const Problem& problem = *unit.problem;
-  Findings findings = shellside::check_bundle(unit.bundle);
-  append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
-  append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
-                                        outcome.local.tube_bulk, outcome.local.tube_wall));
-  check_stream(problem.shell_side, "shell side", outcome.shell_outlet, outcome.local.walls.shell_wetted,
-               findings);
-  check_stream(problem.tube_side, "tube side", outcome.tube_outlet, outcome.local.walls.tube_wetted,
-               findings);
+  Findings findings;
+  if (problem.exchanger.shell_drawn) findings = shellside::check_bundle(unit.bundle);
+  if (problem.exchanger.shell_drawn && !problem.shell_side.film_law)
+    append(findings, shellside::check_film(unit.bundle, outcome.local.shell_film));
+  if (problem.exchanger.tubes_drawn)
+    append(findings, tubeside::check_film(problem.exchanger.tube_side, outcome.local.tube_film,
+                                          outcome.local.tube_bulk, outcome.local.tube_wall));
+  const Met shell{outcome.shell_outlet, outcome.shell_mean, outcome.local.walls.shell_wetted};
+  const Met tube{outcome.tube_outlet, outcome.tube_mean, outcome.local.walls.tube_wetted};
+  check_stream(problem.shell_side, "shell side", shell,
+               extreme_wall(shell, problem.tube_side.inlet_temperature, tube.mean), findings);
+  check_stream(problem.tube_side, "tube side", tube,
+               extreme_wall(tube, problem.shell_side.inlet_temperature, shell.mean), findings);
   check_arrangement(unit, outcome, findings);
   return findings;
 }

@@ -35,34 +35,29 @@ std::string cause(const Problem& problem, const Outcome& outcome) {
   return "the films change along the exchanger";
 }
 
-void compare_solutions(const Problem& problem, Rating& rating) {
-  if (!rating.outcome || !rating.mean_duty || !rating.march_duty) return;
-  const double difference = *rating.mean_duty / *rating.march_duty - 1.0;
-  if (std::abs(difference) <= worth_saying) return;
-  rating.findings.push_back(
-      {.id = "rating.mean_misleads",
-       .severity = Severity::should,
-       .text = fmt::format(
-           "properties at the mean temperatures would give {{value}}, {:+.1f} % against the {{limit}} "
-           "found along the exchanger, because {}. Trust the march, and compare with sheets "
-           "made by mean properties only with that in mind",
-           100.0 * difference, cause(problem, *rating.outcome)),
-       .ground = Ground::method,
-       .value = *rating.mean_duty,
-       .limit = *rating.march_duty,
-       .kind = units::Kind::power});
-}
-
 }  // namespace
 
 Rating rate(const Problem& problem) {
-  Rating mean = rate_mean(problem), march = rate_march(problem);
-  const bool by_march = problem.methods.solution == Solution::march;
-  Rating& chosen = by_march ? march : mean;
-  chosen.mean_duty = mean.mean_duty;
-  chosen.march_duty = march.march_duty;
-  compare_solutions(problem, chosen);
-  return std::move(chosen);
+  return problem.methods.solution == Solution::march ? rate_march(problem) : rate_mean(problem);
+}
+
+Findings compare_solutions(const Problem& problem, Rating& rating) {
+  if (!rating.mean_duty) rating.mean_duty = rate_mean(problem).mean_duty;
+  if (!rating.march_duty) rating.march_duty = rate_march(problem).march_duty;
+  if (!rating.outcome || !rating.mean_duty || !rating.march_duty) return {};
+  const double difference = *rating.mean_duty / *rating.march_duty - 1.0;
+  if (std::abs(difference) <= worth_saying) return {};
+  return {{.id = "rating.mean_misleads",
+           .severity = Severity::should,
+           .text = fmt::format(
+               "properties at the mean temperatures give {{value}}, {:+.1f} % against the {{limit}} "
+               "found along the exchanger, because {}. Trust the march, and compare with sheets "
+               "made by mean properties only with that in mind",
+               100.0 * difference, cause(problem, *rating.outcome)),
+           .ground = Ground::method,
+           .value = *rating.mean_duty,
+           .limit = *rating.march_duty,
+           .kind = units::Kind::power}};
 }
 
 }  // namespace dutygauge::rating

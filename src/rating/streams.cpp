@@ -1,5 +1,6 @@
 #include <algorithm>
 #include <cmath>
+#include <stdexcept>
 
 #include "outcome.hpp"
 
@@ -33,8 +34,11 @@ Unit prepare(const Problem& problem) {
   const geometry::Exchanger& exchanger = problem.exchanger;
   Unit unit;
   unit.problem = &problem;
-  unit.bundle = shellside::prepare(exchanger.shell_side, problem.methods.shell_side);
-  unit.tube = {exchanger.tube_side.outside_diameter, exchanger.tube_side.inside_diameter};
+  if ((!exchanger.tubes_drawn && !problem.tube_side.film_law) ||
+      (!exchanger.shell_drawn && !problem.shell_side.film_law))
+    throw std::invalid_argument("a side that is not drawn needs its film as a law");
+  if (exchanger.shell_drawn)
+    unit.bundle = shellside::prepare(exchanger.shell_side, problem.methods.shell_side);
   unit.arrangement = arrangement_of(exchanger);
   unit.tube_flow = problem.tube_side.mass_flow / exchanger.shells_in_parallel;
   unit.shell_flow = problem.shell_side.mass_flow / exchanger.shells_in_parallel;

@@ -7,14 +7,23 @@ namespace dutygauge::rating {
 struct Unit {
   const Problem* problem = nullptr;
   shellside::Bundle bundle;
-  overall::Tube tube{};
   arrangement::Arrangement arrangement;
   double tube_flow = 0, shell_flow = 0;                            ///< of one bank [kg/s]
   fluids::TemperatureRange tube_wall_range{}, shell_wall_range{};  ///< where wall properties are taken
   double direction = 1;                                            ///< +1 when the shell side is hot, else -1
 };
 
+/// Needs: a side that is not drawn has a film law; throws std::invalid_argument otherwise.
 Unit prepare(const Problem& problem);
+
+/// Films at one place, with the problem's factors; allocation-free.
+tubeside::Film tube_film(const Unit& unit, const fluids::State& bulk, const fluids::State& wall);
+shellside::Film shell_film(const Unit& unit, const fluids::State& bulk, const fluids::State& wall);
+
+/// Drops of one bank, all its shells in series, if the whole were as at one place; with the
+/// problem's factors. All zero where nothing is known of them.
+tubeside::PressureDrop tube_drop(const Unit& unit, const Local& at);
+shellside::PressureDrop shell_drop(const Unit& unit, const Local& at);
 
 /// Bulk temperatures [K] of the two streams at one place.
 struct Bulk {

@@ -233,6 +233,23 @@ Json findings(const Findings& all) {
   return list;
 }
 
+Json claims(const std::vector<bids::ClaimVerdict>& all) {
+  Json list = Json::array();
+  for (const auto& one : all) {
+    const auto computed = one.computed ? std::optional(in_json_unit(*one.computed, one.kind)) : std::nullopt;
+    list.push_back({{"key", one.key},
+                    {"stated", in_json_unit(one.stated, one.kind)},
+                    {"computed", or_null(computed)},
+                    {"unit", units::json_unit(one.kind)},
+                    {"ratio", or_null(one.ratio)},
+                    {"ground", word(one.ground)},
+                    {"verdict", word(one.verdict)},
+                    {"against", one.against},
+                    {"likely", one.likely}});
+  }
+  return list;
+}
+
 Json inputs(const Inputs& all) {
   Json list = Json::array();
   for (const auto& one : all) {
@@ -282,7 +299,7 @@ std::string json(const Result& result) {
                    {"operating_cases", {{"base", this_state}}},
                    {"assumed", assumed(result.assumed)},
                    {"findings", findings(result.findings)},
-                   {"claims", Json::array()},
+                   {"claims", claims(result.claims)},
                    {"inputs", inputs(result.inputs)},
                    {"between_shells", between_shells(assessment)},
                    {"profile", profile(assessment)}});

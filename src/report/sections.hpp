@@ -6,6 +6,10 @@
 namespace dutygauge::report {
 
 void heading(Page& page, const Result& result);
+/// One line where the sheet contradicts itself; nothing otherwise.
+void sheet_contradicts(Page& page, const Result& result);
+/// Claims beside what was found: contradictions and questions; all of them with -v.
+void claims(Page& page, const Result& result, const TextOptions& options);
 void answer(Page& page, const Result& result);
 void how_much(Page& page, const Result& result);
 void how_sure(Page& page, const Result& result);

@@ -47,6 +47,7 @@ void answer(Page& page, const Result& result) {
 std::string text(const Result& result, const TextOptions& options) {
   Page page;
   heading(page, result);
+  sheet_contradicts(page, result);
   answer(page, result);
   if (result.assessment.rating.outcome) {
     page.blank();
@@ -55,6 +56,7 @@ std::string text(const Result& result, const TextOptions& options) {
     page.blank();
     what_limits(page, result);
   }
+  claims(page, result, options);
   assumed(page, result, options);
   page.blank();
   rules(page, result, options);

@@ -61,6 +61,20 @@ std::string_view word(Ground ground) {
   throw std::invalid_argument("report::word: no such ground");
 }
 
+std::string_view word(bids::Agreement agreement) {
+  switch (agreement) {
+    case bids::Agreement::agrees:
+      return "agrees";
+    case bids::Agreement::ask:
+      return "ask";
+    case bids::Agreement::contradicts:
+      return "contradicts";
+    case bids::Agreement::not_checked:
+      break;
+  }
+  return "not_checked";
+}
+
 std::string_view word(tubeside::Regime regime) {
   switch (regime) {
     case tubeside::Regime::laminar:

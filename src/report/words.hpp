@@ -17,12 +17,9 @@ std::string_view side_word(Side side);
 /// What a person calls the stream; the side goes with it where both bear one name.
 std::string stream_name(const rating::Problem& problem, Side side);
 
-std::string_view word(Severity severity);
 std::string_view word(Ground ground);
 std::string_view word(tubeside::Regime regime);
-
-/// The finding's text with its two numbers in a system of units.
-std::string sentence(const Finding& finding, units::System system);
+std::string_view word(bids::Agreement agreement);
 
 /// The value of an assumption as it would be typed.
 std::string as_typed(const Assumption& assumption, units::System system, int significant);
