@@ -62,6 +62,7 @@ struct Document {
   std::map<std::string, Block> blocks;  ///< maps and lists, by dotted key
   std::string sha256;                   ///< of the bytes read, hexadecimal
   std::vector<Mistake> mistakes;        ///< that did not stop the reading (doubled keys)
+  std::vector<std::string> of_cases;    ///< the file's operating cases, where this is one of them
 };
 
 /// A finding that somebody has looked at and decided on.

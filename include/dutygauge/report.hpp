@@ -11,17 +11,35 @@
 /// Results to text and JSON. Knows no file format of the input; no physics.
 namespace dutygauge::report {
 
+/// One operating case in the two states that are rated.
+struct RatedCase {
+  std::string name;
+  service::Assessment design_fouling, clean;
+  Findings findings;  ///< of the case as read and as rated at design fouling
+  std::optional<uncertainty::Result> spread{}, spread_clean{};  ///< at design fouling, and clean
+};
+
+/// A finding somebody has decided on: shown as such, without effect on the exit status.
+struct AcceptedFinding {
+  Finding finding;
+  std::string because, by;
+};
+
 /// Everything a page or a JSON object is made from.
 struct Result {
   std::string file;  ///< base name, "-" for standard input
   std::string title, tag, input_sha256;
   units::System display = units::System::metric;
-  service::Assessment assessment;
-  std::optional<uncertainty::Result> spread{};  ///< of the assessment
-  std::vector<bids::ClaimVerdict> claims{};  ///< of the sheet, as built
-  Inputs inputs;
-  Assumptions assumed;
-  Findings findings;  ///< all, the gravest first
+  service::Assessment assessment;               ///< of the governing operating case at design fouling
+  std::optional<uncertainty::Result> spread{};  ///< of that assessment
+  std::vector<bids::ClaimVerdict> claims{};     ///< of the sheet, as built
+  Inputs inputs;                                ///< of that case
+  Assumptions assumed;                          ///< of that case, and what only others needed
+  Findings findings;                            ///< of all cases but those accepted, the gravest first
+  std::vector<AcceptedFinding> accepted = {};
+  std::vector<RatedCase> cases = {};  ///< in file order
+  std::size_t governing = 0;          ///< of `cases`
+  std::string present_since = {};     ///< the unit is rated as it is since that day; empty: as built
 };
 
 struct TextOptions {

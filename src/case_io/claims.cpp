@@ -12,7 +12,6 @@ using bids::Claims;
 using bids::Stated;
 
 /// The name of a case without operating cases.
-constexpr std::string_view base = "base";
 
 bool is_digit(char c) {
   return c >= '0' && c <= '9';
@@ -51,16 +50,9 @@ double rounding_of(const Entry& entry) {
 
 /// The names a claim may be `for`: those of the operating cases, or base without any.
 std::string names_of_cases(const Reading& reading) {
-  constexpr std::string_view list = "operating_cases";
   std::string names;
-  const auto add = [&](const std::string& key) {
-    if (parent_of(key) != list) return;
-    if (!names.empty()) names += '|';
-    names += last_segment(key);
-  };
-  for (const auto& [key, block] : reading.document().blocks) add(key);
-  for (const auto& [key, leaf] : reading.document().leaves) add(key);
-  return names.empty() ? std::string(base) : names;
+  for (const auto& name : reading.document().of_cases) names += (names.empty() ? "" : "|") + name;
+  return names;
 }
 
 std::string case_named(Reading& reading) {

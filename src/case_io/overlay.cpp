@@ -92,6 +92,7 @@ Document made(const Document& document, const std::string& operating_case, bool 
   if (std::ranges::find(names, operating_case) == names.end())
     throw std::invalid_argument("case_io: the file has no operating case '" + operating_case + "'");
   Document result = plain(document);
+  result.of_cases = names;
   for (Mistake& mistake : shape_mistakes(document)) result.mistakes.push_back(std::move(mistake));
   if (as_is) lay(document, present_block, result);
   lay(document, joined(cases_block, operating_case), result);

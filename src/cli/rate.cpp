@@ -72,11 +72,13 @@ std::vector<std::string> refusals(const report::Result& result, const std::strin
 }
 
 int status_of(const report::Result& result) {
-  const auto& assessment = result.assessment;
-  if (!assessment.rating.outcome) return no_result;
+  if (!result.assessment.rating.outcome) return no_result;  // the governing case is the worst
   const bool broken =
       std::ranges::find(result.findings, Severity::must, &Finding::severity) != result.findings.end();
-  return broken || !assessment.verdict.met.value_or(true) ? not_met : done;
+  const bool missed = std::ranges::any_of(result.cases, [](const report::RatedCase& one) {
+    return !one.design_fouling.verdict.met.value_or(true);
+  });
+  return broken || missed ? not_met : done;
 }
 
 Rated without_result(int status, const std::string& file, std::vector<std::string> messages, bool json) {
@@ -91,10 +93,9 @@ Rated without_result(int status, const std::string& file, std::vector<std::strin
 }
 
 Rated rate_case(const std::string& file, const Wishes& wishes) {
-  case_io::Case a_case = case_io::build(case_io::read_file(file));
   // --units is for the page: the words of a JSON result are the same whatever is asked for.
-  a_case.display = wishes.json ? units::System::metric : wishes.display.value_or(a_case.display);
-  const report::Result result = explore::rate(a_case);
+  const auto display = wishes.json ? std::optional(units::System::metric) : wishes.display;
+  const report::Result result = explore::rate(case_io::read_file(file), display);
   if (wishes.strict && !result.assumed.empty())
     return without_result(input_at_fault, file, refusals(result, file), wishes.json);
   return {.status = status_of(result),

@@ -20,22 +20,8 @@ uncertainty::Question question_of(const service::Assessment& assessment) {
   return question;
 }
 
-}  // namespace
-
-std::vector<std::optional<uncertainty::Result>> how_sure(
-    std::span<const service::Assessment* const> assessments) {
-  std::vector<uncertainty::Question> questions;
-  for (const auto* assessment : assessments)
-    if (assessment->rating.outcome) questions.push_back(question_of(*assessment));
-  std::vector<std::optional<uncertainty::Result>> spreads(assessments.size());
-  if (questions.empty()) return spreads;
-  auto found = uncertainty::propagate_together(questions).each;
-  auto next = found.begin();
-  for (std::size_t i = 0; i < assessments.size(); ++i)
-    if (assessments[i]->rating.outcome) spreads[i] = std::move(*next++);
-  return spreads;
-}
-
+/// Puts the grade into the verdict's sentence. Where the service states a confidence, the
+/// sentence begins with yes only if the probability reaches it.
 void qualify(service::Assessment& assessment, const std::optional<uncertainty::Result>& spread) {
   if (!spread || !spread->probability || !assessment.verdict.met) return;
   const double probability = *spread->probability;
@@ -50,6 +36,29 @@ void qualify(service::Assessment& assessment, const std::optional<uncertainty::R
   text += fmt::format("; {}, probability {}", grade, uncertainty::in_words(probability));
   if (too_unsure) text += fmt::format(" where {:.0f} % is asked for", 100.0 * *confidence);
   text += ".";
+}
+
+}  // namespace
+
+void add_spreads(std::vector<report::RatedCase>& cases) {
+  struct State {
+    service::Assessment* assessment;
+    std::optional<uncertainty::Result>* spread;
+  };
+  std::vector<State> states;
+  std::vector<uncertainty::Question> questions;
+  for (auto& one : cases)
+    for (const State& state : {State{&one.design_fouling, &one.spread}, State{&one.clean, &one.spread_clean}})
+      if (state.assessment->rating.outcome) {
+        states.push_back(state);
+        questions.push_back(question_of(*state.assessment));
+      }
+  if (questions.empty()) return;
+  auto found = uncertainty::propagate_together(questions).each;
+  for (std::size_t i = 0; i < states.size(); ++i) {
+    *states[i].spread = std::move(found[i]);
+    qualify(*states[i].assessment, *states[i].spread);
+  }
 }
 
 }  // namespace dutygauge::explore

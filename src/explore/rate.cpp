@@ -1,10 +1,128 @@
 #include <algorithm>
 #include <filesystem>
+#include <limits>
+#include <tuple>
 
 #include "dutygauge/explore.hpp"
 #include "how_sure.hpp"
 
 namespace dutygauge::explore {
+namespace {
+
+rating::Problem without_fouling(rating::Problem problem) {
+  problem.shell_side.fouling_resistance = 0.0;
+  problem.tube_side.fouling_resistance = 0.0;
+  return problem;
+}
+
+service::Service service_of(const case_io::Case& a_case) {
+  service::Service service = a_case.service;
+  service.words = a_case.display;
+  return service;
+}
+
+report::RatedCase rated(const case_io::Case& a_case) {
+  const auto service = service_of(a_case);
+  report::RatedCase result{.name = a_case.operating_case,
+                           .design_fouling = assess_both_ways(a_case.problem, service),
+                           .clean = service::assess(without_fouling(a_case.problem), service),
+                           .findings = a_case.findings};
+  const auto& judged = result.design_fouling.findings;
+  result.findings.insert(result.findings.end(), judged.begin(), judged.end());
+  return result;
+}
+
+std::size_t governing(const std::vector<report::RatedCase>& cases) {
+  constexpr double none = std::numeric_limits<double>::infinity();
+  const auto room = [none](const report::RatedCase& one) {
+    const auto& margins = one.design_fouling.margins;
+    const auto probability = one.spread ? one.spread->probability : std::nullopt;
+    return std::tuple(one.design_fouling.rating.outcome.has_value(), probability.value_or(none),
+                      margins.duty.value_or(none), margins.temperature.value_or(none));
+  };
+  return static_cast<std::size_t>(std::ranges::min_element(cases, {}, room) - cases.begin());
+}
+
+/// Whether two findings say the same, numbers apart. Notes may name the numbers in their text.
+bool is_same(const Finding& a, const Finding& b) {
+  return a.id == b.id && a.severity == b.severity && (a.severity == Severity::note || a.text == b.text);
+}
+
+/// Those of the governing case, and what only other cases have to say, with their names.
+Findings all_findings(const std::vector<report::RatedCase>& cases, std::size_t governing) {
+  Findings all = cases[governing].findings;
+  for (const auto& one : cases) {
+    const Findings so_far = all;
+    for (Finding finding : one.findings) {
+      const auto is_known = [&](const Finding& other) { return is_same(other, finding); };
+      if (&one == &cases[governing] || std::ranges::any_of(so_far, is_known)) continue;
+      finding.text = "case " + one.name + ": " + finding.text;
+      all.push_back(std::move(finding));
+    }
+  }
+  std::ranges::stable_sort(all, std::ranges::greater{}, &Finding::severity);
+  return all;
+}
+
+/// Those of the governing case, and what only other cases had to assume.
+Assumptions all_assumed(const std::vector<case_io::Case>& cases, std::size_t governing) {
+  Assumptions all = cases[governing].assumed;
+  for (const auto& one : cases) {
+    const Assumptions so_far = all;
+    for (const Assumption& assumption : one.assumed)
+      if (std::ranges::find(so_far, assumption.key, &Assumption::key) == so_far.end())
+        all.push_back(assumption);
+  }
+  return all;
+}
+
+/// Takes out the findings somebody has decided on.
+std::vector<report::AcceptedFinding> take_accepted(Findings& findings,
+                                                   const std::vector<case_io::Accepted>& decisions) {
+  std::vector<report::AcceptedFinding> accepted;
+  for (const auto& decision : decisions) {
+    for (const Finding& finding : findings)
+      if (finding.id == decision.id) accepted.push_back({finding, decision.because, decision.by});
+    std::erase_if(findings, [&](const Finding& finding) { return finding.id == decision.id; });
+  }
+  return accepted;
+}
+
+/// Everything but the claims.
+report::Result without_claims(const std::vector<case_io::Case>& cases) {
+  std::vector<report::RatedCase> all;
+  for (const auto& one : cases) all.push_back(rated(one));
+  add_spreads(all);
+  const std::size_t worst = governing(all);
+  const case_io::Case& a_case = cases[worst];
+  report::Result result{.file = std::filesystem::path(a_case.file).filename().string(),
+                        .title = a_case.title,
+                        .tag = a_case.tag,
+                        .input_sha256 = a_case.sha256,
+                        .display = a_case.display,
+                        .assessment = all[worst].design_fouling,
+                        .spread = all[worst].spread,
+                        .inputs = a_case.inputs,
+                        .assumed = all_assumed(cases, worst),
+                        .findings = all_findings(all, worst),
+                        .governing = worst,
+                        .present_since = a_case.present_since};
+  result.cases = std::move(all);
+  return result;
+}
+
+/// Adds the verdicts on the claims of a case, and settles what has been accepted.
+report::Result completed(report::Result result, const case_io::Case& claimed,
+                         const service::Assessment& assessment) {
+  result.claims = bids::audit(claimed.claims, assessment);
+  const auto contradictions = bids::findings_of(result.claims);
+  result.findings.insert(result.findings.end(), contradictions.begin(), contradictions.end());
+  std::ranges::stable_sort(result.findings, std::ranges::greater{}, &Finding::severity);
+  result.accepted = take_accepted(result.findings, claimed.accepted);
+  return result;
+}
+
+}  // namespace
 
 service::Assessment assess_both_ways(const rating::Problem& problem, const service::Service& service) {
   service::Assessment assessment = service::assess(problem, service);
@@ -13,28 +131,24 @@ service::Assessment assess_both_ways(const rating::Problem& problem, const servi
   return assessment;
 }
 
+report::Result rate(const case_io::Document& document, std::optional<units::System> display) {
+  auto cases = case_io::build_all(document);
+  for (auto& one : cases) one.display = display.value_or(one.display);
+  auto result = without_claims(cases);
+  const auto found = std::ranges::find(cases, cases[0].claims.operating_case, &case_io::Case::operating_case);
+  const std::size_t named = found == cases.end() ? 0 : static_cast<std::size_t>(found - cases.begin());
+  if (!document.blocks.contains("present")) {
+    const service::Assessment assessment = result.cases[named].design_fouling;
+    return completed(std::move(result), cases[named], assessment);
+  }
+  const auto as_built = case_io::build(case_io::as_built(document, cases[named].operating_case));
+  return completed(std::move(result), as_built, service::assess(as_built.problem, service_of(as_built)));
+}
+
 report::Result rate(const case_io::Case& a_case) {
-  service::Service service = a_case.service;
-  service.words = a_case.display;
-  report::Result result{.file = std::filesystem::path(a_case.file).filename().string(),
-                        .title = a_case.title,
-                        .tag = a_case.tag,
-                        .input_sha256 = a_case.sha256,
-                        .display = a_case.display,
-                        .assessment = assess_both_ways(a_case.problem, service),
-                        .inputs = a_case.inputs,
-                        .assumed = a_case.assumed,
-                        .findings = a_case.findings};
-  const service::Assessment* const assessed[] = {&result.assessment};
-  result.spread = how_sure(assessed).front();
-  qualify(result.assessment, result.spread);
-  const auto& judged = result.assessment.findings;
-  result.findings.insert(result.findings.end(), judged.begin(), judged.end());
-  result.claims = bids::audit(a_case.claims, result.assessment);
-  const auto contradictions = bids::findings_of(result.claims);
-  result.findings.insert(result.findings.end(), contradictions.begin(), contradictions.end());
-  std::ranges::stable_sort(result.findings, std::ranges::greater{}, &Finding::severity);
-  return result;
+  auto result = without_claims({a_case});
+  const service::Assessment assessment = result.assessment;
+  return completed(std::move(result), a_case, assessment);
 }
 
 }  // namespace dutygauge::explore

@@ -36,11 +36,18 @@ void duty_rows(const Result& result, const rating::Outcome& outcome, std::vector
   };
   if (margins.required_duty && margins.duty)
     add(at_least_or_most(true, figures.number(*margins.required_duty, Kind::power)), *margins.duty, "short");
+  if (margins.required_duty && result.cases.size() == 1 && result.cases[0].clean.rating.outcome) {
+    const double clean = result.cases[0].clean.rating.outcome->duty;
+    const double fraction = clean / *margins.required_duty - 1.0;
+    rows.push_back({"  duty, if clean", figures.number(clean, Kind::power), figures.unit(Kind::power),
+                    at_least_or_most(true, figures.number(*margins.required_duty, Kind::power)),
+                    signed_percent(fraction), std::string(limit_word(fraction, "short"))});
+  }
   for (const auto& demand : result.assessment.service.demands)
     if (demand.quantity == Quantity::duty && !demand.at_least)
       add(at_least_or_most(false, figures.number(demand.limit, Kind::power)),
           1.0 - outcome.duty / demand.limit, "over");
-  if (rows.back().front() != duty.front()) {
+  if (!rows.back().front().starts_with(duty.front())) {
     rows.push_back(duty);
     rows.back().insert(rows.back().end(), {no_limit, "", ""});
   }
@@ -132,6 +139,7 @@ void velocity_rows(const Result& result, const rating::Outcome& outcome, std::ve
 }  // namespace
 
 void how_much(Page& page, const Result& result) {
+  if (result.cases.size() > 1) return how_much_of_cases(page, result);
   const auto& outcome = *result.assessment.rating.outcome;
   std::vector<Row> rows = {{"HOW MUCH     running free, design fouling", "", "", "limit", "margin", ""}};
   duty_rows(result, outcome, rows);

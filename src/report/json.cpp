@@ -1,4 +1,5 @@
 #include <fmt/core.h>
+#include <algorithm>
 #include <cmath>
 
 #include <nlohmann/json.hpp>
@@ -166,6 +167,30 @@ Json state(const service::Assessment& assessment, const MaybeSpread& spread) {
           {"margins", margins(assessment.margins)}, {"spread", spread_json(spread)}};
 }
 
+// One case with its states. Results made of a single assessment have no case list.
+Json operating_case(const RatedCase& one) {
+  Json json = state(one.design_fouling, one.spread);
+  const Json fouled = json;
+  json["states"] = {{"clean", state(one.clean, one.spread_clean)}, {"design_fouling", fouled}};
+  return json;
+}
+
+Json operating_cases(const Result& result) {
+  Json json = Json::object();
+  for (const auto& one : result.cases) json[one.name] = operating_case(one);
+  if (result.cases.empty()) json["base"] = state(result.assessment, result.spread);
+  return json;
+}
+
+Json states(const Result& result) {
+  if (result.cases.empty()) return {{"design_fouling", state(result.assessment, result.spread)}};
+  return operating_case(result.cases[result.governing])["states"];
+}
+
+std::string name_of_case(const Result& result) {
+  return result.cases.empty() ? "base" : result.cases[result.governing].name;
+}
+
 Json solutions(const service::Assessment& assessment) {
   const auto one = [](const std::optional<double>& duty) {
     return duty ? Json{{"duty_W", *duty}} : Json(nullptr);
@@ -216,20 +241,32 @@ Json assumed(const Assumptions& assumptions) {
   return list;
 }
 
-Json findings(const Findings& all) {
+// Whether a finding is one of the exchanger in its first case, or came with another.
+std::string since(const Finding& finding, const Result& result) {
+  if (result.cases.empty() || finding.id.starts_with("claims.")) return "base";
+  const auto& first = result.cases.front().findings;
+  return std::ranges::find(first, finding.id, &Finding::id) == first.end() ? "this_case" : "base";
+}
+
+Json finding(const Finding& one, const Result& result, const AcceptedFinding* decision) {
+  const auto citation = sources::citation(one.source);
+  return {{"id", one.id},
+          {"severity", word(one.severity)},
+          {"ground", word(one.ground)},
+          {"since", since(one, result)},
+          {"text", sentence(one, units::System::metric)},
+          {"value", in_json_unit(one.value, one.kind)},
+          {"limit", in_json_unit(one.limit, one.kind)},
+          {"unit", units::json_unit(one.kind)},
+          {"source", citation.empty() ? one.source : std::string(citation)},
+          {"accepted",
+           decision == nullptr ? Json(nullptr) : Json{{"because", decision->because}, {"by", decision->by}}}};
+}
+
+Json findings(const Result& result) {
   Json list = Json::array();
-  for (const auto& one : all) {
-    const auto citation = sources::citation(one.source);
-    list.push_back({{"id", one.id},
-                    {"severity", word(one.severity)},
-                    {"ground", word(one.ground)},
-                    {"since", "base"},
-                    {"text", sentence(one, units::System::metric)},
-                    {"value", in_json_unit(one.value, one.kind)},
-                    {"limit", in_json_unit(one.limit, one.kind)},
-                    {"unit", units::json_unit(one.kind)},
-                    {"source", citation.empty() ? one.source : std::string(citation)}});
-  }
+  for (const auto& one : result.findings) list.push_back(finding(one, result, nullptr));
+  for (const auto& one : result.accepted) list.push_back(finding(one.finding, result, &one));
   return list;
 }
 
@@ -281,12 +318,11 @@ std::string one_line(const Json& json) {
 
 std::string json(const Result& result) {
   const auto& assessment = result.assessment;
-  const Json this_state = state(assessment, result.spread);
   return one_line({{"dutygauge", DUTYGAUGE_VERSION},
                    {"schema_version", schema_version},
                    {"input_sha256", result.input_sha256},
                    {"case", {{"file", result.file}, {"title", result.title}, {"tag", result.tag}}},
-                   {"operating_case", "base"},
+                   {"operating_case", name_of_case(result)},
                    {"verdict", verdict(assessment, result.spread)},
                    {"thermal", thermal(assessment)},
                    {"resistances_m2K_W", resistances(assessment)},
@@ -295,10 +331,10 @@ std::string json(const Result& result) {
                    {"margins", margins(assessment.margins)},
                    {"spread", spread_json(result.spread)},
                    {"solutions", solutions(assessment)},
-                   {"states", {{"design_fouling", this_state}}},
-                   {"operating_cases", {{"base", this_state}}},
+                   {"states", states(result)},
+                   {"operating_cases", operating_cases(result)},
                    {"assumed", assumed(result.assumed)},
-                   {"findings", findings(result.findings)},
+                   {"findings", findings(result)},
                    {"claims", claims(result.claims)},
                    {"inputs", inputs(result.inputs)},
                    {"between_shells", between_shells(assessment)},

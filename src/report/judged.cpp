@@ -15,6 +15,7 @@ namespace {
 
 using units::Kind;
 
+constexpr std::size_t most_findings_of_cases = 3;  // a page of several cases is one screen too
 constexpr std::size_t most_assumptions = 5, most_findings = 5, most_tasks = 3, most_named = 4;
 constexpr std::string_view unchecked = "Tube vibration and mechanical strength are not checked.";
 
@@ -123,6 +124,21 @@ std::string counted(const Findings& findings) {
   return listed(parts);
 }
 
+// "1 accepted (id)", or nothing.
+std::string accepted_in_words(const std::vector<AcceptedFinding>& accepted) {
+  if (accepted.empty()) return "";
+  std::vector<std::string> ids;
+  for (const auto& one : accepted)
+    if (std::ranges::find(ids, one.finding.id) == ids.end()) ids.push_back(one.finding.id);
+  return fmt::format("{} accepted ({})", ids.size(), listed(ids));
+}
+
+// "In the case hot water, " where there are several.
+std::string in_the_case(const Result& result) {
+  if (result.cases.size() < 2) return "";
+  return fmt::format("In the case {}, ", ascii(result.cases[result.governing].name));
+}
+
 }  // namespace
 
 void how_sure(Page& page, const Result& result) {
@@ -154,7 +170,8 @@ void what_limits(Page& page, const Result& result) {
   const auto& assessment = result.assessment;
   std::string name = "WHAT LIMITS";
   if (const auto line = tightest_line(assessment); !line.empty()) {
-    page.section(name, fmt::format("The {} is the tightest line of the service.", line));
+    page.section(name, fmt::format("{} {} is the tightest line of the service.",
+                                   result.cases.size() > 1 ? in_the_case(result) + "the" : "The", line));
     name.clear();
   }
   page.section(name, where_the_difference_goes(assessment) + ".");
@@ -178,12 +195,17 @@ void assumed(Page& page, const Result& result, const TextOptions& options) {
 
 void rules(Page& page, const Result& result, const TextOptions& options) {
   const auto& findings = result.findings;
+  const std::string decided = accepted_in_words(result.accepted);
   if (findings.empty()) {
-    page.section("RULES", "No finding from the checks made. " + std::string(unchecked));
+    page.section("RULES",
+                 fmt::format("No {}finding from the checks made{}. {}", decided.empty() ? "" : "other ",
+                             decided.empty() ? "" : "; " + decided, unchecked));
     return;
   }
-  page.section("RULES", counted(findings) + ". " + std::string(unchecked));
-  const std::size_t shown = options.all ? findings.size() : std::min(findings.size(), most_findings);
+  page.section("RULES",
+               fmt::format("{}{}. {}", counted(findings), decided.empty() ? "" : "; " + decided, unchecked));
+  const std::size_t most = result.cases.size() > 1 ? most_findings_of_cases : most_findings;
+  const std::size_t shown = options.all ? findings.size() : std::min(findings.size(), most);
   for (std::size_t i = 0; i < shown; ++i) {
     const auto& finding = findings[i];
     std::string said = fmt::format("{} ({})", sentence(finding, result.display), finding.id);
@@ -191,6 +213,11 @@ void rules(Page& page, const Result& result, const TextOptions& options) {
     if (options.all && !citation.empty()) said += fmt::format(" [{}]", citation);
     page.paragraph(fmt::format("  {:<8}", word(finding.severity)), said);
   }
+  for (const auto& one : result.accepted)
+    if (options.all)
+      page.paragraph(fmt::format("  {:<8}", "accepted"),
+                     fmt::format("{} ({}): {}; {}", sentence(one.finding, result.display), one.finding.id,
+                                 one.because, one.by));
   if (shown < findings.size()) page.line(fmt::format("  {} more: -v", findings.size() - shown));
 }
 

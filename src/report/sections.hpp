@@ -11,6 +11,9 @@ void sheet_contradicts(Page& page, const Result& result);
 /// Claims beside what was found: contradictions and questions; all of them with -v.
 void claims(Page& page, const Result& result, const TextOptions& options);
 void answer(Page& page, const Result& result);
+/// The same where several operating cases are rated: a word for each, and a row a case and state.
+void answer_of_cases(Page& page, const Result& result);
+void how_much_of_cases(Page& page, const Result& result);
 void how_much(Page& page, const Result& result);
 void how_sure(Page& page, const Result& result);
 void what_limits(Page& page, const Result& result);

@@ -19,8 +19,14 @@ std::string held_stream(const rating::Problem& problem, Side side, const Figures
 void closing(Page& page, const Result& result) {
   const auto& problem = result.assessment.problem;
   const Figures figures(result.display);
-  page.paragraph("Held constant: ", held_stream(problem, Side::shell, figures) + "; " +
-                                        held_stream(problem, Side::tube, figures) + ".");
+  if (!result.present_since.empty())
+    page.line(fmt::format("The unit is rated as it is since {}; claims are checked as built.",
+                          result.present_since));
+  const std::string of_case =
+      result.cases.size() > 1 ? fmt::format(" ({})", ascii(result.cases[result.governing].name)) : "";
+  page.paragraph(
+      fmt::format("Held constant{}: ", of_case),
+      held_stream(problem, Side::shell, figures) + "; " + held_stream(problem, Side::tube, figures) + ".");
   page.line(
       "Engineering aid, not a code calculation; defer to local codes and licensed practice. "
       "dutygauge " DUTYGAUGE_VERSION);
@@ -39,6 +45,7 @@ void heading(Page& page, const Result& result) {
 }
 
 void answer(Page& page, const Result& result) {
+  if (result.cases.size() > 1) return answer_of_cases(page, result);
   const auto& rating = result.assessment.rating;
   page.section("ANSWER",
                rating.outcome ? result.assessment.verdict.text : "No result: " + rating.no_result + ".");
