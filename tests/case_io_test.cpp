@@ -53,7 +53,8 @@ Document rewritten(Document document, units::System system) {
     if (input.is_word || unit.empty() || leaf == document.leaves.end()) continue;
     std::string& text = leaf->second.text;
     if (text.find("->") != std::string::npos) continue;
-    const std::string place = text.ends_with(" at inlet") ? " at inlet" : "";
+    const auto at = text.find(" at ");
+    const std::string place = at == std::string::npos ? "" : text.substr(at);
     const bool is_absolute = input.kind == Kind::pressure;
     text = is_absolute ? fmt::format("{:.17g} {}", units::from_si(input.si, "psia", input.kind), "psia")
                        : fmt::format("{:.17g} {}{}", units::from_si(input.si, unit, input.kind), unit, place);
@@ -280,8 +281,7 @@ TEST_CASE("case_io: fluids come by name, as constants, columns and rows") {
 TEST_CASE("case_io: a volume flow is measured where it says") {
   const auto made = fluids::make_water(302.15, 4e5);
   const auto at_60 = built(good::with("62 m3/h at inlet", "62 m3/h at 60 degF"));
-  const double density =
-      fluids::state(made.fluid, units::to_si(60, "degF", Kind::temperature), 4e5).density;
+  const double density = fluids::state(made.fluid, units::to_si(60, "degF", Kind::temperature), 4e5).density;
   CHECK(relative(at_60.problem.tube_side.mass_flow, density * 62.0 / 3600.0) < 1e-12);
 }
 

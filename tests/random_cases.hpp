@@ -16,6 +16,13 @@ class Generator {
 
   dutygauge::rating::Problem next_of_any_shell() { return next({'E', 'F', 'G', 'H', 'J', 'X'}); }
 
+  double between(double low, double high) { return std::uniform_real_distribution(low, high)(engine_); }
+  int whole(int low, int high) { return std::uniform_int_distribution(low, high)(engine_); }
+  template <class T>
+  T one_of(std::vector<T> choices) {
+    return choices[static_cast<std::size_t>(whole(0, static_cast<int>(choices.size()) - 1))];
+  }
+
  private:
   dutygauge::rating::Problem next(const std::vector<char>& shells) {
     for (;;) {
@@ -39,13 +46,6 @@ class Generator {
         continue;
       return problem;
     }
-  }
-
-  double between(double low, double high) { return std::uniform_real_distribution(low, high)(engine_); }
-  int whole(int low, int high) { return std::uniform_int_distribution(low, high)(engine_); }
-  template <class T>
-  T one_of(std::vector<T> choices) {
-    return choices[static_cast<std::size_t>(whole(0, static_cast<int>(choices.size()) - 1))];
   }
 
   dutygauge::geometry::Description description() {

@@ -66,7 +66,7 @@ struct ClaimVerdict {
   double stated = 0;               ///< SI
   std::optional<double> computed;  ///< SI; empty where not checked
   units::Kind kind = units::Kind::ratio;
-  std::optional<double> ratio;  ///< stated / computed; outlets: of the heats they stand for
+  std::optional<double> ratio;  ///< stated / computed; outlets: of their heats, margins: of the surfaces
   Ground ground = Ground::arithmetic;
   Agreement verdict = Agreement::not_checked;
   std::string against;      ///< what `computed` is

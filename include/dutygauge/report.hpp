@@ -25,6 +25,28 @@ struct AcceptedFinding {
   std::string because, by;
 };
 
+/// What an assumption is worth: how far a margin moves when the value lies at an end of
+/// its span.
+struct Effect {
+  /// Duty margin [-], distance of the governing outlet from its limit [K], or what is left of
+  /// an allowable pressure drop (of the drop itself where none is allowed) [-].
+  enum class Margin { duty, temperature, pressure_drop };
+  Margin margin = Margin::duty;
+  std::optional<double> at_low, at_high;  ///< change of the margin; empty: no result there
+  double size = 0;                        ///< largest change of the duty or the drop, relative
+  bool changes_answer = false;            ///< a line or a drop holds at one end and not at the other
+};
+
+/// Something that can be done, and what it buys and costs.
+struct Lever {
+  std::string what;                              ///< "10 % more cooling water"
+  std::string key;                               ///< input that is changed; empty for several
+  bool in_kelvin = false;                        ///< `gain` is of an outlet's distance from its limit [K]
+  double gain = 0;                               ///< else of the duty, relative to the duty now [-]
+  double shell_drop = 0, tube_drop = 0;          ///< with it [Pa]
+  bool costs_shell = false, costs_tube = false;  ///< that drop rises by more than 1 %
+};
+
 /// Everything a page or a JSON object is made from.
 struct Result {
   std::string file;  ///< base name, "-" for standard input
@@ -40,6 +62,8 @@ struct Result {
   std::vector<RatedCase> cases = {};  ///< in file order
   std::size_t governing = 0;          ///< of `cases`
   std::string present_since = {};     ///< the unit is rated as it is since that day; empty: as built
+  std::vector<std::optional<Effect>> effects = {};  ///< one for each of `assumed`, or none at all
+  std::vector<Lever> levers = {};                   ///< the strongest first
 };
 
 struct TextOptions {

@@ -59,6 +59,13 @@ struct Assessment {
 /// Rates a problem and judges it against the service.
 Assessment assess(const rating::Problem& problem, const Service& service);
 
+/// Rates by the problem's own solution alone and judges what runs free: without surface
+/// margins, second opinion and the other solution. For cases rated many times over.
+Assessment judge(const rating::Problem& problem, const Service& service);
+
+/// How far a line is from its limit [K or W]; negative when it does not hold.
+double distance(const Demand& demand, const rating::Outcome& outcome);
+
 /// Actual value [K or W] of what a line speaks of.
 double actual(const Demand& demand, const rating::Outcome& outcome);
 

@@ -14,6 +14,7 @@ using geometry::Exchanger;
 struct Surfaces {
   double effective, gross, gross_with_bends;
   int shells, banks;
+  bool u_tubes;
   double open_fraction;  ///< tubes not plugged
   double sheet_slack;    ///< of the effective one, where the tubesheet's thickness is assumed
   double inside;         ///< inside over outside diameter
@@ -30,6 +31,7 @@ Surfaces surfaces_of(const Exchanger& exchanger) {
           .gross_with_bends = per_length * bends,
           .shells = shells,
           .banks = exchanger.shells_in_parallel,
+          .u_tubes = exchanger.tube_side.u_tubes,
           .open_fraction = static_cast<double>(exchanger.tubes_open) / d.tube_count,
           .sheet_slack = per_length * uncertain,
           .inside = exchanger.tube_side.inside_diameter / d.tube_outside_diameter};
@@ -38,13 +40,13 @@ Surfaces surfaces_of(const Exchanger& exchanger) {
 /// What an area may have been taken for; `whole` is the right one of the unit.
 std::vector<Cause> causes_of(const Surfaces& s, double whole, Per per) {
   const double divisor = per == Per::shell ? s.shells : 1.0;
-  std::vector<Cause> causes = {{0.5 * whole / divisor, "U-tubes counted once: half the surface"},
-                               {2.0 * whole / divisor, "tubes counted as U-tubes: twice the surface"},
-                               {whole * s.inside / divisor, "area is that of the inside surface"}};
+  std::vector<Cause> causes = {{whole * s.inside / divisor, "area is that of the inside surface"}};
   if (s.shells > 1 && per == Per::unit) causes.push_back({whole / s.shells, "area is per shell"});
   if (s.shells > 1 && per == Per::shell)
     causes.push_back({whole, "area is of the whole unit, not per shell"});
   if (s.banks > 1 && s.banks < s.shells) causes.push_back({whole / s.banks, "area is that of one bank"});
+  if (s.u_tubes) causes.push_back({0.5 * whole / divisor, "U-tubes counted once: half the surface"});
+  causes.push_back({2.0 * whole / divisor, "tubes counted as U-tubes: twice the surface"});
   return causes;
 }
 
@@ -75,7 +77,8 @@ void check_areas(Sheet& sheet) {
   if (!sheet.claims.area_effective) {
     sheet.area = with_and_without_plugs(s, s.effective, s.sheet_slack, 1.0);
     if (sheet.claims.area_gross)
-      sheet.area.push_back({sheet.claims.area_gross->value * divisor, sheet.claims.area_gross->rounding});
+      sheet.area.push_back(
+          {sheet.claims.area_gross->value * divisor, sheet.claims.area_gross->rounding * divisor});
   }
   Check gross{.key = "area.gross",
               .computed = with_and_without_plugs(s, s.gross, 0.0, divisor),

@@ -63,7 +63,7 @@ Findings findings_of(const std::vector<ClaimVerdict>& verdicts) {
   for (const ClaimVerdict& verdict : verdicts) {
     if (verdict.verdict != Agreement::contradicts) continue;
     const std::string computed =
-        verdict.computed ? fmt::format("{} gives {{limit}}", verdict.against) : "no value would be right";
+        verdict.computed ? fmt::format("by {} it is {{limit}}", verdict.against) : "no value would be right";
     findings.push_back({.id = "claims.contradicts",
                         .severity = Severity::should,
                         .text = fmt::format("the sheet states {} of {{value}}, but {}: {}; ask whoever wrote "

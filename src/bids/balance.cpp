@@ -84,7 +84,9 @@ std::vector<Vote> votes_of(const Sheet& sheet) {
 }
 
 double difference(const Number& a, const Number& b) {
-  return std::max(0.0, std::abs(a.value - b.value) - a.slack - b.slack) / std::abs(b.value);
+  const double apart = std::abs(a.value - b.value) - a.slack - b.slack;
+  // A heat that is not known is far from every other; max would take it for equal.
+  return std::isfinite(apart) ? std::max(0.0, apart) / std::abs(b.value) : 1.0;
 }
 
 /// The heat most votes agree with; between equals the outlets come before the duty.

@@ -108,7 +108,9 @@ void check_correction(Sheet& sheet) {
                          shells == 1 ? "one shell, not several" : fmt::format("{} shells", shells))});
     }
   }
-  sheet.f_correction = judge(sheet, sheet.claims.f_correction, check);
+  auto claim = sheet.claims.f_correction;
+  if (claim && claim->value == 1.0) claim->rounding = 0.0;  // a statement, not a rounded number
+  sheet.f_correction = judge(sheet, claim, check);
 }
 
 void check_product(Sheet& sheet) {

@@ -27,11 +27,15 @@ void check_count(Sheet& sheet) {
               .computed = {{holes, 0.0}},
               .ground = Ground::geometry,
               .against = "the holes of the drawing",
-              .causes = {{0.5 * holes, "U-tubes are counted, not holes"},
-                         {2.0 * holes, "holes of both legs counted twice: U-tubes given as tubes"},
-                         {holes - exchanger.as_described.plugged, "plugged tubes are left out"}},
+              .causes =
+                  {
+                      {0.5 * holes, "U-tubes are counted, not holes"},
+                      {2.0 * holes, "holes of both legs counted twice: U-tubes given as tubes"},
+                  },
               .otherwise = "another count than the drawing's",
               .if_empty = ""};
+  if (const int plugged = exchanger.as_described.plugged; plugged > 0)
+    check.causes.push_back({holes - plugged, "plugged tubes are left out"});
   if (shells > 1) check.causes.push_back({shells * holes, "tubes of all shells, not of one"});
   // A count is exact: 1 % of it would be several tubes.
   if (claim && claim->value != holes && fits(*claim, {holes, 0.0})) {
@@ -102,42 +106,56 @@ void check_velocity(Sheet& sheet) {
   judge(sheet, sheet.claims.tube_side_velocity, check);
 }
 
-void check_nozzles(Sheet& sheet) {
+struct Nozzle {
+  const char* name;
+  double rho_v2;  ///< [kg/m.s2]
+};
+
+/// Those with a bore, the shell inlet first.
+std::vector<Nozzle> nozzles_of(const Sheet& sheet) {
   const auto& problem = sheet.problem();
   const auto& d = problem.exchanger.as_described;
+  std::vector<Nozzle> nozzles;
+  const auto add = [&](const char* name, const std::optional<double>& bore, const rating::Stream& stream,
+                       double temperature) {
+    if (!bore) return;
+    const double flux = stream.mass_flow / problem.exchanger.shells_in_parallel / (0.25 * pi * *bore * *bore);
+    nozzles.push_back({name, flux * flux / density(stream, temperature)});
+  };
   const auto outlet = [](const Numbers& of, const rating::Stream& stream) {
     return of.empty() ? stream.inlet_temperature : of.front().value;
   };
-  struct Nozzle {
-    const char* name;
-    const std::optional<double>& bore;
-    const rating::Stream& stream;
-    double temperature;
-  };
-  const Nozzle nozzles[] = {
-      {"shell inlet", d.shell_nozzle_in, problem.shell_side, problem.shell_side.inlet_temperature},
-      {"tube-side inlet", d.tube_nozzle_in, problem.tube_side, problem.tube_side.inlet_temperature},
-      {"shell outlet", d.shell_nozzle_out, problem.shell_side,
-       outlet(sheet.shell_outlet, problem.shell_side)},
-      {"tube-side outlet", d.tube_nozzle_out, problem.tube_side,
-       outlet(sheet.tube_outlet, problem.tube_side)}};
-  const int banks = problem.exchanger.shells_in_parallel;
+  const auto &shell = problem.shell_side, &tube = problem.tube_side;
+  add("shell inlet", d.shell_nozzle_in, shell, shell.inlet_temperature);
+  add("tube-side inlet", d.tube_nozzle_in, tube, tube.inlet_temperature);
+  add("shell outlet", d.shell_nozzle_out, shell, outlet(sheet.shell_outlet, shell));
+  add("tube-side outlet", d.tube_nozzle_out, tube, outlet(sheet.tube_outlet, tube));
+  return nozzles;
+}
+
+void check_nozzles(Sheet& sheet) {
+  const auto& claim = sheet.claims.nozzle_rho_v2;
+  const int banks = sheet.problem().exchanger.shells_in_parallel;
   Check check{.key = "nozzle_rho_v2",
               .computed = {},
               .ground = Ground::geometry,
               .against = "flow and bore of a nozzle",
               .otherwise = "rho v2 of another flow or bore than any nozzle drawn has",
               .if_empty = "no nozzle bore is given"};
-  for (const Nozzle& nozzle : nozzles) {
-    if (!nozzle.bore) continue;
-    const double flux = nozzle.stream.mass_flow / banks / (0.25 * pi * *nozzle.bore * *nozzle.bore);
-    const double value = flux * flux / density(nozzle.stream, nozzle.temperature);
-    check.computed.push_back({value, 0.0});
-    if (banks > 1) check.causes.push_back({value * banks * banks, "the whole flow through one nozzle"});
-    check.causes.push_back(
-        {0.5 * value, fmt::format("velocity head (half of rho v2) of the {} nozzle", nozzle.name)});
+  std::optional<Number> meant;  // of the nozzle whose slip the claim is
+  for (const Nozzle& nozzle : nozzles_of(sheet)) {
+    check.computed.push_back({nozzle.rho_v2, 0.0});
+    const Cause slips[] = {
+        {0.5 * nozzle.rho_v2, fmt::format("velocity head (half of rho v2) of the {} nozzle", nozzle.name)},
+        {banks > 1 ? nozzle.rho_v2 * banks * banks : std::nan(""), "the whole flow through one nozzle"}};
+    for (const Cause& slip : slips) {
+      check.causes.push_back(slip);
+      if (claim && !meant && fits(*claim, {slip.value, 0.0})) meant = Number{nozzle.rho_v2, 0.0};
+    }
   }
-  judge(sheet, sheet.claims.nozzle_rho_v2, check);
+  const bool is_right = claim && !check.computed.empty() && fits(*claim, *nearest(*claim, check.computed));
+  if (meant && !is_right) check.computed = {*meant};
+  judge(sheet, claim, check);
 }
 
 }  // namespace

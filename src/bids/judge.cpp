@@ -114,7 +114,8 @@ Numbers judge(Sheet& sheet, const std::optional<Stated>& stated, const Check& ch
                        .against = check.against};
   if (computed) {
     verdict.computed = computed->value;
-    if (computed->value != 0.0) verdict.ratio = stated->value / computed->value;
+    const double whole = computed->value + check.scale_offset;
+    if (whole != 0.0) verdict.ratio = (stated->value + check.scale_offset) / whole;
   }
   if (computed && fits(*stated, *computed, check.scale_offset))
     verdict.verdict = Agreement::agrees;

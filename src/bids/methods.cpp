@@ -8,8 +8,8 @@
 namespace dutygauge::bids {
 namespace {
 
-// Two standard deviations and less of the scatter published for our methods (Palen & Taborek
-// 1969 for the shell side, recalled): a question beyond, never a contradiction.
+// A question beyond, never a contradiction. This project's own choice, after the scatter
+// published for such methods (shell side: Palen & Taborek 1969, recalled).
 constexpr double film_scatter = 0.25, shell_drop_scatter = 0.40, tube_drop_scatter = 0.20;
 
 struct Beside {
@@ -70,7 +70,7 @@ void check_films(Sheet& sheet, const rating::Outcome& outcome) {
                 claims.shell_side_film,
                 shell,
                 film_scatter,
-                "palen_1969",
+                "palen_taborek_1969",
                 {{outcome.local.shell_film.ideal, "film of the ideal bank, without leakage and bypass"}},
                 "another method, or leakage and bypass counted differently"};
   if (const auto& kern = sheet.ours.second_opinion)
@@ -82,14 +82,14 @@ void check_films(Sheet& sheet, const rating::Outcome& outcome) {
               claims.u_dirty,
               outcome.local.u_dirty,
               coefficient_scatter(r, r.sum()),
-              "palen_1969",
+              "palen_taborek_1969",
               {{outcome.local.u_clean, "U clean printed as U dirty"}},
               films});
   put(sheet, {"u_clean",
               claims.u_clean,
               outcome.local.u_clean,
               coefficient_scatter(r, r.clean_sum()),
-              "palen_1969",
+              "palen_taborek_1969",
               {{outcome.local.u_dirty, "U dirty printed as U clean"}},
               films});
 }
@@ -105,7 +105,7 @@ void check_drops(Sheet& sheet, const rating::Outcome& outcome) {
                   claims.shell_side_pressure_drop,
                   shell,
                   shell_drop_scatter,
-                  "palen_1969",
+                  "palen_taborek_1969",
                   {printed(sheet.ours.service.shell_side_allowable_drop),
                    {shell - outcome.shell_drop.nozzles, "nozzles left out"}},
                   "leakage, clearances or nozzles counted differently"};

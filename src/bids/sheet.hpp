@@ -48,7 +48,7 @@ struct Check {
   std::vector<Cause> causes = {};
   std::string otherwise{};    ///< the cause where none of the above explains it
   std::string if_empty{};     ///< why it was not checked, where nothing was computed
-  double scale_offset = 0;    ///< 1 % is of |computed + offset|
+  double scale_offset = 0;    ///< 1 % and the ratio are of computed + offset
   bool nothing_fits = false;  ///< nothing computed because no value could be right
 };
 

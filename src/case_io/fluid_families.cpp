@@ -66,10 +66,10 @@ std::optional<Made> two_point(const Source& source) {
     second.*member = found->second.second;
     return true;
   };
-  const bool complete = take("at", &fluids::PropertyRow::temperature) &
-                        take("density", &fluids::PropertyRow::density) &
-                        take("heat_capacity", &fluids::PropertyRow::heat_capacity) &
-                        take("conductivity", &fluids::PropertyRow::conductivity) &
+  const bool complete = take("at", &fluids::PropertyRow::temperature) &&
+                        take("density", &fluids::PropertyRow::density) &&
+                        take("heat_capacity", &fluids::PropertyRow::heat_capacity) &&
+                        take("conductivity", &fluids::PropertyRow::conductivity) &&
                         take("viscosity", &fluids::PropertyRow::viscosity);
   if (!complete) return {};
   return fluids::make_two_point(first, second, phase_of(source));

@@ -80,6 +80,8 @@ std::string kind_of(const Field& field) {
     case Form::whole:
     case Form::whole_or_list:
       return "whole number";
+    case Form::number:
+      return "plain number";
     case Form::flow:
       return "flow";
     case Form::fluid:

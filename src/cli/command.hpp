@@ -30,15 +30,19 @@ struct Option {
   std::string_view letter;  ///< one letter, or empty
   std::string_view value;   ///< what stands for its value in the help, or empty
   std::string_view help;
+  bool repeats = false;  ///< may be given more than once
 };
 
 /// A command as typed, its options checked against its table.
 struct Call {
-  std::map<std::string, std::string, std::less<>> options;  ///< flags with an empty text
-  std::vector<std::string> arguments;                       ///< everything else, in order
+  std::map<std::string, std::string, std::less<>> options;                ///< flags with an empty text
+  std::map<std::string, std::vector<std::string>, std::less<>> repeated;  ///< of options that repeat
+  std::vector<std::string> arguments;                                     ///< everything else, in order
 
   bool has(std::string_view option) const { return options.contains(option); }
   std::optional<std::string> value(std::string_view option) const;
+  /// All values of an option that repeats, in order.
+  std::vector<std::string> all(std::string_view option) const;
 };
 
 struct Streams {
@@ -79,16 +83,26 @@ std::string wrapped(std::string_view lead, std::string_view text);
 /// The system of units asked for with --units. Throws CallError.
 std::optional<units::System> units_asked_for(const Call& call);
 
-/// Refuses, before any work is done, a target of --out that exists without --force. Throws CallError.
+/// How many at a time, by --jobs; 1 without. Throws CallError.
+std::size_t jobs_asked_for(const Call& call);
+
+/// Refuses, before any work is done, a target of --out or --csv that exists without --force. Throws
+/// CallError.
 void check_target(const Call& call);
 
 /// Writes a result to where --out says, else to `out`. Throws WriteError.
 void deliver(const Call& call, const std::string& result, std::ostream& out);
 
+/// The same for the option that names the file.
+void deliver_to(std::string_view option, const Call& call, const std::string& result, std::ostream& out);
+
 inline constexpr Option out_option = {"out", "o", "FILE", "write the result to FILE; - is standard output"};
 inline constexpr Option force_option = {"force", "", "", "let --out replace a file that exists"};
 
 int run_rate(const Call& call, Streams streams);
+int run_sweep(const Call& call, Streams streams);
+int run_reach(const Call& call, Streams streams);
+int run_compare(const Call& call, Streams streams);
 int run_explain(const Call& call, Streams streams);
 int run_new(const Call& call, Streams streams);
 int run_schema(const Call& call, Streams streams);

@@ -16,6 +16,44 @@ constexpr Option rate_options[] = {
     {"verbose", "v", "", "all findings and assumptions, with sources; what was done, on stderr"},
     {"quiet", "q", "", "no notes on stderr, errors only"}};
 
+constexpr Option units_option = {"units", "", "SYSTEM", "units of the page: si, metric or us"};
+constexpr Option one_json_option = {"json", "", "", "one JSON object, in SI"};
+constexpr Option case_option = {"case", "", "NAME", "which operating case; without it, the first"};
+constexpr Option points_at_a_time = {"jobs", "", "N",
+                                     "rate N points at a time; the result is the same for any N"};
+
+constexpr std::string_view sweep_examples[] = {
+    "dutygauge sweep cooler.yaml --vary 'streams.tube_side.inlet.temperature=26..34 degC:9'",
+    "dutygauge sweep cooler.yaml --vary streams.shell_side.flow=x0.8..x1.2:5 --csv flows.csv"};
+constexpr Option sweep_options[] = {
+    {"vary", "", "KEY=RANGE", "FROM..TO:STEPS with a unit, or factors; once or twice", true},
+    one_json_option,
+    {"csv", "", "FILE", "the table as CSV in SI; - is standard output, instead of the page"},
+    case_option,
+    units_option,
+    points_at_a_time,
+    out_option,
+    force_option};
+
+constexpr std::string_view reach_examples[] = {
+    "dutygauge reach cooler.yaml --push streams.shell_side.flow",
+    "dutygauge reach cooler.yaml --push streams.shell_side.flow --over "
+    "'streams.tube_side.inlet.temperature=26..34 degC:5'"};
+constexpr Option reach_options[] = {
+    {"push", "", "KEY", "the input that is pushed; KEY=RANGE to look through a range of your own"},
+    {"over", "", "KEY=RANGE", "a second input: FROM..TO:STEPS with a unit, or factors"},
+    one_json_option,
+    case_option,
+    units_option,
+    points_at_a_time,
+    out_option,
+    force_option};
+
+constexpr std::string_view compare_examples[] = {
+    "dutygauge compare before.yaml after.yaml          what changed going in, and coming out",
+    "dutygauge compare --json before.yaml after.yaml   the same for a script"};
+constexpr Option compare_options[] = {case_option, one_json_option, units_option, out_option, force_option};
+
 constexpr std::string_view explain_examples[] = {
     "dutygauge explain exchanger.baffles.cut            what a key of the case file means",
     "dutygauge explain streams.shell_side.fouling       and how it may be written"};
@@ -67,6 +105,21 @@ constexpr Command table[] = {
      "CASE is a case file, a folder (all its *.yaml, by name) or - for standard input. A case at fault does "
      "not stop the others. Scripts should read --json: the page is for people and may change.",
      run_rate},
+    {"sweep", "rate a case over one or two inputs, as a table", "[OPTION]... CASE --vary KEY=RANGE...",
+     sweep_examples, sweep_options,
+     "A range is FROM..TO UNIT:STEPS, or factors on what the case says, x0.8..x1.2:5; both ends are rated. A "
+     "point without a result says why. The status is 0 where any point has a result, whether or not the "
+     "service is met there.",
+     run_sweep},
+    {"reach", "say how far an input can go, and what stops it", "[OPTION]... CASE --push KEY", reach_examples,
+     reach_options,
+     "Looks both ways from the case's own value, from a fifth to five times it (temperatures: 60 K either "
+     "way), for the lines of the service, the allowable pressure drops, the tube velocity, the ranges of the "
+     "fluids and what can be built. A limit that is met and left again within one step of the search (4 %, "
+     "1.5 K) can be missed: a range of your own makes finer steps.",
+     run_reach},
+    {"compare", "say what changed between two cases, going in and coming out", "[OPTION]... A B",
+     compare_examples, compare_options, "", run_compare},
     {"fluid", "show a fluid's properties", "[OPTION]... SPEC", fluid_examples, fluid_options,
      "SPEC is what stands under 'fluid:' in a case, in YAML flow style; in quotes where it holds blanks. "
      "JSON "

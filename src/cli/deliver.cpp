@@ -21,8 +21,8 @@ struct Temporary {
   }
 };
 
-std::optional<std::string> target(const Call& call) {
-  const auto file = call.value("out");
+std::optional<std::string> target(const Call& call, std::string_view option) {
+  const auto file = call.value(option);
   return file == "-" ? std::nullopt : file;
 }
 
@@ -42,15 +42,21 @@ void write_file(const std::string& file, const std::string& result) {
 }  // namespace
 
 void check_target(const Call& call) {
-  const auto file = target(call);
-  if (file && file->empty())
-    throw CallError("--out: the file has no name; give one, or - for standard output");
-  if (file && std::filesystem::exists(*file) && !call.has("force"))
-    throw CallError(fmt::format("--out: {} exists; give --force to replace it", *file));
+  for (const std::string_view option : {"out", "csv"}) {
+    const auto file = target(call, option);
+    if (file && file->empty())
+      throw CallError(fmt::format("--{}: the file has no name; give one, or - for standard output", option));
+    if (file && std::filesystem::exists(*file) && !call.has("force"))
+      throw CallError(fmt::format("--{}: {} exists; give --force to replace it", option, *file));
+  }
 }
 
 void deliver(const Call& call, const std::string& result, std::ostream& out) {
-  if (const auto file = target(call))
+  deliver_to("out", call, result, out);
+}
+
+void deliver_to(std::string_view option, const Call& call, const std::string& result, std::ostream& out) {
+  if (const auto file = target(call, option))
     write_file(*file, result);
   else
     out << result;

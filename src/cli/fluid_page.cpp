@@ -32,7 +32,7 @@ constexpr Column columns[] = {
     {"viscosity_Pa_s", "viscosity", "viscosity", Kind::viscosity,
      [](const fluids::State& s) { return s.viscosity; }},
     {"enthalpy_J_kg", "", "enthalpy", Kind::enthalpy, [](const fluids::State& s) { return s.enthalpy; }},
-    {"prandtl", "", "Prandtl number", Kind::count, [](const fluids::State& s) { return s.prandtl(); }}};
+    {"prandtl", "", "Prandtl", Kind::count, [](const fluids::State& s) { return s.prandtl(); }}};
 
 std::string number(double value, Kind kind, units::System system) {
   if (kind == Kind::count) return fmt::format("{:.4g}", value);
@@ -97,22 +97,21 @@ std::string single(const FluidRow& row, units::System system) {
 }
 
 std::string several(const FluidTable& table, units::System system) {
-  std::string names = fmt::format("  {:>11}  {:>10}", "temperature", "pressure");
-  std::string units = fmt::format("  {:>11}  {:>10}", units::shown_unit(Kind::temperature, system),
+  std::string names = fmt::format("  {:>11}  {:>8}", "temperature", "pressure");
+  std::string units = fmt::format("  {:>11}  {:>8}", units::shown_unit(Kind::temperature, system),
                                   units::shown_unit(Kind::pressure, system));
+  const auto width = [](const Column& column) { return std::max<std::size_t>(column.words.size(), 9); };
   for (const Column& column : columns) {
-    const bool plain = column.kind == Kind::count;
-    const auto name = plain ? "Prandtl" : column.words;
-    names += fmt::format("  {:>13}", name);
-    units += fmt::format("  {:>13}", plain ? "" : units::shown_unit(column.kind, system));
+    names += fmt::format("  {:>{}}", column.words, width(column));
+    if (column.kind != Kind::count)
+      units += fmt::format("  {:>{}}", units::shown_unit(column.kind, system), width(column));
   }
-  std::string text =
-      names.substr(0, names.size()) + "\n" + units.substr(0, units.find_last_not_of(' ') + 1) + "\n";
+  std::string text = names + "\n" + units + "\n";
   for (const FluidRow& row : table.rows) {
-    text += fmt::format("  {:>11}  {:>10}", number(row.state.temperature, Kind::temperature, system),
+    text += fmt::format("  {:>11}  {:>8}", number(row.state.temperature, Kind::temperature, system),
                         number(row.pressure, Kind::pressure, system));
     for (const Column& column : columns)
-      text += fmt::format("  {:>13}", number(column.value(row.state), column.kind, system));
+      text += fmt::format("  {:>{}}", number(column.value(row.state), column.kind, system), width(column));
     text += "\n";
   }
   return text;

@@ -38,6 +38,11 @@ std::vector<std::string_view> spellings(const Command& command) {
   throw CallError(fmt::format("unknown option '{}'{}{}", typed, hint, see_help(command)));
 }
 
+bool repeats(const Command& command, std::string_view name) {
+  const auto found = std::ranges::find(command.options, name, &Option::name);
+  return found != command.options.end() && found->repeats;
+}
+
 po::parsed_options parsed(const Command& command, const std::vector<std::string>& words) {
   po::options_description description;
   describe(help_option, description);
@@ -59,6 +64,11 @@ std::optional<std::string> Call::value(std::string_view option) const {
   return found == options.end() ? std::nullopt : std::optional(found->second);
 }
 
+std::vector<std::string> Call::all(std::string_view option) const {
+  const auto found = repeated.find(option);
+  return found == repeated.end() ? std::vector<std::string>{} : found->second;
+}
+
 // Options are read from the parser's own list: a case named like an option, or
 // several words behind one option, cannot get in by way of its variables map.
 Call parse(const Command& command, const std::vector<std::string>& words) {
@@ -68,11 +78,26 @@ Call parse(const Command& command, const std::vector<std::string>& words) {
       call.arguments.insert(call.arguments.end(), option.value.begin(), option.value.end());
       continue;
     }
+    if (repeats(command, option.string_key)) {
+      call.repeated[option.string_key].push_back(option.value.front());
+      continue;
+    }
     const bool added =
         call.options.emplace(option.string_key, option.value.empty() ? "" : option.value.front()).second;
     if (!added) throw CallError(fmt::format("option '--{}' is given twice; give it once", option.string_key));
   }
   return call;
+}
+
+std::size_t jobs_asked_for(const Call& call) {
+  const auto typed = call.value("jobs");
+  if (!typed) return 1;
+  const auto number = units::number(*typed);
+  if (!number || *number < 1.0 || *number > 1024.0 ||
+      *number != static_cast<double>(static_cast<int>(*number)))
+    throw CallError(
+        fmt::format("--jobs: '{}' is not a number of jobs; expected a whole number from 1 to 1024", *typed));
+  return static_cast<std::size_t>(*number);
 }
 
 std::optional<units::System> units_asked_for(const Call& call) {

@@ -93,9 +93,11 @@ Rated without_result(int status, const std::string& file, std::vector<std::strin
 }
 
 Rated rate_case(const std::string& file, const Wishes& wishes) {
+  const case_io::Document document = case_io::read_file(file);
   // --units is for the page: the words of a JSON result are the same whatever is asked for.
   const auto display = wishes.json ? std::optional(units::System::metric) : wishes.display;
-  const report::Result result = explore::rate(case_io::read_file(file), display);
+  report::Result result = explore::rate(document, display);
+  explore::weigh(case_io::overlaid(document, result.cases[result.governing].name), result);
   if (wishes.strict && !result.assumed.empty())
     return without_result(input_at_fault, file, refusals(result, file), wishes.json);
   return {.status = status_of(result),
@@ -113,17 +115,6 @@ Rated rate_file(const std::string& file, const Wishes& wishes) {
     return without_result(bug, file, {fmt::format("{}: a bug in dutygauge: {}", file, error.what())},
                           wishes.json);
   }
-}
-
-std::size_t jobs(const Call& call) {
-  const auto typed = call.value("jobs");
-  if (!typed) return 1;
-  const auto number = units::number(*typed);
-  if (!number || *number < 1.0 || *number > 1024.0 ||
-      *number != static_cast<double>(static_cast<int>(*number)))
-    throw CallError(
-        fmt::format("--jobs: '{}' is not a number of jobs; expected a whole number from 1 to 1024", *typed));
-  return static_cast<std::size_t>(*number);
 }
 
 std::vector<Rated> rate_all(const std::vector<std::string>& files, const Wishes& wishes, std::size_t jobs) {
@@ -167,7 +158,7 @@ int run_rate(const Call& call, Streams streams) {
                       .strict = call.has("strict"),
                       .all = call.has("verbose"),
                       .display = units_asked_for(call)};
-  const std::size_t at_a_time = jobs(call);
+  const std::size_t at_a_time = jobs_asked_for(call);
   const auto files = files_named(call.arguments);
   if (std::ranges::find(files, "-") != files.end() && isatty(STDIN_FILENO) == 1)
     log.note("waiting for a case on standard input; end it with Ctrl-D");

@@ -110,7 +110,7 @@ Made make_ocean_water() {
                           .why = "open ocean",
                           .low = 0.033,
                           .high = 0.040,
-                          .look_in = "a water analysis"});
+                          .look_in = "water analysis"});
   return made;
 }
 

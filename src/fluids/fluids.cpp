@@ -96,6 +96,11 @@ double temperature_at(const Fluid& fluid, double enthalpy, double pressure) {
 }
 
 double reference_density(const Fluid& fluid, double temperature, double pressure) {
+  // Steam at standard conditions has not condensed: by convention it has the volume of an ideal gas.
+  constexpr double gas_constant_of_steam = 461.526;  // [J/kg.K], IAPWS-IF97
+  if (std::holds_alternative<WaterModel>(fluid.model) && fluid.phase == Phase::gas &&
+      temperature < usable_temperatures(fluid, pressure).low)
+    return pressure / (gas_constant_of_steam * temperature);
   return state(fluid, temperature, pressure).density;
 }
 

@@ -84,7 +84,7 @@ double density_of(const OilData& data, Made& made) {
                           .why = "usual for mineral oils",
                           .low = 850.0,
                           .high = 900.0,
-                          .look_in = "the oil's data sheet"});
+                          .look_in = "oil data sheet"});
   return usual;
 }
 
@@ -100,7 +100,7 @@ std::vector<ViscosityPoint> points_of_grade(const OilData& data, Made& made) {
                             .why = "usual for mineral oils without viscosity improver",
                             .low = 90.0,
                             .high = 150.0,
-                            .look_in = "the oil's data sheet"});
+                            .look_in = "oil data sheet"});
   const double share = (index - 95.0) / 55.0;
   const double at_100c =
       grade.at_100c_index_95 * std::pow(grade.at_100c_index_150 / grade.at_100c_index_95, share);

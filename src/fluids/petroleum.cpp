@@ -123,7 +123,7 @@ void assume_kind(const PetroleumData& data, Made& made) {
                           .why = "the sheet does not say; crude expands up to 2 % more",
                           .low = {},
                           .high = {},
-                          .look_in = "the stream's name"});
+                          .look_in = "material balance"});
 }
 
 Finding phase_not_checked() {

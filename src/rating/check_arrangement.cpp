@@ -109,9 +109,9 @@ void check_few_baffles(const Unit& unit, const OneShell& one, const Outcome& out
       {.id = "arrangement.few_baffles",
        .severity = Severity::should,
        .text = fmt::format("with {} baffle(s) the shell stream is not the continuous stream the calculation "
-                           "assumes: about {{value}} of the duty is lost (worth saying above {{limit}}); "
+                           "assumes: about {:.1f} % of the duty is lost; "
                            "take it off the margin",
-                           baffles),
+                           baffles, 100.0 * loss),
        .ground = Ground::method,
        .value = loss,
        .limit = worth_saying,
@@ -128,9 +128,11 @@ void check_longitudinal_baffle(const OneShell& one, const Outcome& outcome, Find
   findings.push_back(
       {.id = "arrangement.longitudinal_baffle",
        .severity = loss > 0.05 ? Severity::should : Severity::note,
-       .text = "an F shell is rated with a tight, insulating longitudinal baffle. If it conducts or leaks "
-               "as much as {limit} of the tubes' UA, {value} of the duty is lost; suspect it first "
-               "when the unit falls short in the field",
+       .text =
+           fmt::format("an F shell is rated with a tight, insulating longitudinal baffle. If it conducts or "
+                       "leaks as much as {:.0f} % of the tubes' UA, {:.1f} % of the duty is lost; suspect it "
+                       "first when the unit falls short in the field",
+                       100.0 * usual_conductance, 100.0 * loss),
        .ground = Ground::method,
        .value = loss,
        .limit = usual_conductance});
@@ -152,9 +154,11 @@ void check_split(const Unit& unit, const Outcome& outcome, Findings& findings) {
   findings.push_back(
       {.id = "arrangement.uneven_split",
        .severity = Severity::note,
-       .text = "the banks are rated with even flows. Were one to take {limit} more of the tube-side flow "
-               "and another as much less, {value} of the duty would be lost; check the piping, or "
-               "compare the banks' outlet temperatures",
+       .text = fmt::format(
+           "the banks are rated with even flows. Were one to take {:.0f} % more of the tube-side "
+           "flow and another as much less, {:.1f} % of the duty would be lost; compare the banks' "
+           "outlet temperatures",
+           100.0 * uneven, 100.0 * loss),
        .ground = Ground::method,
        .value = loss,
        .limit = uneven});

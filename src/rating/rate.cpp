@@ -21,7 +21,7 @@ std::string cause(const Problem& problem, const Outcome& outcome) {
   const auto [shell_in, shell_out] = ends(problem.shell_side, outcome.shell_outlet);
   const auto ratio = [](double a, double b) { return std::max(a / b, b / a); };
   const double re = outcome.local.tube_film.reynolds * outcome.local.tube_bulk.viscosity;
-  const auto [re_low, re_high] = std::minmax(re / tube_in.viscosity, re / tube_out.viscosity);
+  const auto [re_low, re_high] = std::minmax({re / tube_in.viscosity, re / tube_out.viscosity});
   if (re_low < 4000.0 && re_high > 2300.0)
     return fmt::format("the tube flow changes its regime on the way (Re {:.0f} to {:.0f})", re_low, re_high);
   const double tube_ratio = ratio(tube_in.viscosity, tube_out.viscosity);

@@ -199,7 +199,7 @@ void answer_of_cases(Page& page, const Result& result) {
     text += fmt::format("{}: {}. ", capitalised(listed(names)), answer);
   page.section("ANSWER", text);
   const auto& governing = result.cases[result.governing];
-  page.section("", fmt::format("{} is the tightest: {}", capitalised(spoken(governing.name)),
+  page.section("", fmt::format("The worst is {}: {}", spoken(governing.name),
                                governing.design_fouling.rating.outcome
                                    ? reason(governing.design_fouling)
                                    : governing.design_fouling.rating.no_result + "."));

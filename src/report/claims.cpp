@@ -2,7 +2,6 @@
 
 #include <algorithm>
 
-#include "dutygauge/sources.hpp"
 #include "sections.hpp"
 #include "words.hpp"
 
@@ -16,11 +15,12 @@ std::size_t count(const Result& result, Agreement agreement) {
   return static_cast<std::size_t>(std::ranges::count(result.claims, agreement, &ClaimVerdict::verdict));
 }
 
-/// "area.effective" is "area, effective".
+/// "area.effective" is "effective area".
 std::string spoken(std::string_view key) {
+  const auto dot = key.find('.');
   std::string words(key);
+  if (dot != std::string_view::npos) words = fmt::format("{} {}", key.substr(dot + 1), key.substr(0, dot));
   std::ranges::replace(words, '_', ' ');
-  if (const auto dot = words.find('.'); dot != std::string::npos) words.replace(dot, 1, ", ");
   return words;
 }
 
@@ -32,8 +32,6 @@ std::string why(const ClaimVerdict& claim, bool all) {
   std::string words = claim.likely;
   if (claim.computed && (all || words.empty()))
     words += fmt::format("{}beside {}", words.empty() ? "" : "; ", claim.against);
-  const auto citation = sources::citation(claim.source);
-  if (all && !citation.empty()) words += fmt::format(" [{}]", citation);
   return words;
 }
 

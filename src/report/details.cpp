@@ -108,6 +108,7 @@ void inputs(Page& page, const Result& result) {
 void sources_used(Page& page, const Result& result) {
   std::set<std::string> keys;
   for (const auto& finding : result.findings) keys.insert(finding.source);
+  for (const auto& claim : result.claims) keys.insert(claim.source);
   for (const auto* stream : {&result.assessment.problem.shell_side, &result.assessment.problem.tube_side})
     keys.insert(stream->fluid.source);
   std::string name = "SOURCES";

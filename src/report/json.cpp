@@ -224,9 +224,43 @@ Json profile(const service::Assessment& assessment) {
   return list;
 }
 
-Json assumed(const Assumptions& assumptions) {
+std::string_view margin_word(Effect::Margin margin) {
+  switch (margin) {
+    case Effect::Margin::duty:
+      return "duty";
+    case Effect::Margin::temperature:
+      return "temperature_K";
+    case Effect::Margin::pressure_drop:
+      return "pressure_drop";
+  }
+  throw std::invalid_argument("report::json: no such margin");
+}
+
+Json effect(const Result& result, std::size_t assumption) {
+  if (assumption >= result.effects.size() || !result.effects[assumption]) return nullptr;
+  const Effect& one = *result.effects[assumption];
+  return {{"margin", margin_word(one.margin)},
+          {"at_low", or_null(one.at_low)},
+          {"at_high", or_null(one.at_high)},
+          {"changes_answer", one.changes_answer}};
+}
+
+Json levers(const std::vector<Lever>& all) {
   Json list = Json::array();
-  for (const auto& one : assumptions) {
+  for (const Lever& one : all)
+    list.push_back({{"what", one.what},
+                    {"key", one.key.empty() ? Json(nullptr) : Json(one.key)},
+                    {"margin", one.in_kelvin ? "temperature_K" : "duty"},
+                    {"gain", one.gain},
+                    {"shell_side_pressure_drop_Pa", one.shell_drop},
+                    {"tube_side_pressure_drop_Pa", one.tube_drop}});
+  return list;
+}
+
+Json assumed(const Result& result) {
+  Json list = Json::array();
+  for (std::size_t i = 0; i < result.assumed.size(); ++i) {
+    const Assumption& one = result.assumed[i];
     const auto end = [&one](const std::optional<double>& value) {
       return value ? Json(units::typed(*value, one.kind)) : Json(nullptr);
     };
@@ -235,7 +269,7 @@ Json assumed(const Assumptions& assumptions) {
                     {"why", one.why},
                     {"low", end(one.low)},
                     {"high", end(one.high)},
-                    {"effect", nullptr},
+                    {"effect", effect(result, i)},
                     {"look_in", one.look_in}});
   }
   return list;
@@ -333,7 +367,8 @@ std::string json(const Result& result) {
                    {"solutions", solutions(assessment)},
                    {"states", states(result)},
                    {"operating_cases", operating_cases(result)},
-                   {"assumed", assumed(result.assumed)},
+                   {"assumed", assumed(result)},
+                   {"levers", levers(result.levers)},
                    {"findings", findings(result)},
                    {"claims", claims(result.claims)},
                    {"inputs", inputs(result.inputs)},

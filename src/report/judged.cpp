@@ -179,6 +179,7 @@ void what_limits(Page& page, const Result& result) {
 
 void assumed(Page& page, const Result& result, const TextOptions& options) {
   if (result.assumed.empty()) return;
+  if (!options.all && !result.effects.empty()) return weighed_assumptions(page, result);
   Assumptions shown = result.assumed;
   // Those with a span are the ones that can move the result.
   std::ranges::stable_sort(shown, std::ranges::greater{},

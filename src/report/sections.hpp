@@ -17,6 +17,9 @@ void how_much_of_cases(Page& page, const Result& result);
 void how_much(Page& page, const Result& result);
 void how_sure(Page& page, const Result& result);
 void what_limits(Page& page, const Result& result);
+void levers(Page& page, const Result& result);
+/// The assumptions by what they are worth; page one, where effects are known.
+void weighed_assumptions(Page& page, const Result& result);
 void assumed(Page& page, const Result& result, const TextOptions& options);
 void rules(Page& page, const Result& result, const TextOptions& options);
 void next_steps(Page& page, const Result& result);

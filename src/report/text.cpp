@@ -3,6 +3,7 @@
 #include "dutygauge/report.hpp"
 #include "page.hpp"
 #include "sections.hpp"
+#include "table_parts.hpp"
 #include "words.hpp"
 
 namespace dutygauge::report {
@@ -35,13 +36,10 @@ void closing(Page& page, const Result& result) {
 }  // namespace
 
 void heading(Page& page, const Result& result) {
-  const std::string right = "input " + result.input_sha256.substr(0, 8);
-  std::string left = result.tag;
-  if (!result.title.empty()) left += (left.empty() ? "" : "  ") + result.title;
-  if (left.empty()) left = result.file;
-  const std::size_t width = page_width - right.size() - 2;
-  page.line(fmt::format("{:<{}}  {}", clipped(ascii(left), width), width, right));
-  page.line(std::string(page_width, '-'));
+  heading(page, CaseName{.file = result.file,
+                         .title = result.title,
+                         .tag = result.tag,
+                         .input_sha256 = result.input_sha256});
 }
 
 void answer(Page& page, const Result& result) {
@@ -62,6 +60,7 @@ std::string text(const Result& result, const TextOptions& options) {
     how_sure(page, result);
     page.blank();
     what_limits(page, result);
+    levers(page, result);
   }
   claims(page, result, options);
   assumed(page, result, options);

@@ -35,7 +35,29 @@ void check_drop(std::string_view side, double drop, std::optional<double> allowa
        .kind = units::Kind::pressure_difference});
 }
 
+void check_drops(const rating::Problem& problem, const Service& service, const rating::Outcome& outcome,
+                 Findings& findings) {
+  check_drop("shell-side", outcome.shell_drop.total(), service.shell_side_allowable_drop,
+             convention_part(problem, outcome), findings);
+  check_drop("tube-side", outcome.tube_drop.total(), service.tube_side_allowable_drop, 0.0, findings);
+}
+
 }  // namespace
+
+Assessment judge(const rating::Problem& problem, const Service& service) {
+  Assessment result;
+  result.problem = problem;
+  result.service = service;
+  const bool by_march = problem.methods.solution == rating::Solution::march;
+  result.rating = by_march ? rating::rate_march(problem) : rating::rate_mean(problem);
+  result.findings = result.rating.findings;
+  if (const auto& outcome = result.rating.outcome) {
+    result.margins = running_margins(problem, service, *outcome, result.findings);
+    check_drops(problem, service, *outcome, result.findings);
+  }
+  result.verdict = verdict_of(service, problem, result.rating, result.margins);
+  return result;
+}
 
 Assessment assess(const rating::Problem& problem, const Service& service) {
   Assessment result;
@@ -45,10 +67,7 @@ Assessment assess(const rating::Problem& problem, const Service& service) {
   result.findings = result.rating.findings;
   if (const auto& outcome = result.rating.outcome) {
     result.margins = margins_of(problem, service, *outcome, result.findings);
-    check_drop("shell-side", outcome->shell_drop.total(), service.shell_side_allowable_drop,
-               convention_part(problem, *outcome), result.findings);
-    check_drop("tube-side", outcome->tube_drop.total(), service.tube_side_allowable_drop, 0.0,
-               result.findings);
+    check_drops(problem, service, *outcome, result.findings);
     rating::Problem by_kern = problem;
     by_kern.methods.shell_side = shellside::Method::kern;
     if (shellside::objections(problem.exchanger.shell_side, shellside::Method::kern).empty())

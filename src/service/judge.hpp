@@ -4,9 +4,11 @@
 /// Internal to service: the steps of `assess`.
 namespace dutygauge::service {
 
-/// How far a line is from its limit [K or W]; negative when it does not hold.
-double distance(const Demand& demand, const rating::Outcome& outcome);
+/// Duty and temperature margins alone.
+Margins running_margins(const rating::Problem& problem, const Service& service,
+                        const rating::Outcome& outcome, Findings& findings);
 
+/// All margins.
 Margins margins_of(const rating::Problem& problem, const Service& service, const rating::Outcome& outcome,
                    Findings& findings);
 

@@ -100,8 +100,8 @@ void fill_surface(const rating::Problem& problem, double required, Margins& marg
 
 }  // namespace
 
-Margins margins_of(const rating::Problem& problem, const Service& service, const rating::Outcome& outcome,
-                   Findings& findings) {
+Margins running_margins(const rating::Problem& problem, const Service& service,
+                        const rating::Outcome& outcome, Findings& findings) {
   Margins margins;
   std::optional<double> required;
   for (const Demand& demand : service.demands) {
@@ -116,7 +116,13 @@ Margins margins_of(const rating::Problem& problem, const Service& service, const
   if (!required || *required <= 0.0) return margins;
   margins.required_duty = required;
   margins.duty = outcome.duty / *required - 1.0;
-  fill_surface(problem, *required, margins, findings);
+  return margins;
+}
+
+Margins margins_of(const rating::Problem& problem, const Service& service, const rating::Outcome& outcome,
+                   Findings& findings) {
+  Margins margins = running_margins(problem, service, outcome, findings);
+  if (margins.required_duty) fill_surface(problem, *margins.required_duty, margins, findings);
   return margins;
 }
 

@@ -22,12 +22,13 @@ constexpr Scatter tube_friction{0.10, "common_practice"};  // commercial tubes; 
 constexpr Scatter nozzles{0.25, "common_practice"};        // and turns, on their part of a drop
 
 // Films from 50 % low to 100 % high, drops from 50 % low to 200 % high against test units.
-constexpr Scatter shell_film{0.20, "palen_1969"};
-constexpr Scatter shell_film_assumed_gaps{0.25, "palen_1969"};  // leakage moves 10-20 % in the tolerances
-constexpr Scatter shell_film_slow{0.35, "palen_1969"};          // Re < 100
+constexpr Scatter shell_film{0.20, "palen_taborek_1969"};
+constexpr Scatter shell_film_assumed_gaps{0.25,
+                                          "palen_taborek_1969"};  // leakage moves 10-20 % in the tolerances
+constexpr Scatter shell_film_slow{0.35, "palen_taborek_1969"};    // Re < 100
 constexpr Scatter shell_film_kern{0.35, "kern_1950"};
-constexpr Scatter shell_drop{0.30, "palen_1969"};             // Re > 1000, gaps known
-constexpr Scatter shell_drop_less_known{0.40, "palen_1969"};  // slower, F shell, gaps assumed
+constexpr Scatter shell_drop{0.30, "palen_taborek_1969"};             // Re > 1000, gaps known
+constexpr Scatter shell_drop_less_known{0.40, "palen_taborek_1969"};  // slower, F shell, gaps assumed
 constexpr Scatter shell_drop_kern{0.50, "kern_1950"};
 
 constexpr Scatter wall{0.05, "common_practice"};     // alloys
