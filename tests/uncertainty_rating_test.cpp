@@ -230,6 +230,7 @@ TEST_CASE("uncertainty: events given a probability happen that often") {
   // p, the part p does, within what chance allows.
   random_cases::Generator generator(512);
   std::mt19937_64 engine(99);
+  std::uniform_real_distribution<double> asked(0.85, 1.1);
   std::normal_distribution<double> normal;
   constexpr int bins = 5;
   std::array<int, bins> units{}, met{};
@@ -237,7 +238,7 @@ TEST_CASE("uncertainty: events given a probability happen that often") {
   for (int rated = 0; rated < 500;) {
     const rating::Problem problem = generator.next();
     if (!rating::rate_mean(problem).outcome) continue;
-    const Question question = question_of(problem, generator.between(0.85, 1.1));
+    const Question question = question_of(problem, asked(engine));
     const auto result = propagate(question, {.samples = 128});
     if (!result) continue;
     ++rated;

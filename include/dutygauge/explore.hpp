@@ -15,8 +15,8 @@ service::Assessment assess_both_ways(const rating::Problem& problem, const servi
 
 /// What `dutygauge rate` does with one file: rates and judges every operating case as the
 /// unit is, clean and at design fouling, and audits the claims as built. The worst governs:
-/// the case without a result, else the one with the smallest duty margin, then the smallest
-/// temperature margin, then the first. `display`: units of the words, else the file's.
+/// the case without a result, else the one with the lowest probability, then the smallest duty
+/// margin, then the smallest temperature margin, then the first. `display`: units of the words, else the file's.
 /// Throws case_io::InputError.
 report::Result rate(const case_io::Document& document, std::optional<units::System> display = {});
 

@@ -6,6 +6,7 @@
 #include "dutygauge/bids.hpp"
 #include "dutygauge/findings.hpp"
 #include "dutygauge/service.hpp"
+#include "dutygauge/uncertainty.hpp"
 
 /// Results to text and JSON. Knows no file format of the input; no physics.
 namespace dutygauge::report {
@@ -15,6 +16,7 @@ struct RatedCase {
   std::string name;
   service::Assessment design_fouling, clean;
   Findings findings;  ///< of the case as read and as rated at design fouling
+  std::optional<uncertainty::Result> spread{}, spread_clean{};  ///< at design fouling, and clean
 };
 
 /// A finding somebody has decided on: shown as such, without effect on the exit status.
@@ -50,11 +52,12 @@ struct Result {
   std::string file;  ///< base name, "-" for standard input
   std::string title, tag, input_sha256;
   units::System display = units::System::metric;
-  service::Assessment assessment;            ///< of the governing operating case at design fouling
-  std::vector<bids::ClaimVerdict> claims{};  ///< of the sheet, as built
-  Inputs inputs;                             ///< of that case
-  Assumptions assumed;                       ///< of that case, and what only others needed
-  Findings findings;                         ///< of all cases but those accepted, the gravest first
+  service::Assessment assessment;               ///< of the governing operating case at design fouling
+  std::optional<uncertainty::Result> spread{};  ///< of that assessment
+  std::vector<bids::ClaimVerdict> claims{};     ///< of the sheet, as built
+  Inputs inputs;                                ///< of that case
+  Assumptions assumed;                          ///< of that case, and what only others needed
+  Findings findings;                            ///< of all cases but those accepted, the gravest first
   std::vector<AcceptedFinding> accepted = {};
   std::vector<RatedCase> cases = {};  ///< in file order
   std::size_t governing = 0;          ///< of `cases`

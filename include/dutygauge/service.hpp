@@ -23,6 +23,7 @@ struct Demand {
 struct Service {
   std::vector<Demand> demands;
   std::optional<double> shell_side_allowable_drop, tube_side_allowable_drop;  ///< [Pa]
+  std::optional<double> confidence = {};        ///< probability [-] from which a "yes" may be spoken
   units::System words = units::System::metric;  ///< units of the verdict's sentences
 };
 

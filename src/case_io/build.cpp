@@ -25,6 +25,7 @@ service::Service service_of(const Entries& entries, units::System words) {
         result.demands.push_back({quantity, at_least, *limit});
   result.shell_side_allowable_drop = si(entries, "streams.shell_side.allowable_pressure_drop");
   result.tube_side_allowable_drop = si(entries, "streams.tube_side.allowable_pressure_drop");
+  result.confidence = si(entries, "service.confidence");
   return result;
 }
 

@@ -218,6 +218,8 @@ constexpr Row rows[] = {
     {"service.duty", block, optional, Kind::ratio, any, "", "heat to be moved"},
     {"service.duty.at_least", quantity, optional, Kind::power, positive(1e10), "400 kW", "the least duty"},
     {"service.duty.at_most", quantity, optional, Kind::power, positive(1e10), "900 kW", "the most duty"},
+    {"service.confidence", quantity, optional, Kind::ratio, between(0.5, 0.99), "80 %",
+     "the probability from which the sentence may begin with yes"},
 
     {"operating_cases", block, optional, Kind::ratio, any, "",
      "what the same unit must do; each is rated, the worst governs"},

@@ -4,6 +4,7 @@
 #include <tuple>
 
 #include "dutygauge/explore.hpp"
+#include "how_sure.hpp"
 
 namespace dutygauge::explore {
 namespace {
@@ -35,8 +36,9 @@ std::size_t governing(const std::vector<report::RatedCase>& cases) {
   constexpr double none = std::numeric_limits<double>::infinity();
   const auto room = [none](const report::RatedCase& one) {
     const auto& margins = one.design_fouling.margins;
-    return std::tuple(one.design_fouling.rating.outcome.has_value(), margins.duty.value_or(none),
-                      margins.temperature.value_or(none));
+    const auto probability = one.spread ? one.spread->probability : std::nullopt;
+    return std::tuple(one.design_fouling.rating.outcome.has_value(), probability.value_or(none),
+                      margins.duty.value_or(none), margins.temperature.value_or(none));
   };
   return static_cast<std::size_t>(std::ranges::min_element(cases, {}, room) - cases.begin());
 }
@@ -90,6 +92,7 @@ std::vector<report::AcceptedFinding> take_accepted(Findings& findings,
 report::Result without_claims(const std::vector<case_io::Case>& cases) {
   std::vector<report::RatedCase> all;
   for (const auto& one : cases) all.push_back(rated(one));
+  add_spreads(all);
   const std::size_t worst = governing(all);
   const case_io::Case& a_case = cases[worst];
   report::Result result{.file = std::filesystem::path(a_case.file).filename().string(),
@@ -98,6 +101,7 @@ report::Result without_claims(const std::vector<case_io::Case>& cases) {
                         .input_sha256 = a_case.sha256,
                         .display = a_case.display,
                         .assessment = all[worst].design_fouling,
+                        .spread = all[worst].spread,
                         .inputs = a_case.inputs,
                         .assumed = all_assumed(cases, worst),
                         .findings = all_findings(all, worst),

@@ -28,10 +28,16 @@ std::string capitalised(std::string text) {
   return text;
 }
 
+bool is_too_unsure(const RatedCase& one) {
+  const auto& confidence = one.design_fouling.service.confidence;
+  return confidence && one.spread && one.spread->probability.value_or(1.0) < *confidence;
+}
+
 std::string answer_of(const RatedCase& one) {
   if (!one.design_fouling.rating.outcome) return "no result";
   if (!one.design_fouling.verdict.met) return "no service is stated";
   const bool fouled = *one.design_fouling.verdict.met, clean = one.clean.verdict.met.value_or(false);
+  if (fouled && is_too_unsure(one)) return "not sure enough for a yes";
   if (fouled) return clean ? "yes" : "yes at design fouling, no clean";
   return clean ? "yes clean, no at design fouling" : "no, not even clean";
 }
@@ -157,10 +163,23 @@ std::string word_of(const Assessment& assessment) {
   return std::string(limit_word(std::max(0.0, assessment.margins.duty.value_or(1.0)), ""));
 }
 
-std::vector<std::string> row_of(const std::string& name, const char* state, const Assessment& assessment,
+std::string probability_of(const std::optional<uncertainty::Result>& spread) {
+  return spread && spread->probability ? uncertainty::in_words(*spread->probability) : "-";
+}
+
+/// An assessment with what is known of its spread.
+struct State {
+  const char* name;
+  const Assessment& assessment;
+  const std::optional<uncertainty::Result>& spread;
+};
+
+std::vector<std::string> row_of(const std::string& name, const State& state,
                                 const std::vector<Column>& columns) {
-  std::vector<std::string> row = {name, state};
+  const auto& [state_name, assessment, spread] = state;
+  std::vector<std::string> row = {name, state_name};
   for (const auto& column : columns) row.push_back(assessment.rating.outcome ? column.cell(assessment) : "-");
+  row.push_back(probability_of(spread));
   row.push_back(assessment.rating.outcome ? word_of(assessment) : "none");
   return row;
 }
@@ -200,11 +219,13 @@ void how_much_of_cases(Page& page, const Result& result) {
     for (std::size_t i = 0; i < rows.size(); ++i) rows[i].push_back(*lines[i]);
     alignment.push_back(Align::right);
   }
-  for (auto& row : rows) row.emplace_back();
-  alignment.push_back(Align::left);
+  const char* const heading[] = {"proba-", "bility", "", ""};
+  for (std::size_t i = 0; i < rows.size(); ++i) rows[i].insert(rows[i].end(), {heading[i], ""});
+  alignment.insert(alignment.end(), {Align::right, Align::left});
   for (const auto& one : result.cases) {
-    rows.push_back(row_of("  " + clipped(spoken(one.name), longest_case), "clean", one.clean, columns));
-    rows.push_back(row_of("", "design fouling", one.design_fouling, columns));
+    rows.push_back(row_of("  " + clipped(spoken(one.name), longest_case),
+                          {"clean", one.clean, one.spread_clean}, columns));
+    rows.push_back(row_of("", {"design fouling", one.design_fouling, one.spread}, columns));
   }
   page.table(rows, alignment, 0);
 }

@@ -9,6 +9,7 @@
 
 #include "dutygauge/report.hpp"
 #include "dutygauge/sources.hpp"
+#include "spread_json.hpp"
 #include "words.hpp"
 
 namespace dutygauge::report {
@@ -45,13 +46,17 @@ int shell_streams(char shell_type) {
   }
 }
 
-Json verdict(const service::Assessment& assessment) {
+using MaybeSpread = std::optional<uncertainty::Result>;
+
+Json verdict(const service::Assessment& assessment, const MaybeSpread& spread) {
   const auto& said = assessment.verdict;
-  return {{"service_met", said.met ? Json(*said.met) : Json(nullptr)},
-          {"grade", nullptr},
-          {"probability", nullptr},
-          {"limited_by", said.limited_by},
-          {"text", assessment.rating.outcome ? said.text : assessment.rating.no_result}};
+  const auto probability = spread ? spread->probability : std::nullopt;
+  return {
+      {"service_met", said.met ? Json(*said.met) : Json(nullptr)},
+      {"grade", probability ? Json(uncertainty::word(uncertainty::grade_of(*probability))) : Json(nullptr)},
+      {"probability", or_null(probability)},
+      {"limited_by", said.limited_by},
+      {"text", assessment.rating.outcome ? said.text : assessment.rating.no_result}};
 }
 
 Json thermal(const service::Assessment& assessment) {
@@ -165,30 +170,29 @@ Json margins(const service::Margins& margins) {
 }
 
 // What each state and each operating case says.
-Json state(const service::Assessment& assessment) {
-  return {{"verdict", verdict(assessment)},
-          {"thermal", thermal(assessment)},
-          {"tube_side", tube_side(assessment)},
-          {"shell_side", shell_side(assessment)},
-          {"margins", margins(assessment.margins)}};
+Json state(const service::Assessment& assessment, const MaybeSpread& spread) {
+  return {{"verdict", verdict(assessment, spread)}, {"thermal", thermal(assessment)},
+          {"tube_side", tube_side(assessment)},     {"shell_side", shell_side(assessment)},
+          {"margins", margins(assessment.margins)}, {"spread", spread_json(spread)}};
 }
 
 // One case with its states. Results made of a single assessment have no case list.
 Json operating_case(const RatedCase& one) {
-  Json json = state(one.design_fouling);
-  json["states"] = {{"clean", state(one.clean)}, {"design_fouling", state(one.design_fouling)}};
+  Json json = state(one.design_fouling, one.spread);
+  const Json fouled = json;
+  json["states"] = {{"clean", state(one.clean, one.spread_clean)}, {"design_fouling", fouled}};
   return json;
 }
 
 Json operating_cases(const Result& result) {
   Json json = Json::object();
   for (const auto& one : result.cases) json[one.name] = operating_case(one);
-  if (result.cases.empty()) json["base"] = state(result.assessment);
+  if (result.cases.empty()) json["base"] = state(result.assessment, result.spread);
   return json;
 }
 
 Json states(const Result& result) {
-  if (result.cases.empty()) return {{"design_fouling", state(result.assessment)}};
+  if (result.cases.empty()) return {{"design_fouling", state(result.assessment, result.spread)}};
   return operating_case(result.cases[result.governing])["states"];
 }
 
@@ -362,12 +366,13 @@ std::string json(const Result& result) {
                    {"input_sha256", result.input_sha256},
                    {"case", {{"file", result.file}, {"title", result.title}, {"tag", result.tag}}},
                    {"operating_case", name_of_case(result)},
-                   {"verdict", verdict(assessment)},
+                   {"verdict", verdict(assessment, result.spread)},
                    {"thermal", thermal(assessment)},
                    {"resistances_m2K_W", resistances(assessment)},
                    {"tube_side", tube_side(assessment)},
                    {"shell_side", shell_side(assessment)},
                    {"margins", margins(assessment.margins)},
+                   {"spread", spread_json(result.spread)},
                    {"solutions", solutions(assessment)},
                    {"states", states(result)},
                    {"operating_cases", operating_cases(result)},

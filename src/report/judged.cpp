@@ -4,6 +4,7 @@
 #include <cctype>
 #include <cmath>
 #include <iterator>
+#include <utility>
 
 #include "dutygauge/sources.hpp"
 #include "sections.hpp"
@@ -143,9 +144,11 @@ std::string in_the_case(const Result& result) {
 void how_sure(Page& page, const Result& result) {
   const auto& assessment = result.assessment;
   const std::size_t remarks = remarks_on_methods(result.findings);
-  if (!assessment.second_opinion && remarks == 0) return;
+  const auto spread = spread_in_words(result);
+  if (spread.empty() && !assessment.second_opinion && remarks == 0) return;
   page.blank();
   std::string name = "HOW SURE";
+  for (const auto& said : spread) page.section(std::exchange(name, ""), said);
   if (assessment.second_opinion) {
     const auto& ours = *assessment.rating.outcome;
     const auto& other = *assessment.second_opinion;

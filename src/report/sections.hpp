@@ -24,6 +24,9 @@ void assumed(Page& page, const Result& result, const TextOptions& options);
 void rules(Page& page, const Result& result, const TextOptions& options);
 void next_steps(Page& page, const Result& result);
 
+/// What the spread of the result says, sentence by sentence; empty without one.
+std::vector<std::string> spread_in_words(const Result& result);
+
 /// Films, resistances, factors and parts of the pressure drops in words; the inputs; the sources.
 void details(Page& page, const Result& result);
 
