@@ -85,7 +85,6 @@ TEST_CASE("case_io: a claim that cannot be read is refused where it stands") {
        and_also("claims: {area: {effective: 5 m2, per: bank}}"),
        {"claims.area.per", "unit or shell"}},
       {"an empty block", and_also("claims: {}"), {"claims", "the block is empty"}},
-      {"a range", and_also("claims: {duty: 500..600 kW}"), {"claims.duty", "not supported yet"}},
   });
 }
 

@@ -282,8 +282,7 @@ TEST_CASE("case_io: a volume flow is measured where it says") {
   const auto made = fluids::make_water(302.15, 4e5);
   const auto at_60 = built(good::with("62 m3/h at inlet", "62 m3/h at 60 degF"));
   // A liquid has the pressure of the inlet there, 4 bara in this case.
-  const double density =
-      fluids::state(made.fluid, units::to_si(60, "degF", Kind::temperature), 4e5).density;
+  const double density = fluids::state(made.fluid, units::to_si(60, "degF", Kind::temperature), 4e5).density;
   CHECK(relative(at_60.problem.tube_side.mass_flow, density * 62.0 / 3600.0) < 1e-12);
 }
 

@@ -89,7 +89,7 @@ TEST_CASE("cli: fluid shows a range as table, JSON rows and CSV of the same stat
   const double kinematic =
       rows[1]["viscosity_Pa_s"].get<double>() / rows[1]["density_kg_m3"].get<double>() * 1e6;
   CHECK(kinematic == doctest::Approx(46.0).epsilon(1e-3));
-  const Ran csv = fluid({"{oil: {iso_vg: 46}}", "--at", at, "--steps", "4", "--csv"});
+  const Ran csv = fluid({"{oil: {iso_vg: 46}}", "--at", at, "--steps", "4", "--csv", "-"});
   const auto lines = lines_of(csv.out);
   REQUIRE(lines.size() == 5);
   CHECK(lines[0] ==
@@ -142,11 +142,11 @@ TEST_CASE("cli: fluid refuses a call it cannot follow") {
       {{"water", "--at", good, "--steps", "5"}, "holds no range"},
       {{"water", "--at", "temperature=20..30 degC, pressure=1 bara", "--steps", "1"}, "--steps: '1'"},
       {{"water", "--at", "temperature=20..30 degC, pressure=1 bara", "--steps", "2.5"}, "--steps: '2.5'"},
-      {{"water", "--at", good, "--json", "--csv"}, "exclude each other"},
+      {{"water", "--at", good, "--json", "--csv", "-"}, "exclude each other"},
       {{"air", "--at", "temperature=300 K, pressure=6 bar"}, "absolute or gauge"},
       {{"watr", "--at", good}, "write water"},
       {{"{water", "--at", good}, "fluid:1:"},
-      {{"--list", "--csv"}, "exclude each other"},
+      {{"--list", "--csv", "-"}, "exclude each other"},
       {{"--list", "water"}, "takes no fluid"},
       {{"water", "--at", good, "--units", "cgs"}, "--units"}};
   for (const Row& row : rows) {

@@ -12,17 +12,17 @@ namespace laws {
 inline void check_outcome(const dutygauge::rating::Problem& problem,
                           const dutygauge::rating::Outcome& outcome) {
   const auto& local = outcome.local;
-  const auto& tube = problem.exchanger.tube_side;
   CHECK(std::isfinite(outcome.duty));
   CHECK(outcome.duty > 0.0);
   CHECK(outcome.balance_error <= 1e-9);
   CHECK(std::abs(outcome.duty_ntu / outcome.duty - 1.0) <= 1e-7);
   CHECK(std::abs(outcome.duty_lmtd / outcome.duty - 1.0) <= 1e-7);
   CHECK(std::abs(local.u_dirty * local.resistances.sum() - 1.0) <= 1e-9);
-  CHECK(std::abs(local.tube_film.coefficient * local.resistances.tube_film * tube.inside_diameter /
-                     tube.outside_diameter -
+  CHECK(std::abs(local.tube_film.coefficient * local.resistances.tube_film /
+                     problem.exchanger.outside_per_inside -
                  1.0) <= 1e-9);
-  CHECK(std::abs(local.shell_film.coefficient * local.resistances.shell_film - 1.0) <= 1e-9);
+  CHECK(std::abs(local.shell_film.coefficient * local.fin_effectiveness * local.resistances.shell_film -
+                 1.0) <= 1e-9);
   CHECK(outcome.effectiveness > 0.0);
   CHECK(outcome.effectiveness <= 1.0 + 1e-12);
   CHECK(outcome.f_correction > 0.0);

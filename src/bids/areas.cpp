@@ -23,7 +23,11 @@ struct Surfaces {
 Surfaces surfaces_of(const Exchanger& exchanger) {
   const auto& d = exchanger.as_described;
   const int shells = exchanger.shells_in_series * exchanger.shells_in_parallel;
-  const double per_length = std::numbers::pi * d.tube_outside_diameter * d.tube_count * shells;
+  // The outside surface of one metre of tube, fins and all.
+  const double outside = exchanger.tubes_drawn && exchanger.tubes_open > 0
+                             ? exchanger.area_per_shell / (exchanger.effective_length * exchanger.tubes_open)
+                             : std::numbers::pi * d.tube_outside_diameter;
+  const double per_length = outside * d.tube_count * shells;
   const double bends = exchanger.tube_side.friction_length / d.tube_passes;
   const double uncertain = d.tubesheet_thickness ? 0.0 : std::abs(d.tube_length - exchanger.effective_length);
   return {.effective = per_length * exchanger.effective_length,

@@ -11,12 +11,15 @@ Number stated_number(const Stated& stated) {
   return {stated.value, stated.rounding};
 }
 
-/// Fouling of both sides on the outside area [m2.K/W].
-double fouling_of(const rating::Problem& problem) {
-  const auto& tubes = problem.exchanger.tube_side;
-  return problem.shell_side.fouling_resistance +
-         overall::on_outside({tubes.outside_diameter, tubes.inside_diameter},
-                             problem.tube_side.fouling_resistance);
+/// Fouling of both sides on the outside area, fin efficiency in it [m2.K/W].
+double fouling_of(const rating::Problem& problem, double fin_effectiveness) {
+  return problem.shell_side.fouling_resistance / fin_effectiveness +
+         problem.exchanger.outside_per_inside * problem.tube_side.fouling_resistance;
+}
+
+double fin_effectiveness(const Sheet& sheet) {
+  const auto& outcome = sheet.ours.rating.outcome;
+  return outcome ? outcome->local.fin_effectiveness : 1.0;
 }
 
 /// U with a resistance more (or, negative, less); not finite where nothing is left.
@@ -74,10 +77,11 @@ void check_clean(Sheet& sheet, const Numbers& computed) {
   if (claims.u_dirty) {
     const double dirty = claims.u_dirty->value;
     const auto less = [dirty](double r) { return 1.0 / (1.0 / dirty - r); };
-    check.causes = {{dirty, "U dirty printed as U clean"},
-                    {less(shell + tube), "tube-side fouling is not referred to the outside"},
-                    {less(shell), "tube-side fouling is left out"},
-                    {less(fouling_of(problem) - shell), "shell-side fouling is left out"}};
+    check.causes = {
+        {dirty, "U dirty printed as U clean"},
+        {less(shell + tube), "tube-side fouling is not referred to the outside"},
+        {less(shell), "tube-side fouling is left out"},
+        {less(fouling_of(problem, fin_effectiveness(sheet)) - shell), "shell-side fouling is left out"}};
   }
   sheet.u_clean = judge(sheet, claims.u_clean, check);
 }
@@ -133,7 +137,7 @@ void check_service_coefficient(Sheet& sheet) {
 
 void check_fouling(Sheet& sheet) {
   const Claims& claims = sheet.claims;
-  const double fouling = fouling_of(sheet.problem());
+  const double fouling = fouling_of(sheet.problem(), fin_effectiveness(sheet));
   const std::string alone = "the sheet gives no other U to hold it against";
   const Numbers stated_clean = claims.u_clean ? Numbers{stated_number(*claims.u_clean)} : Numbers{};
   const Numbers stated_dirty = claims.u_dirty ? Numbers{stated_number(*claims.u_dirty)} : Numbers{};

@@ -83,7 +83,7 @@ void check_velocity(Sheet& sheet) {
       sheet.tube_outlet.empty() ? stream.inlet_temperature : sheet.tube_outlet.front().value;
   const double mean = 0.5 * (stream.inlet_temperature + outlet);
   const Channel channel{stream.mass_flow / exchanger.shells_in_parallel, density(stream, mean),
-                        d.tube_outside_diameter};
+                        exchanger.tube_side.inside_diameter + 2.0 * d.tube_wall};
   const double all = static_cast<double>(d.tube_count) / d.tube_passes;
   const double open = static_cast<double>(exchanger.tubes_open) / d.tube_passes;
   const double value = channel.velocity(d.tube_wall, all);

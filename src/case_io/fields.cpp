@@ -107,7 +107,6 @@ constexpr Unread unread[] = {
     {"exchanger.split", "streams that divide unevenly"},
     {"streams.*.fouling_area", "fouling on the other surface"},
     {"streams.*.split", "streams that divide unevenly"},
-    {"service.confidence", "how sure a yes must be"},
 };
 
 /// Whether `key` is what `pattern` means, or stands below it. "*" is one segment.

@@ -74,7 +74,7 @@ constexpr Option fluid_options[] = {
     {"steps", "", "N", "rows of a range; without it, 7"},
     {"list", "", "", "name all built-in fluids with their ranges and sources"},
     {"json", "", "", "one JSON object, in SI; a range: {\"rows\": [...]}"},
-    {"csv", "", "", "a line of names, then one line a state, in SI and degC"},
+    {"csv", "", "FILE", "- is standard output: a line of names, then one line a state, in SI and degC"},
     {"units", "", "SYSTEM", "units of the page: si, metric or us"},
     out_option,
     force_option};

@@ -171,7 +171,10 @@ int run_fluid(const Call& call, Streams streams) {
     return done;
   }
   say_beside(table, streams.err);
-  deliver(call, call.has("json") ? fluid_json(table) : fluid_csv(table), streams.out);
+  if (call.has("csv"))
+    deliver_to("csv", call, fluid_csv(table), streams.out);
+  else
+    deliver(call, fluid_json(table), streams.out);
   return done;
 }
 

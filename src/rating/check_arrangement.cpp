@@ -98,26 +98,6 @@ void check_cross(const OneShell& one, const Outcome& outcome, Findings& findings
 
 constexpr double worth_saying = 0.01;
 
-/// The closed forms and the march take the shell stream as continuous: few baffles cost duty.
-void check_few_baffles(const Unit& unit, const OneShell& one, const Outcome& outcome, Findings& findings) {
-  const int baffles = unit.problem->exchanger.shell_side.baffles;
-  if (one.arrangement.shell_type != 'E' || baffles < 1 || baffles > 10) return;
-  const double p = arrangement::effectiveness_with_baffles(one.arrangement, outcome.r_tube, one.ntu, baffles);
-  const double loss = 1.0 - p / one.p;
-  if (loss <= worth_saying) return;
-  findings.push_back(
-      {.id = "arrangement.few_baffles",
-       .severity = Severity::should,
-       .text = fmt::format("with {} baffle(s) the shell stream is not the continuous stream the calculation "
-                           "assumes: about {:.1f} % of the duty is lost; "
-                           "take it off the margin",
-                           baffles, 100.0 * loss),
-       .ground = Ground::method,
-       .value = loss,
-       .limit = worth_saying,
-       .source = "gardner_1977"});
-}
-
 /// Heat that takes the short way through the longitudinal baffle of an F shell.
 void check_longitudinal_baffle(const OneShell& one, const Outcome& outcome, Findings& findings) {
   if (one.arrangement.shell_type != 'F') return;
@@ -172,9 +152,30 @@ void check_arrangement(const Unit& unit, const Outcome& outcome, Findings& findi
   check_slope(one, findings);
   check_past_largest(unit, one, outcome, findings);
   check_cross(one, outcome, findings);
-  check_few_baffles(unit, one, outcome, findings);
   check_longitudinal_baffle(one, outcome, findings);
   check_split(unit, outcome, findings);
+}
+
+/// The closed forms and the march take the shell stream as continuous: few baffles cost duty.
+/// The answer takes a network of compartments, so it is asked for once a case.
+void check_few_baffles(const Unit& unit, const Outcome& outcome, Findings& findings) {
+  const OneShell one = one_shell(unit, outcome);
+  const int baffles = unit.problem->exchanger.shell_side.baffles;
+  if (one.arrangement.shell_type != 'E' || baffles < 1 || baffles > 10) return;
+  const double p = arrangement::effectiveness_with_baffles(one.arrangement, outcome.r_tube, one.ntu, baffles);
+  const double loss = 1.0 - p / one.p;
+  if (loss <= worth_saying) return;
+  findings.push_back(
+      {.id = "arrangement.few_baffles",
+       .severity = Severity::should,
+       .text = fmt::format("with {} baffle(s) the shell stream is not the continuous stream the calculation "
+                           "assumes: about {:.1f} % of the duty is lost; "
+                           "take it off the margin",
+                           baffles, 100.0 * loss),
+       .ground = Ground::method,
+       .value = loss,
+       .limit = worth_saying,
+       .source = "gardner_1977"});
 }
 
 }  // namespace dutygauge::rating

@@ -16,8 +16,9 @@ void fill_dimensionless(const Unit& unit, const Trial& trial, Outcome& outcome);
 /// Findings of the converged state.
 Findings check_outcome(const Unit& unit, const Outcome& outcome);
 
-/// What the arrangement itself has to say: F, room below its limit, few baffles, splits.
+/// What the arrangement itself has to say: F, room below its limit, crosses, splits.
 void check_arrangement(const Unit& unit, const Outcome& outcome, Findings& findings);
+void check_few_baffles(const Unit& unit, const Outcome& outcome, Findings& findings);
 
 /// Why a stream cannot even enter: its inlet lies where its fluid has no properties; or empty.
 std::string inlet_fault(const Stream& stream, std::string_view side);

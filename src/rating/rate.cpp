@@ -44,20 +44,25 @@ Rating rate(const Problem& problem) {
 Findings compare_solutions(const Problem& problem, Rating& rating) {
   if (!rating.mean_duty) rating.mean_duty = rate_mean(problem).mean_duty;
   if (!rating.march_duty) rating.march_duty = rate_march(problem).march_duty;
-  if (!rating.outcome || !rating.mean_duty || !rating.march_duty) return {};
+  Findings findings;
+  if (!rating.outcome) return findings;
+  check_few_baffles(prepare(problem), *rating.outcome, findings);
+  if (!rating.mean_duty || !rating.march_duty) return findings;
   const double difference = *rating.mean_duty / *rating.march_duty - 1.0;
-  if (std::abs(difference) <= worth_saying) return {};
-  return {{.id = "rating.mean_misleads",
-           .severity = Severity::should,
-           .text = fmt::format(
-               "properties at the mean temperatures give {{value}}, {:+.1f} % against the {{limit}} "
-               "found along the exchanger, because {}. Trust the march, and compare with sheets "
-               "made by mean properties only with that in mind",
-               100.0 * difference, cause(problem, *rating.outcome)),
-           .ground = Ground::method,
-           .value = *rating.mean_duty,
-           .limit = *rating.march_duty,
-           .kind = units::Kind::power}};
+  if (std::abs(difference) <= worth_saying) return findings;
+  findings.push_back(
+      {.id = "rating.mean_misleads",
+       .severity = Severity::should,
+       .text =
+           fmt::format("properties at the mean temperatures give {{value}}, {:+.1f} % against the {{limit}} "
+                       "found along the exchanger, because {}. Trust the march, and compare with sheets "
+                       "made by mean properties only with that in mind",
+                       100.0 * difference, cause(problem, *rating.outcome)),
+       .ground = Ground::method,
+       .value = *rating.mean_duty,
+       .limit = *rating.march_duty,
+       .kind = units::Kind::power});
+  return findings;
 }
 
 }  // namespace dutygauge::rating

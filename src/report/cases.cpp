@@ -205,28 +205,54 @@ void answer_of_cases(Page& page, const Result& result) {
                                    : governing.design_fouling.rating.no_result + "."));
 }
 
+namespace {
+
+using Rows = std::vector<std::vector<std::string>>;
+
+Rows rows_of(const Result& result, const std::vector<Column>& columns) {
+  Rows rows = {{"HOW MUCH", ""}, {"running free", ""}, {"", ""}, {"", "limit:"}};
+  for (const auto& column : columns) {
+    const std::string* lines[] = {&column.first, &column.second, &column.unit, &column.limit};
+    for (std::size_t i = 0; i < rows.size(); ++i) rows[i].push_back(*lines[i]);
+  }
+  const char* const heading[] = {"proba-", "bility", "", ""};
+  for (std::size_t i = 0; i < rows.size(); ++i) rows[i].insert(rows[i].end(), {heading[i], ""});
+  for (const auto& one : result.cases) {
+    rows.push_back(row_of("  " + clipped(spoken(one.name), longest_case),
+                          {"clean", one.clean, one.spread_clean}, columns));
+    rows.push_back(row_of("", {"design fouling", one.design_fouling, one.spread}, columns));
+  }
+  return rows;
+}
+
+/// Characters a table takes with two blanks between its columns.
+std::size_t width_of(const Rows& rows) {
+  std::size_t sum = 0;
+  for (std::size_t column = 0; column < rows.front().size(); ++column) {
+    std::size_t widest = 0;
+    for (const auto& row : rows) widest = std::max(widest, row[column].size());
+    sum += widest + 2;
+  }
+  return sum - 2;
+}
+
+}  // namespace
+
 void how_much_of_cases(Page& page, const Result& result) {
   const Figures figures(result.display);
   std::vector<Column> columns;
   add_outlet(result, figures, columns);
   add_duty(result, figures, columns);
   for (const Side side : {Side::shell, Side::tube}) add_drop(result, figures, side, columns);
-  std::vector<std::vector<std::string>> rows = {
-      {"HOW MUCH", ""}, {"running free", ""}, {"", ""}, {"", "limit:"}};
-  std::vector<Align> alignment = {Align::left, Align::left};
-  for (const auto& column : columns) {
-    const std::string* lines[] = {&column.first, &column.second, &column.unit, &column.limit};
-    for (std::size_t i = 0; i < rows.size(); ++i) rows[i].push_back(*lines[i]);
-    alignment.push_back(Align::right);
+  Rows rows = rows_of(result, columns);
+  // Long names and units take the room of the duty itself; its margin stays.
+  if (width_of(rows) > page_width) {
+    std::erase_if(columns, [](const Column& column) { return column.second == "duty"; });
+    rows = rows_of(result, columns);
   }
-  const char* const heading[] = {"proba-", "bility", "", ""};
-  for (std::size_t i = 0; i < rows.size(); ++i) rows[i].insert(rows[i].end(), {heading[i], ""});
-  alignment.insert(alignment.end(), {Align::right, Align::left});
-  for (const auto& one : result.cases) {
-    rows.push_back(row_of("  " + clipped(spoken(one.name), longest_case),
-                          {"clean", one.clean, one.spread_clean}, columns));
-    rows.push_back(row_of("", {"design fouling", one.design_fouling, one.spread}, columns));
-  }
+  std::vector<Align> alignment(columns.size() + 3, Align::right);
+  alignment[0] = alignment[1] = Align::left;
+  alignment.push_back(Align::left);
   page.table(rows, alignment, 0);
 }
 
