@@ -37,8 +37,7 @@ constexpr Option sweep_options[] = {
 
 constexpr std::string_view reach_examples[] = {
     "dutygauge reach cooler.yaml --push streams.shell_side.flow",
-    "dutygauge reach cooler.yaml --push streams.shell_side.flow --over "
-    "'streams.tube_side.inlet.temperature=26..34 degC:5'"};
+    "dutygauge reach cooler.yaml --push streams.shell_side.flow --over streams.tube_side.flow=x1..x2:3"};
 constexpr Option reach_options[] = {
     {"push", "", "KEY", "the input that is pushed; KEY=RANGE to look through a range of your own"},
     {"over", "", "KEY=RANGE", "a second input: FROM..TO:STEPS with a unit, or factors"},
