@@ -157,9 +157,6 @@ TEST_CASE("case_io: what this version does not read is refused by name") {
             and_also(std::string(key) + ": {a: 1}"),
             {"x:49:1:", std::string(key) + ": not read yet", "leave the block out"}}});
   check({
-      {"confidence",
-       with("service:\n", "service:\n  confidence: 80 %\n"),
-       {"service.confidence: not read yet"}},
       {"scaled", with("bell_delaware", "scaled"), {"x:48:", "not read yet"}},
   });
 }
