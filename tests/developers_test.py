@@ -36,12 +36,13 @@ def ctest_fault(words):
 
 
 def script_fault(words):
-    """A script is run by CI or by a test of its own; here it only has to be there, and able to start."""
+    """A script is run by CI, by a test of its own, or by whoever releases; here it has to be there."""
     script = ROOT / words[0]
     if not script.exists() or not script.stat().st_mode & 0o100:
         return "no such script"
-    ran_by = [ROOT / ".ci/run", ROOT / "README.md", ROOT / "tests/readme_test.py"]
-    return "" if any(words[0] in file.read_text() for file in ran_by) else "neither CI nor a test runs it"
+    runs = [(ROOT / file).read_text() for file in (".ci/run", "README.md", "tests/readme_test.py")]
+    runs.append(TEXT.split("## 10. Release")[1].split("## 11.")[0])
+    return "" if any(words[0] in text for text in runs) else "neither CI, nor a test, nor the release runs it"
 
 
 def program_fault(words):
