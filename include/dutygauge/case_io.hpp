@@ -1,5 +1,6 @@
 #pragma once
 #include <map>
+#include <memory>
 #include <optional>
 #include <stdexcept>
 #include <string>
@@ -63,6 +64,9 @@ struct Document {
   std::string sha256;                   ///< of the bytes read, hexadecimal
   std::vector<Mistake> mistakes;        ///< that did not stop the reading (doubled keys)
   std::vector<std::string> of_cases;    ///< the file's operating cases, where this is one of them
+  /// Where the shell side is scaled from the sheet: the case the sheet speaks of, as it was before
+  /// anything was varied. Null: this document is that case.
+  std::shared_ptr<const Document> sheet{};
 };
 
 /// A finding that somebody has looked at and decided on.
@@ -106,9 +110,12 @@ Document overlaid(const Document& document, const std::string& operating_case);
 /// The same as built: without `present`.
 Document as_built(const Document& document, const std::string& operating_case);
 
-/// The document with another text at a key ("x1.15": times what stands there).
-/// Throws InputError where the format has no such key.
+/// The document with another text at a key ("x1.15": times what stands there); what the sheet
+/// speaks of stays as it is. Throws InputError where the format has no such key.
 Document with_value(const Document& document, const std::string& key, const std::string& text);
+
+/// The same where the value itself is in doubt: the sheet's own case had it too.
+Document with_other_reading(const Document& document, const std::string& key, const std::string& text);
 
 /// The document with the value of a key multiplied. Throws InputError where it has none.
 Document with_factor(const Document& document, const std::string& key, double factor);

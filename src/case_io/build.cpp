@@ -107,16 +107,15 @@ std::vector<Accepted> accepted_of(const Reading& reading) {
   }
 }
 
-}  // namespace
-
-Case build_plain(const Document& document) {
-  Reading reading(document, case_fields());
+/// The case as the document has it; a shell side to be scaled has no film yet.
+Case read_case(const Document& document, Reading& reading) {
   const auto description = exchanger_of(reading);
   auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
   find_flows(reading, shell_side, tube_side);
   const GivenFilm films[] = {given_film_of(reading, "shell_side"), given_film_of(reading, "tube_side")};
   check_inlets(reading);
   const rating::Methods methods = methods_of(reading);
+  check_scaled(reading);
   bids::Claims claims = claims_of(reading);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
@@ -148,7 +147,23 @@ Case build_plain(const Document& document) {
   }
   for (const GivenFilm& film : films) append(result.findings, film.findings);
   show_unknown(reading, result.assumed);
-  result.inputs = inputs_of(entries, result.assumed, result.display);
+  return result;
+}
+
+/// The case the sheet speaks of, where another document holds it.
+Case stated_case_of(const Document& document, const Case& read) {
+  if (!document.sheet) return read;
+  Reading reading(*document.sheet, case_fields());
+  return read_case(*document.sheet, reading);
+}
+
+}  // namespace
+
+Case build_plain(const Document& document) {
+  Reading reading(document, case_fields());
+  Case result = read_case(document, reading);
+  if (is_scaled(reading.entries())) scale_shell_side(document, stated_case_of(document, result), result);
+  result.inputs = inputs_of(reading.entries(), result.assumed, result.display);
   return result;
 }
 

@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "dutygauge/arrangement.hpp"
+#include "excuses.hpp"
 #include "parts.hpp"
 #include "wording.hpp"
 
@@ -109,6 +110,7 @@ Description description_of(const Entries& entries) {
   describe_plugging(entries, d);
   // A conductivity beside a name is a mistake of its own, noted with the keys.
   d.tube_material = word(entries, "exchanger.tubes.material").value_or("");
+  d.baffles_known = !is_scaled(entries);
   d.baffle_count = whole(entries, "exchanger.baffles.count");
   if (const auto compartments = whole(entries, "exchanger.baffles.compartments"))
     d.baffle_count = *compartments - 1;
@@ -137,10 +139,11 @@ bool has_count(const Entries& entries, std::string_view key) {
          (key == "exchanger.tubes.count" && entries.contains("exchanger.tubes.u_tubes"));
 }
 
-std::vector<std::string> missing_keys(const Entries& entries) {
+std::vector<std::string> missing_keys(const Reading& reading) {
+  const Entries& entries = reading.entries();
   std::vector<std::string> missing;
   for (const Required& value : required_values)
-    if (!entries.contains(value.key)) missing.emplace_back(value.key);
+    if (!entries.contains(value.key) && !is_excused(reading, value.key)) missing.emplace_back(value.key);
   for (const char* key : required_words)
     if (!has_count(entries, key)) missing.emplace_back(key);
   return missing;
@@ -223,7 +226,7 @@ std::optional<Description> exchanger_of(Reading& reading) {
                  "a wall resistance only beside an area",
                  "leave it out, or give the area instead of dimensions");
   if (!reading.has("exchanger.tubes") || !reading.has("exchanger.shell")) return {};
-  const auto missing = missing_keys(reading.entries());
+  const auto missing = missing_keys(reading);
   if (!missing.empty()) {
     reading.note_all(objections_despite(reading, missing));
     return {};

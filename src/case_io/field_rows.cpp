@@ -275,8 +275,10 @@ constexpr Row rows[] = {
     {"methods", block, optional, Kind::ratio, any, "", "how it is rated"},
     {"methods.tube_side", word, optional, Kind::ratio, any, "gnielinski", "film inside the tubes",
      "gnielinski"},
-    {"methods.shell_side", word, optional, Kind::ratio, any, "bell_delaware", "film outside the tubes",
-     "bell_delaware|kern"},
+    {"methods.shell_side", word, optional, Kind::ratio, any, "bell_delaware",
+     "film outside the tubes; scaled: from claims.u_dirty and claims.shell_side_pressure_drop, for a sheet "
+     "without baffles",
+     "bell_delaware|kern|scaled"},
     {"methods.solution", word, optional, Kind::ratio, any, "march",
      "march: along the streams with local properties; mean: at the mean temperatures", "march|mean"},
 };

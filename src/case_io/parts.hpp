@@ -45,6 +45,16 @@ void put_film(const GivenFilm& given, bool is_shell_side, rating::Problem& probl
 /// The stream of "shell_side" or "tube_side"; empty where it cannot be made.
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 
+/// Whether the shell side is scaled from the sheet's claims.
+bool is_scaled(const Entries& entries);
+
+/// Notes what that needs and is missing, and what contradicts it.
+void check_scaled(Reading& reading);
+
+/// Puts film and drop scaled from the case the sheet speaks of into a case that was read.
+/// Throws InputError.
+void scale_shell_side(const Document& document, const Case& stated_case, Case& result);
+
 /// Builds the case of a document without overlays. Throws InputError.
 Case build_plain(const Document& document);
 /// What the sheet claims; empty where it claims nothing.
