@@ -39,9 +39,11 @@ struct Description {
   std::optional<double> shell_nozzle_in, shell_nozzle_out;  ///< bores [m]
   bool impingement_plate = false;
 
-  int tube_count = 0;                 ///< holes in one tubesheet
-  int plugged = 0;                    ///< holes plugged
-  std::vector<int> plugged_per_pass;  ///< where given by pass (sums to `plugged`)
+  int tube_count = 0;                  ///< holes in one tubesheet
+  int plugged = 0;                     ///< holes plugged in each shell
+  std::vector<int> plugged_per_pass;   ///< where given by pass (sums to `plugged`)
+  std::vector<int> plugged_per_shell;  ///< where given by shell, along the shell stream, bank by bank
+  std::optional<int> plugged_in_unit;  ///< where only the sum of all shells is known
   int tube_passes = 1;
   double tube_outside_diameter = 0, tube_wall = 0, tube_length = 0;  ///< [m]; straight, outer faces
   std::optional<double> tubesheet_thickness;                         ///< [m]
@@ -180,7 +182,7 @@ struct Exchanger {
   FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
   double effective_length = 0;     ///< L_eff [m]
   double tubesheet_thickness = 0;  ///< [m]
-  int tubes_open = 0;              ///< holes open to flow, one shell
+  double tubes_open = 0;           ///< holes open to flow, of the mean shell
   double area_per_shell = 0;       ///< effective outside area, fins and all [m2]
   double area = 0;                 ///< of all shells [m2]
 };

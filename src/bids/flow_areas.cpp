@@ -34,8 +34,8 @@ void check_count(Sheet& sheet) {
                   },
               .otherwise = "another count than the drawing's",
               .if_empty = ""};
-  if (const int plugged = exchanger.as_described.plugged; plugged > 0)
-    check.causes.push_back({holes - plugged, "plugged tubes are left out"});
+  if (exchanger.tubes_drawn && exchanger.tubes_open < holes)
+    check.causes.push_back({exchanger.tubes_open, "plugged tubes are left out"});
   if (shells > 1) check.causes.push_back({shells * holes, "tubes of all shells, not of one"});
   // A count is exact: 1 % of it would be several tubes.
   if (claim && claim->value != holes && fits(*claim, {holes, 0.0})) {
@@ -85,7 +85,7 @@ void check_velocity(Sheet& sheet) {
   const Channel channel{stream.mass_flow / exchanger.shells_in_parallel, density(stream, mean),
                         exchanger.tube_side.inside_diameter + 2.0 * d.tube_wall};
   const double all = static_cast<double>(d.tube_count) / d.tube_passes;
-  const double open = static_cast<double>(exchanger.tubes_open) / d.tube_passes;
+  const double open = exchanger.tubes_open / d.tube_passes;
   const double value = channel.velocity(d.tube_wall, all);
   const double ends = std::max(std::abs(channel.density / density(stream, stream.inlet_temperature) - 1.0),
                                std::abs(channel.density / density(stream, outlet) - 1.0));

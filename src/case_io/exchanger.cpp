@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <numeric>
 
 #include "dutygauge/arrangement.hpp"
 #include "excuses.hpp"
@@ -70,14 +71,16 @@ void describe_letters_and_shells(const Entries& entries, Description& d) {
 }
 
 void describe_plugging(const Entries& entries, Description& d) {
-  const std::string key = "exchanger.tubes.plugged";
-  d.plugged = whole(entries, key).value_or(0);
-  for (std::size_t i = 0;; ++i) {
-    const auto of_pass = whole(entries, joined(key, std::to_string(i)));
-    if (!of_pass) return;
-    d.plugged_per_pass.push_back(*of_pass);
-    d.plugged += *of_pass;
-  }
+  const auto list = [&](const std::string& key) {
+    std::vector<int> all;
+    while (const auto next = whole(entries, joined(key, std::to_string(all.size())))) all.push_back(*next);
+    return all;
+  };
+  d.plugged_per_pass = list("exchanger.tubes.plugged");
+  d.plugged = std::accumulate(d.plugged_per_pass.begin(), d.plugged_per_pass.end(),
+                              whole(entries, "exchanger.tubes.plugged").value_or(0));
+  d.plugged_per_shell = list("exchanger.tubes.plugged_per_shell");
+  d.plugged_in_unit = whole(entries, "exchanger.tubes.plugged_in_unit");
 }
 
 void describe_layers_and_fins(const Entries& entries, Description& d) {
@@ -176,6 +179,19 @@ Objections objections_despite(const Reading& reading, const std::vector<std::str
   return second;
 }
 
+/// Three ways to say what is plugged: one of them.
+void check_plugging_doubles(Reading& reading) {
+  const char* first = nullptr;
+  for (const char* key :
+       {"exchanger.tubes.plugged", "exchanger.tubes.plugged_per_shell", "exchanger.tubes.plugged_in_unit"}) {
+    if (!reading.has(key)) continue;
+    if (first != nullptr)
+      reading.note(key, fmt::format("stands beside {}", last_segment(first)), "one of them",
+                   "leave the other out");
+    first = key;
+  }
+}
+
 /// Pairs of keys of which one is enough.
 void check_doubles(Reading& reading) {
   const Entries& entries = reading.entries();
@@ -188,6 +204,7 @@ void check_doubles(Reading& reading) {
     reading.note("exchanger.tubes.u_tubes",
                  fmt::format("{} U-tubes have {} holes, but count is {}", *u_tubes, 2 * *u_tubes, *count),
                  "a count of twice the U-tubes", "correct one, or leave it out");
+  check_plugging_doubles(reading);
   const auto tema = word(entries, "exchanger.tema");
   if (u_tubes && tema && tema->back() != 'U')
     reading.note("exchanger.tubes.u_tubes", fmt::format("rear head {} has no U-tubes", tema->back()),

@@ -262,6 +262,7 @@ Outcome read_by_form(Entry entry) {
     case Form::fluid:
     case Form::block:
     case Form::list:
+    case Form::wholes:
     case Form::overlay:
       return entry;
   }

@@ -11,17 +11,17 @@
 namespace dutygauge::case_io {
 namespace {
 
-/// Whether values stand under the key as a block or list.
-bool takes_block(Form form) {
-  return form == Form::block || form == Form::list || form == Form::fluid || form == Form::whole_or_list;
+bool takes_list(Form form) {
+  return form == Form::list || form == Form::whole_or_list || form == Form::wholes;
 }
 
-bool takes_list(Form form) {
-  return form == Form::list || form == Form::whole_or_list;
+/// Whether values stand under the key as a block or list.
+bool takes_block(Form form) {
+  return form == Form::block || form == Form::fluid || takes_list(form);
 }
 
 bool takes_value(Form form) {
-  return form != Form::block && form != Form::list;
+  return form != Form::block && form != Form::list && form != Form::wholes;
 }
 
 }  // namespace
