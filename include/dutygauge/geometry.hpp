@@ -32,6 +32,7 @@ struct Description {
   char front_head = 'B', shell_type = 'E', rear_head = 'M';  ///< TEMA letters
   bool vertical = false;
   int shells_in_series = 1, shells_in_parallel = 1;
+  bool tube_side_in_series = false;             ///< the tube stream passes the parallel shells in turn
   std::optional<FlowDirection> flow_direction;  ///< one-pass units
   FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
 
@@ -178,6 +179,7 @@ struct Exchanger {
   double outside_per_inside = 1;  ///< outside area / area of the bore [-]
   std::optional<FinnedSurface> finned;
   int shells_in_series = 1, shells_in_parallel = 1;
+  bool tube_side_in_series = false;  ///< only the shell stream is shared by what is in parallel
   FlowDirection flow_direction = FlowDirection::counter;
   FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
   double effective_length = 0;     ///< L_eff [m]
@@ -185,6 +187,9 @@ struct Exchanger {
   double tubes_open = 0;           ///< holes open to flow, of the mean shell
   double area_per_shell = 0;       ///< effective outside area, fins and all [m2]
   double area = 0;                 ///< of all shells [m2]
+
+  /// How many ways the tube stream is shared.
+  int tube_banks() const { return tube_side_in_series ? 1 : shells_in_parallel; }
 };
 
 /// What cannot be built or rated, by key of the case file. Empty: `derive` may be called.

@@ -63,6 +63,7 @@ void describe_letters_and_shells(const Entries& entries, Description& d) {
   d.vertical = word(entries, "exchanger.orientation") == "vertical";
   d.shells_in_series = whole(entries, "exchanger.shells.in_series").value_or(1);
   d.shells_in_parallel = whole(entries, "exchanger.shells.in_parallel").value_or(1);
+  d.tube_side_in_series = word(entries, "exchanger.shells.tube_side") == "in_series";
   if (const auto flow = word(entries, "exchanger.flow_direction"))
     d.flow_direction = *flow == "parallel" ? FlowDirection::parallel : FlowDirection::counter;
   if (word(entries, "exchanger.first_tube_pass") == "with_shell_flow")

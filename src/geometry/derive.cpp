@@ -156,6 +156,7 @@ Checked<Exchanger> build(const Description& d) {
   exchanger.as_described = d;
   exchanger.shells_in_series = d.shells_in_series;
   exchanger.shells_in_parallel = d.shells_in_parallel;
+  exchanger.tube_side_in_series = d.tube_side_in_series;
   exchanger.flow_direction = d.flow_direction.value_or(FlowDirection::counter);
   exchanger.first_tube_pass = d.first_tube_pass;
   exchanger.tubesheet_thickness = tubesheet_thickness(d);

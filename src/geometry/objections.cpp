@@ -83,6 +83,10 @@ void check_letters(const Description& d, Objections& out) {
 }
 
 void check_passes(const Description& d, Objections& out) {
+  if (d.tube_side_in_series && d.shells_in_parallel < 2)
+    out.push_back({"exchanger.shells.tube_side", "in_series, but nothing is in parallel",
+                   "in_parallel of 2 or more, which only the shell stream shares then",
+                   "leave it out where both streams pass the shells in turn: that is in_series"});
   if (has_u_tubes(d) && d.tube_passes % 2 != 0)
     out.push_back({"exchanger.tubes.passes", fmt::format("{} with rear head U", d.tube_passes),
                    "an even number: a U-tube goes there and back", "mend the passes or the rear head"});

@@ -211,8 +211,8 @@ Json between_shells(const service::Assessment& assessment) {
   Json list = Json::array();
   if (!assessment.rating.outcome) return list;
   for (const auto& shell : assessment.rating.outcome->between_shells)
-    for (int bank = 1; bank <= assessment.problem.exchanger.shells_in_parallel; ++bank)
-      list.push_back({{"shell", fmt::format("{}.{}", bank, shell.position)},
+    for (int bank = 0; bank < assessment.problem.exchanger.tube_banks(); ++bank)
+      list.push_back({{"shell", fmt::format("{}.{}", shell.bank + bank, shell.position)},
                       {"shell_side_outlet_degC", in_json_unit(shell.shell_outlet, units::Kind::temperature)},
                       {"tube_side_outlet_degC", in_json_unit(shell.tube_outlet, units::Kind::temperature)}});
   return list;
