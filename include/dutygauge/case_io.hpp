@@ -11,6 +11,7 @@
 #include "dutygauge/findings.hpp"
 #include "dutygauge/rating.hpp"
 #include "dutygauge/service.hpp"
+#include "dutygauge/service/control.hpp"
 
 /// Case files: YAML to a Case of the structs below this level. No physics.
 namespace dutygauge::case_io {
@@ -82,10 +83,11 @@ struct Case {
   units::System display = units::System::metric;
   rating::Problem problem;
   service::Service service;
-  bids::Claims claims;  ///< of the sheet, as built
-  Inputs inputs;        ///< as typed, and assumed, in SI
-  Assumptions assumed;  ///< made while reading and deriving
-  Findings findings;    ///< the same
+  std::optional<service::Control> control;  ///< what holds the unit at its duty
+  bids::Claims claims;                      ///< of the sheet, as built
+  Inputs inputs;                            ///< as typed, and assumed, in SI
+  Assumptions assumed;                      ///< made while reading and deriving
+  Findings findings;                        ///< the same
   std::vector<Accepted> accepted;
 };
 

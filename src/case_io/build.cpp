@@ -29,6 +29,13 @@ service::Service service_of(const Entries& entries, units::System words) {
   return result;
 }
 
+std::optional<service::Control> control_of(const Entries& entries) {
+  const auto typed = word(entries, "service.control");
+  if (!typed) return {};
+  return *typed == "bypass_shell_side" ? service::Control::bypass_shell_side
+                                       : service::Control::throttle_tube_side;
+}
+
 rating::Methods methods_of(Reading& reading) {
   const auto shell_side = word(reading.entries(), "methods.shell_side");
   const auto tema = word(reading.entries(), "exchanger.tema");
@@ -137,6 +144,8 @@ Case read_case(const Document& document, Reading& reading) {
   for (const bool is_shell_side : {true, false})
     put_film(films[is_shell_side ? 0 : 1], is_shell_side, result.problem);
   result.service = service_of(entries, result.display);
+  result.control = control_of(entries);
+  take_bypasses(reading, result);
   result.claims = std::move(claims);
   append(result.assumed, reading.assumed());
   append(result.assumed, derived.assumed);

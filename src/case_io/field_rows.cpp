@@ -184,6 +184,11 @@ constexpr Row rows[] = {
      "as a sheet states it; used to find a flow that is from_duty"},
     {"streams.*.outlet.temperature", quantity, required, Kind::temperature, temperatures,
      "58 degC // 35 degC", "at the outlet"},
+    {"streams.*.bypass", block, optional, Kind::ratio, any, "",
+     "a part of the stream that goes round the exchanger and is mixed in behind it"},
+    {"streams.*.bypass.share", quantity, required, Kind::ratio, between(0.0, 0.95), "15 %", "of the flow"},
+    {"streams.*.bypass.sensor", word, required, Kind::ratio, any, "after_mix",
+     "where the outlet of the service is measured", "after_mix|before_mix"},
     {"streams.*.film_coefficient", quantity, optional, Kind::film_coefficient, positive(1e6),
      "850 W/m2.K // 5200 W/m2.K",
      "film taken instead of the computed one, on the tubes' outside // in the tubes, on the bore; needs "
@@ -229,6 +234,10 @@ constexpr Row rows[] = {
     {"service.duty.at_most", quantity, optional, Kind::power, positive(1e10), "900 kW", "the most duty"},
     {"service.confidence", quantity, optional, Kind::ratio, between(0.5, 0.99), "80 %",
      "the probability from which the sentence may begin with yes"},
+
+    {"service.control", word, optional, Kind::ratio, any, "throttle_tube_side",
+     "what holds the unit at exactly the required duty: the balance there is shown beside that running free",
+     "throttle_tube_side|bypass_shell_side"},
 
     {"operating_cases", block, optional, Kind::ratio, any, "",
      "what the same unit must do; each is rated, the worst governs"},

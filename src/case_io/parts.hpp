@@ -45,6 +45,10 @@ void put_film(const GivenFilm& given, bool is_shell_side, rating::Problem& probl
 /// The stream of "shell_side" or "tube_side"; empty where it cannot be made.
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 
+/// Takes what goes round the exchanger off the flows, and puts limits on the mixed outlets where the
+/// exchanger has them. Throws InputError.
+void take_bypasses(const Reading& reading, Case& result);
+
 /// Whether the shell side is scaled from the sheet's claims.
 bool is_scaled(const Entries& entries);
 

@@ -21,6 +21,12 @@ service::Service service_of(const case_io::Case& a_case) {
   return service;
 }
 
+service::Holding held(const service::Assessment& running_free, service::Control control) {
+  const auto& required = running_free.margins.required_duty;
+  if (!required) return {{}, "no line of the service asks for a duty"};
+  return service::hold(running_free.problem, control, *required);
+}
+
 report::RatedCase rated(const case_io::Case& a_case) {
   const auto service = service_of(a_case);
   report::RatedCase result{.name = a_case.operating_case,
@@ -29,6 +35,10 @@ report::RatedCase rated(const case_io::Case& a_case) {
                            .findings = a_case.findings};
   const auto& judged = result.design_fouling.findings;
   result.findings.insert(result.findings.end(), judged.begin(), judged.end());
+  if (a_case.control) {
+    result.held = held(result.design_fouling, *a_case.control);
+    result.held_clean = held(result.clean, *a_case.control);
+  }
   return result;
 }
 
