@@ -63,6 +63,12 @@ TEST_CASE("plugging: renewed tubes are a lever, whichever way the plugs are said
   }
 }
 
+TEST_CASE("geometry: a vertical unit has a note, and is rated as a horizontal one") {
+  const auto vertical = built(with("orientation: horizontal", "orientation: vertical"));
+  CHECK(has_finding(vertical.findings, "geometry.vertical"));
+  CHECK(vertical.problem.exchanger.area == built(std::string(good::oil_cooler)).problem.exchanger.area);
+}
+
 TEST_CASE("plugging: two ways at once, a wrong number of shells and no tube left are refused") {
   refused::check({
       {"two ways",

@@ -76,7 +76,7 @@ TEST_CASE("control: page and JSON show the balance; a unit that does too little 
   const auto little =
       result_of(with("at_least: 400 kW", "at_least: 900 kW", controlled("throttle_tube_side")));
   CHECK_FALSE(little.cases.front().held->controlled.has_value());
-  CHECK(report::text(little, {}).find("not held: running free it does only") != std::string::npos);
+  CHECK(report::text(little, {}).find("not held: running free it falls short by") != std::string::npos);
   CHECK(nlohmann::json::parse(report::json(little))["control"]["held"] == false);
 }
 

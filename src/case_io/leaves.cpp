@@ -193,9 +193,6 @@ Outcome read_pair(Entry entry) {
 Outcome read_word(Entry entry) {
   const Field& field = *entry.field;
   if (is_one_of(entry.text, field.words)) return entry;
-  if (field.key == "methods.shell_side" && entry.text == "scaled")
-    return misread(field, "the shell side scaled from a sheet is not read yet by this version",
-                   "give the baffles and write bell_delaware or kern");
   const auto near = nearest(entry.text, field.words);
   return misread(field, quoted(entry.text) + " is not known here",
                  near.empty() ? "write one of them" : fmt::format("write {}", near));

@@ -74,6 +74,8 @@ class Reading {
  private:
   /// Whether a mistake of the key, or of an item of its list, is noted.
   bool is_at_fault_within(std::string_view key) const;
+  /// Whether the key, or a block it stands in, is there under a misspelt name.
+  bool is_misspelt(std::string_view key) const;
   std::string expected_in(const Field& field) const;
   void check_keys();
   void check_key(const std::string& key, const Position& at, bool is_block, bool is_list);

@@ -48,7 +48,8 @@ std::size_t governing(const std::vector<report::RatedCase>& cases) {
     const auto& margins = one.design_fouling.margins;
     const auto probability = one.spread ? one.spread->probability : std::nullopt;
     return std::tuple(one.design_fouling.rating.outcome.has_value(), probability.value_or(none),
-                      margins.duty.value_or(none), margins.temperature.value_or(none));
+                      one.design_fouling.verdict.met.value_or(true), margins.duty.value_or(none),
+                      margins.temperature.value_or(none));
   };
   return static_cast<std::size_t>(std::ranges::min_element(cases, {}, room) - cases.begin());
 }

@@ -118,6 +118,16 @@ void assume_lengths_and_flow(const Description& d, double thickness, Assumptions
                        .look_in = "piping drawing"});
 }
 
+void report_vertical(const Description& d, Findings& findings) {
+  if (!d.vertical) return;
+  findings.push_back({.id = "geometry.vertical",
+                      .text =
+                          "the unit stands vertical: forced single-phase flow is rated as in a horizontal "
+                          "one. Slow viscous flow feels natural convection, which then helps or hinders "
+                          "and is not counted; see that vents and drains keep both sides full",
+                      .ground = Ground::method});
+}
+
 /// Both bases of the area, since sheets state either.
 void report_fins(const Description& d, const Exchanger& exchanger, Findings& findings) {
   if (!d.fins) return;
@@ -179,6 +189,7 @@ Checked<Exchanger> build(const Description& d) {
   set_wall_path(d, exchanger);
   report_plugging(d, out.findings, out.assumed);
   report_fins(d, exchanger, out.findings);
+  report_vertical(d, out.findings);
   return out;
 }
 

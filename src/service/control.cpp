@@ -22,10 +22,6 @@ rating::Rating rated_at(rating::Problem problem, Control by, double share) {
   return rating::rate(problem);
 }
 
-std::string in_words(double duty) {
-  return units::typed(duty, units::Kind::power, units::System::metric, 4);
-}
-
 }  // namespace
 
 Holding hold(const rating::Problem& problem, Control by, double required_duty) {
@@ -36,9 +32,9 @@ Holding hold(const rating::Problem& problem, Control by, double required_duty) {
   const double free = excess(1.0);
   if (std::isnan(free)) return {{}, "running free has no result"};
   if (free < 0.0)
-    return {{},
-            fmt::format("running free it does only {}, and no control adds to that",
-                        in_words(required_duty * (1.0 + free)))};
+    return {
+        {},
+        fmt::format("running free it falls short by {:.1f} %, and no control adds to that", -100.0 * free)};
   double high = 1.0, low = 1.0;
   while (low > least_share && excess(low) >= 0.0) {
     high = low;
@@ -48,9 +44,7 @@ Holding hold(const rating::Problem& problem, Control by, double required_duty) {
   if (std::isnan(below))
     return {{}, fmt::format("at {:.0f} % of the flow the unit cannot be rated any more", 100.0 * low)};
   if (below >= 0.0)
-    return {
-        {},
-        fmt::format("even {:.0f} % of the flow gives more than {}", 100.0 * low, in_words(required_duty))};
+    return {{}, fmt::format("even {:.0f} % of the flow gives more than is required", 100.0 * low)};
   const auto share = numerics::find_root(excess, {low, high}, 1e-9);
   if (!share) return {{}, "no flow gives exactly the required duty"};
   auto rating = rated_at(problem, by, *share);
