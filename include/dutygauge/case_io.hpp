@@ -65,7 +65,7 @@ struct Document {
   std::string sha256;                   ///< of the bytes read, hexadecimal
   std::vector<Mistake> mistakes;        ///< that did not stop the reading (doubled keys)
   std::vector<std::string> of_cases;    ///< the file's operating cases, where this is one of them
-  /// Where the shell side is scaled from the sheet: the case the sheet speaks of, as it was before
+  /// Where the shell side is scaled from the sheet, or a flow follows from its duty: the case the sheet speaks of, as it was before
   /// anything was varied. Null: this document is that case.
   std::shared_ptr<const Document> sheet{};
 };

@@ -143,10 +143,17 @@ std::vector<Mistake> merged(std::vector<CaseMistake> all, std::size_t case_count
 }  // namespace
 
 void keep_sheet(const Document& before, Document& after) {
-  const auto method = after.leaves.find("methods.shell_side");
-  if (after.sheet || method == after.leaves.end() || method->second.text != "scaled") return;
+  const auto is = [&](const char* key, std::string_view word) {
+    const auto leaf = after.leaves.find(key);
+    return leaf != after.leaves.end() && leaf->second.text == word;
+  };
+  constexpr const char* method = "methods.shell_side";
+  const bool is_scaled = is(method, "scaled");
+  const bool needs_sheet =
+      is_scaled || is("streams.shell_side.flow", "from_duty") || is("streams.tube_side.flow", "from_duty");
+  if (after.sheet || !needs_sheet) return;
   Document sheet = laid(before, case_of_sheet(before), false);
-  sheet.leaves.insert_or_assign("methods.shell_side", method->second);
+  if (is_scaled) sheet.leaves.insert_or_assign(method, after.leaves.at(method));
   after.sheet = std::make_shared<const Document>(std::move(sheet));
 }
 

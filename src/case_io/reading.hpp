@@ -21,6 +21,7 @@ struct Entry {
   double factor = 1.0;     ///< already in `value` and shown in `text`
   units::Value value{};    ///< of numbers; the first of a pair; the amount of a flow
   double second = 0;       ///< of a pair
+  units::Value outlet{};   ///< the same as written, with its range or deviation
   bool from_duty = false;  ///< a flow that a duty and an outlet give
   units::FlowBasis basis = units::FlowBasis::mass;
   double at_temperature = 0;  ///< [K] where a volume flow is measured, or a property holds
@@ -89,6 +90,7 @@ class Reading {
   void read_leaf(const std::string& key, const Leaf& leaf, const Field& field);
   void take(const std::string& key, Entry entry);
   void assume_spans(const std::string& key, const Entry& entry);
+  void assume_span(const std::string& key, const Entry& entry, const units::Value& value);
   void require_all();
   void require(const Field& field, const std::string& parent);
   Position position_of(std::string_view key) const;
