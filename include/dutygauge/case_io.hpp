@@ -98,8 +98,11 @@ struct Case {
 /// holds. Throws InputError.
 Document read_document(std::string_view text, std::string file);
 
-/// Reads a file (regular file or pipe, at most 4 MB), "-" for standard input.
+/// The bytes of a file (regular file or pipe, at most 4 MB), "-" for standard input.
 /// Throws InputError; the text says what the system said.
+std::string read_text(const std::string& path);
+
+/// Reads such a file as a document. Throws InputError.
 Document read_file(const std::string& path);
 
 /// Names of the operating cases in file order; "base" alone where the file states none.
