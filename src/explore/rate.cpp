@@ -3,6 +3,8 @@
 #include <limits>
 #include <tuple>
 
+#include <tbb/parallel_for.h>
+
 #include "dutygauge/explore.hpp"
 #include "how_sure.hpp"
 
@@ -104,8 +106,8 @@ std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorR
 
 /// Everything but the claims.
 report::Result without_claims(const std::vector<case_io::Case>& cases, const Swings& swings) {
-  std::vector<report::RatedCase> all;
-  for (const auto& one : cases) all.push_back(rated(one));
+  std::vector<report::RatedCase> all(cases.size());
+  tbb::parallel_for(std::size_t{0}, cases.size(), [&](std::size_t i) { all[i] = rated(cases[i]); });
   Findings of_anchor;
   const auto anchored = anchored_to(cases.front().anchor, of_anchor);
   for (auto& one : all) one.findings.insert(one.findings.end(), of_anchor.begin(), of_anchor.end());
