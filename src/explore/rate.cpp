@@ -96,7 +96,10 @@ std::vector<report::AcceptedFinding> take_accepted(Findings& findings,
 std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorReading>& read,
                                             Findings& findings) {
   if (!read) return {};
-  auto anchor = uncertainty::anchor_to(read->unit, read->reading);
+  const auto* found = std::get_if<case_io::FoundFouling>(&read->reading);
+  auto anchor = found ? uncertainty::anchor_to_fouling(read->unit, found->value, found->sigma)
+                      : uncertainty::anchor_to(read->unit, std::get<uncertainty::SteadyReading>(read->reading));
+  if (found && anchor.value) anchor.value->reading.taken = found->taken;
   findings.insert(findings.end(), anchor.findings.begin(), anchor.findings.end());
   if (!anchor.value) return {};
   const auto rated = rating::rate(uncertainty::today(*anchor.value, anchor.value->unit));
