@@ -5,6 +5,7 @@
 #include <stdexcept>
 #include <string>
 #include <string_view>
+#include <variant>
 #include <vector>
 
 #include "dutygauge/bids.hpp"
@@ -12,6 +13,7 @@
 #include "dutygauge/rating.hpp"
 #include "dutygauge/service.hpp"
 #include "dutygauge/service/control.hpp"
+#include "dutygauge/uncertainty/anchor.hpp"
 
 /// Case files: YAML to a Case of the structs below this level. No physics.
 namespace dutygauge::case_io {
@@ -65,14 +67,26 @@ struct Document {
   std::string sha256;                   ///< of the bytes read, hexadecimal
   std::vector<Mistake> mistakes;        ///< that did not stop the reading (doubled keys)
   std::vector<std::string> of_cases;    ///< the file's operating cases, where this is one of them
-  /// Where the shell side is scaled from the sheet, or a flow follows from its duty: the case the sheet speaks of, as it was before
-  /// anything was varied. Null: this document is that case.
+  /// Where the shell side is scaled from the sheet, or a flow follows from its duty: the case the sheet
+  /// speaks of, as it was before anything was varied. Null: this document is that case.
   std::shared_ptr<const Document> sheet{};
 };
 
 /// A finding that somebody has looked at and decided on.
 struct Accepted {
   std::string id, because, by;
+};
+
+/// A fouling that a record of readings has shown.
+struct FoundFouling {
+  std::string taken = {};       ///< when, as typed
+  double value = 0, sigma = 0;  ///< on the outside area [m2.K/W]
+};
+
+/// What says how the running unit is, and the unit it was taken of: as it is, without overlays.
+struct AnchorReading {
+  std::variant<uncertainty::SteadyReading, FoundFouling> reading;
+  rating::Problem unit;
 };
 
 /// A case ready to be rated.
@@ -85,9 +99,10 @@ struct Case {
   service::Service service;
   std::optional<service::Control> control;  ///< what holds the unit at its duty
   bids::Claims claims;                      ///< of the sheet, as built
-  Inputs inputs;                            ///< as typed, and assumed, in SI
-  Assumptions assumed;                      ///< made while reading and deriving
-  Findings findings;                        ///< the same
+  std::optional<AnchorReading> anchor;
+  Inputs inputs;        ///< as typed, and assumed, in SI
+  Assumptions assumed;  ///< made while reading and deriving
+  Findings findings;    ///< the same
   std::vector<Accepted> accepted;
 };
 
@@ -96,8 +111,11 @@ struct Case {
 /// holds. Throws InputError.
 Document read_document(std::string_view text, std::string file);
 
-/// Reads a file (regular file or pipe, at most 4 MB), "-" for standard input.
+/// The bytes of a file (regular file or pipe, at most 4 MB), "-" for standard input.
 /// Throws InputError; the text says what the system said.
+std::string read_text(const std::string& path);
+
+/// Reads such a file as a document. Throws InputError.
 Document read_file(const std::string& path);
 
 /// Names of the operating cases in file order; "base" alone where the file states none.

@@ -124,6 +124,8 @@ Case read_case(const Document& document, Reading& reading) {
   const rating::Methods methods = methods_of(reading);
   check_scaled(reading);
   bids::Claims claims = claims_of(reading);
+  std::optional<AnchorReading> anchor;
+  if (shell_side && tube_side) anchor = anchor_of(reading, shell_side->stream, tube_side->stream);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");
@@ -143,6 +145,7 @@ Case read_case(const Document& document, Reading& reading) {
                     .methods = methods};
   for (const bool is_shell_side : {true, false})
     put_film(films[is_shell_side ? 0 : 1], is_shell_side, result.problem);
+  result.anchor = std::move(anchor);
   result.service = service_of(entries, result.display);
   result.control = control_of(entries);
   take_bypasses(reading, result);
@@ -172,6 +175,7 @@ Case build_plain(const Document& document) {
   Reading reading(document, case_fields());
   Case result = read_case(document, reading);
   if (is_scaled(reading.entries())) scale_shell_side(document, stated_case_of(document, result), result);
+  if (result.anchor) result.anchor->unit = result.problem;
   result.inputs = inputs_of(reading.entries(), result.assumed, result.display);
   return result;
 }

@@ -59,6 +59,16 @@ void check_scaled(Reading& reading);
 /// Throws InputError.
 void scale_shell_side(const Document& document, const Case& stated_case, Case& result);
 
+/// The density [kg/m3] that turns the volume flow written at `side`.flow into a mass flow; empty
+/// with a mistake noted.
+std::optional<double> flow_density(Reading& reading, const std::string& side, const fluids::Fluid& fluid,
+                                   const Inlet& inlet);
+
+/// The reading the unit is to be tied to; empty where there is none or it cannot be one, which
+/// is noted.
+std::optional<AnchorReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
+                                       const rating::Stream& tube_side);
+
 /// Builds the case of a document without overlays. Throws InputError.
 Case build_plain(const Document& document);
 /// What the sheet claims; empty where it claims nothing.

@@ -8,6 +8,7 @@
 #include <string>
 
 #include "along_json.hpp"
+#include "anchor_json.hpp"
 #include "dutygauge/report.hpp"
 #include "dutygauge/sources.hpp"
 #include "spread_json.hpp"
@@ -179,6 +180,10 @@ Json operating_case(const RatedCase& one) {
   const Json fouled = json;
   json["states"] = {{"clean", state(one.clean, one.spread_clean, one.held_clean)},
                     {"design_fouling", fouled}};
+  if (one.today) {
+    json["states"]["today"] = state(one.today->assessment, one.today->spread, {});
+    json["states"]["today"]["change_since_reading"] = change_json(one.today->change);
+  }
   return json;
 }
 
@@ -351,6 +356,7 @@ std::string json(const Result& result) {
        {"solutions", solutions(assessment)},
        {"states", states(result)},
        {"operating_cases", operating_cases(result)},
+       {"anchor", anchor_json(result.anchored)},
        {"assumed", assumed(result)},
        {"levers", levers(result.levers)},
        {"findings", findings(result)},
