@@ -149,3 +149,14 @@ TEST_CASE("geometry: a published tube count is never refused as too full, half a
     CHECK(objects_to(d, "exchanger.tubes.count"));
   }
 }
+
+TEST_CASE("geometry: baffle holes that meet are objected to, with the gap between tubes") {
+  Description d = complete();  // 25.4 mm less 19.05 mm leave 6.35 mm
+  d.tube_to_baffle = 0.00634;
+  CHECK(objections(d).empty());
+  d.tube_to_baffle = 0.00636;
+  REQUIRE(objects_to(d, "exchanger.clearances.tube_to_baffle"));
+  CHECK(objections(d).front().what.find("6.35 mm between two tubes") != std::string::npos);
+  d.tube_to_baffle = d.tube_pitch - d.tube_outside_diameter;
+  CHECK(objects_to(d, "exchanger.clearances.tube_to_baffle"));
+}
