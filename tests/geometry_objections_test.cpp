@@ -88,6 +88,7 @@ TEST_CASE("geometry: what cannot be is objected to by its key, and derive refuse
       {"exchanger.baffles.cut",  // a window full of tubes
        [](Description& d) {
          d.tube_pitch = 0.01906, d.tube_count = 680, d.bundle_to_shell = 0.0, d.baffle_cut = 0.45;
+         d.tube_to_baffle = 0.0;
        }},
       {"exchanger.baffles.count", [](Description& d) { d.baffle_count = 0; }},
       {"exchanger.baffles.count", [](Description& d) { d.baffle_count = 40; }},

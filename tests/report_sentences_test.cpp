@@ -61,8 +61,8 @@ std::vector<std::string> talkative_cases() {
   texts.push_back(viscous);
   texts.push_back(good::with("temperature: 29 degC", "temperature: 0.2 degC"));
   texts.push_back(
-      good::with("clearances: {tube_to_baffle: 0.8 mm, shell_to_baffle: 4.8 mm, bundle_to_shell: 45 mm}",
-                 "clearances: {}", good::with("    tubesheet_thickness: 45 mm\n", "")));
+      good::with("  clearances: {tube_to_baffle: 0.8 mm, shell_to_baffle: 4.8 mm, bundle_to_shell: 45 mm}\n",
+                 "", good::with("    tubesheet_thickness: 45 mm\n", "")));
   texts.push_back(
       good::with("fluid: {constant: {density: 865 kg/m3, heat_capacity: 2050 J/kg.K, conductivity: 0.13 "
                  "W/m.K, viscosity: 22 mPa.s, phase: liquid}}",
@@ -87,6 +87,7 @@ TEST_CASE("report: every number of a finding or an assumption is in the reader's
                                           std::pair(System::metric, &not_metric)})
       for (const std::string& sentence : sentences(result, system)) {
         CAPTURE(sentence);
+        if (contains(sentence, "the case gives")) continue;  // quotes the file as it is typed
         CHECK(!std::regex_search(sentence, *foreign));
         CHECK(!contains(sentence, "{"));
         ++said;
@@ -149,7 +150,7 @@ TEST_CASE("report: a liquid of constant properties has a sentence that reads wel
 TEST_CASE("report: a drop far above its allowance is so many times the limit") {
   const auto tight = rated(good::with("allowable_pressure_drop: 70 kPa", "allowable_pressure_drop: 1 kPa"));
   const std::string shown = page(tight);
-  CHECK(std::regex_search(shown, std::regex("cooling water pressure drop .*over: [0-9.]+ times the limit")));
+  CHECK(std::regex_search(shown, std::regex("cooling water pressure drop .* [0-9]+ x limit +over")));
   CHECK(!std::regex_search(shown, std::regex("-[0-9]{3,}\\.[0-9] %")));
   const double drop = tight.assessment.rating.outcome->tube_drop.total();
   const auto with_limit = [&](double limit) {
@@ -158,13 +159,13 @@ TEST_CASE("report: a drop far above its allowance is so many times the limit") {
     return page(result);
   };
   CHECK(contains(with_limit(drop / 1.99), "-99.0 %"));
-  CHECK(contains(with_limit(drop / 2.01), "over: 2.0 times the limit"));
-  CHECK(contains(with_limit(drop / 43.2), "over: 43 times the limit"));
+  CHECK(contains(with_limit(drop / 2.01), "2.0 x limit"));
+  CHECK(contains(with_limit(drop / 43.2), "43 x limit"));
 }
 
 TEST_CASE("report: a duty far above the required one is so many times what is needed") {
   const auto result = rated(good::with("at_least: 400 kW", "at_least: 4 kW"));
-  CHECK(std::regex_search(page(result), std::regex("duty .*ok: [0-9]+ times what is needed")));
+  CHECK(std::regex_search(page(result), std::regex("duty .* [0-9]+ x need +ok")));
 }
 
 TEST_CASE("report: where Kern's drop lies far off, the page says which one stands") {

@@ -2,7 +2,6 @@
 
 #include <cmath>
 #include <limits>
-#include <stdexcept>
 
 #include "dutygauge/units/mention.hpp"
 
@@ -27,8 +26,8 @@ TEST_CASE("units: every kind can be mentioned, and comes back with the value it 
   }
   CHECK(spoken(mention(-40.0 + 273.15, Kind::temperature), System::us) == "-40.0 degF");
   CHECK(spoken(mention(1e-12, Kind::viscosity), System::si) == "1e-12 Pa.s");
-  CHECK_THROWS_AS(mention(std::nan(""), Kind::power), std::invalid_argument);
-  CHECK_THROWS_AS(mention(std::numeric_limits<double>::infinity(), Kind::power), std::invalid_argument);
+  CHECK(mention(std::nan(""), Kind::power) == "nan");
+  CHECK(mention(std::numeric_limits<double>::infinity(), Kind::power) == "inf");
 }
 
 TEST_CASE("units: braces that are no mention stay as they are") {

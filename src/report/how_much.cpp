@@ -29,12 +29,10 @@ std::string at_least_or_most(bool at_least, const std::string& limit) {
 void put_margin(Row& row, double fraction_left, std::string_view broken, bool limit_is_most) {
   constexpr double far_over = -1.0, far_above = 10.0;
   const std::string word(limit_word(fraction_left, broken));
-  if (limit_is_most && fraction_left < far_over)
-    row.insert(row.end(), {"", fmt::format("{}: {} the limit", word, times(1.0 - fraction_left))});
-  else if (!limit_is_most && fraction_left > far_above)
-    row.insert(row.end(), {"", fmt::format("{}: {} what is needed", word, times(1.0 + fraction_left))});
-  else
-    row.insert(row.end(), {signed_percent(fraction_left), word});
+  std::string margin = signed_percent(fraction_left);
+  if (limit_is_most && fraction_left < far_over) margin = times(1.0 - fraction_left) + " limit";
+  if (!limit_is_most && fraction_left > far_above) margin = times(1.0 + fraction_left) + " need";
+  row.insert(row.end(), {margin, word});
 }
 
 void duty_rows(const Result& result, const rating::Outcome& outcome, std::vector<Row>& rows) {

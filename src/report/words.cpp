@@ -128,7 +128,7 @@ std::string_view limit_word(double fraction_left, std::string_view broken) {
 }
 
 std::string times(double ratio) {
-  return fmt::format("{:.{}f} times", ratio, ratio < 10.0 ? 1 : 0);
+  return fmt::format("{:.{}f} x", ratio, ratio < 10.0 ? 1 : 0);
 }
 
 std::string listed(const std::vector<std::string>& words) {

@@ -4,7 +4,6 @@
 
 #include <algorithm>
 #include <cmath>
-#include <stdexcept>
 
 #include "kinds.hpp"
 
@@ -36,7 +35,7 @@ std::string resolved(std::string_view inside, System system) {
 }  // namespace
 
 std::string mention(double si, Kind kind) {
-  if (!std::isfinite(si)) throw std::invalid_argument("only a finite number can be mentioned");
+  if (!std::isfinite(si)) return fmt::format("{}", si);
   return fmt::format("{{{}:{}}}", mark_of(facts(kind)), si);
 }
 

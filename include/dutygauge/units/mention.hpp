@@ -8,7 +8,7 @@
 namespace dutygauge::units {
 
 /// The mark that stands for a quantity in a sentence: "{temperature:341.15}", the kind's name without its
-/// article and the SI value. Throws std::invalid_argument on NaN and infinity.
+/// article and the SI value. What is not finite has no unit: "nan".
 std::string mention(double si, Kind kind);
 
 /// A sentence with its mentions shown in a system of units. Whatever else stands in braces is left alone.
