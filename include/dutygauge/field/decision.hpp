@@ -74,9 +74,9 @@ enum class Advice : std::uint8_t { stop_now, next_stop, not_needed, settle_first
 std::string_view name_of(Advice advice);
 
 struct Decision {
-  std::vector<Option> options;
+  std::vector<Option> options = {};
   Advice advice = Advice::settle_first;
-  std::string why;  ///< one clause
+  std::string why = {};  ///< one clause
 };
 
 /// Each way over the courses of a forecast. Of those whose risk is accepted (of all, where none

@@ -77,7 +77,7 @@ std::optional<Fit> fit(const Trend& trend, LawKind kind, const FitOptions& optio
 
 /// All laws held against one series.
 struct Choice {
-  std::vector<Fit> fits;       ///< lowest BIC first
+  std::vector<Fit> fits = {};       ///< lowest BIC first
   std::size_t chosen = 0;      ///< the simplest of those within 2 of the lowest BIC
   std::size_t undecided = 1;   ///< how many of the first `fits` lie within 2
   bool trend = false;          ///< something other than a constant was chosen
