@@ -1,0 +1,23 @@
+#include "dutygauge/field/plant.hpp"
+
+#include "balance.hpp"
+
+namespace dutygauge::field {
+namespace {
+
+/// Half of the 95 % the property's source claims; unknown for what a user gave.
+double heat_capacity_uncertainty(const fluids::Fluid& fluid) {
+  for (const fluids::PropertyNote& note : fluids::notes(fluid))
+    if (note.property == "heat_capacity") return 0.5 * note.uncertainty;
+  return 0.0;
+}
+
+}  // namespace
+
+Plant::Plant(const rating::Problem& problem, const Calibration& found)
+    : prepared(problem), calibration(found) {
+  hot_heat_capacity_uncertainty = heat_capacity_uncertainty(hot_stream(*this).fluid);
+  cold_heat_capacity_uncertainty = heat_capacity_uncertainty(cold_stream(*this).fluid);
+}
+
+}  // namespace dutygauge::field
