@@ -1,5 +1,4 @@
 #include <doctest/doctest.h>
-#include <fmt/core.h>
 
 #include <cmath>
 #include <limits>
@@ -30,29 +29,6 @@ field::Channels reading(double hot_flow, double cold_flow, double hot_in, double
           missing,
           missing,
           missing};
-}
-
-/// Fixed films and heat capacities on a known surface, hot stream in the shell.
-rating::Problem fixed_plant(int passes, double area, double wall, double tube_film, double shell_film,
-                            double hot_heat_capacity, double cold_heat_capacity) {
-  return plants::problem(fmt::format(R"(dutygauge: 1
-exchanger: {{tema: AEL, area: {} m2, wall_resistance: {} m2.K/W, tubes: {{passes: {}}}, flow_direction: counter}}
-streams:
-  shell_side:
-    fluid: {{constant: {{heat_capacity: {} J/kg.K}}}}
-    flow: 80 kg/s
-    inlet: {{temperature: 90 degC}}
-    fouling: 0 m2.K/W
-    film_law: {{value: {} W/m2.K, at_flow: 80 kg/s, flow_exponent: 0, surface: outside}}
-  tube_side:
-    fluid: {{constant: {{heat_capacity: {} J/kg.K}}}}
-    flow: 110 kg/s
-    inlet: {{temperature: 24 degC}}
-    fouling: 0 m2.K/W
-    film_law: {{value: {} W/m2.K, at_flow: 110 kg/s, flow_exponent: 0, surface: outside}}
-)",
-                                     area, wall, passes, hot_heat_capacity, shell_film, cold_heat_capacity,
-                                     tube_film));
 }
 
 /// A worked budget: one reading, its uncertainties, and what follows from them.
@@ -106,7 +82,13 @@ const Budget budgets[] = {
 };
 
 rating::Problem problem_of(const Budget& b) {
-  return fixed_plant(b.passes, b.area, 4e-5, 4300.0, 3600.0, b.hot_heat_capacity, b.cold_heat_capacity);
+  return plants::fixed({.passes = b.passes,
+                        .area = b.area,
+                        .wall = 4e-5,
+                        .tube_film = 4300.0,
+                        .shell_film = 3600.0,
+                        .hot_heat_capacity = b.hot_heat_capacity,
+                        .cold_heat_capacity = b.cold_heat_capacity});
 }
 
 const field::Instruments budget_instruments = plants::instruments(
@@ -181,7 +163,7 @@ TEST_CASE("field: noise is amplified as the arrangement's slope says") {
     // The tube stream is the smaller: 50 kg/s; both heat capacities 4000 J/kg.K.
     const double p = arrangement::effectiveness(arrangement, row.capacity_ratio, row.ntu);
     const double span = 40.0, hot_flow = 50.0 / row.capacity_ratio;
-    const auto problem = fixed_plant(row.passes, 100.0, 0.0, 5000.0, 5000.0, 4000.0, 4000.0);
+    const auto problem = plants::fixed({.passes = row.passes, .area = 100.0});
     const auto a = field::apparent(
         problem, {}, budget_instruments,
         reading(hot_flow, 50.0, 70.0, 70.0 - row.capacity_ratio * p * span, 30.0, 30.0 + p * span));
@@ -193,7 +175,7 @@ TEST_CASE("field: noise is amplified as the arrangement's slope says") {
 
 TEST_CASE("field: a missing flow is inferred with its uncertainty") {
   // Computed from the closed form: 54.43721 kg/s, 3.0342 %; stated tolerance 1e-5.
-  const auto problem = fixed_plant(2, 210.0, 4e-5, 4300.0, 3600.0, 2150.0, 4180.0);
+  const auto problem = plants::fixed({.hot_heat_capacity = 2150.0, .cold_heat_capacity = 4180.0});
   const auto instruments = plants::instruments({.flow_random = 0.012, .temperature_random = 0.25});
   const auto flow = field::inferred(field::Plant(problem), instruments,
                                     reading(missing, 60.0, 82.0, 52.0, 25.0, 39.0), Channel::hot_flow);

@@ -1,4 +1,6 @@
 #pragma once
+#include <fmt/core.h>
+
 #include <string>
 
 #include "dutygauge/case_io.hpp"
@@ -192,6 +194,33 @@ service:
   duty:
     at_least: 2833223 W
 )";
+
+/// Fixed films and heat capacities on a known surface, hot stream in the shell.
+struct Fixed {
+  int passes = 2;
+  double area = 100, wall = 0, tube_film = 5000, shell_film = 5000;
+  double hot_heat_capacity = 4000, cold_heat_capacity = 4000;
+};
+inline dutygauge::rating::Problem fixed(const Fixed& f) {
+  return problem(fmt::format(R"(dutygauge: 1
+exchanger: {{tema: AEL, area: {} m2, wall_resistance: {} m2.K/W, tubes: {{passes: {}}}, flow_direction: counter}}
+streams:
+  shell_side:
+    fluid: {{constant: {{heat_capacity: {} J/kg.K}}}}
+    flow: 80 kg/s
+    inlet: {{temperature: 90 degC}}
+    fouling: 0 m2.K/W
+    film_law: {{value: {} W/m2.K, at_flow: 80 kg/s, flow_exponent: 0, surface: outside}}
+  tube_side:
+    fluid: {{constant: {{heat_capacity: {} J/kg.K}}}}
+    flow: 110 kg/s
+    inlet: {{temperature: 24 degC}}
+    fouling: 0 m2.K/W
+    film_law: {{value: {} W/m2.K, at_flow: 110 kg/s, flow_exponent: 0, surface: outside}}
+)",
+                             f.area, f.wall, f.passes, f.hot_heat_capacity, f.shell_film,
+                             f.cold_heat_capacity, f.tube_film));
+}
 
 /// Instruments alike on all flows (relative) and on all temperatures [K]; drops 1 % and 2 %.
 struct Accuracy {

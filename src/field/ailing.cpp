@@ -1,0 +1,189 @@
+#include "ailing.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <limits>
+
+namespace dutygauge::field {
+namespace {
+
+constexpr double nothing = std::numeric_limits<double>::quiet_NaN();
+
+bool is_drop(Channel channel) {
+  return channel == Channel::tube_dp || channel == Channel::shell_dp;
+}
+
+bool is_flow(Channel channel) {
+  return channel == Channel::hot_flow || channel == Channel::cold_flow;
+}
+
+double& value(Channels& channels, Channel channel) {
+  return channels[index_of(channel)];
+}
+
+void add(const Part& part, Ailment& ailment) {
+  switch (part.cause) {
+    case Cause::tube_deposit:
+      ailment.tube_deposit += part.magnitude;
+      break;
+    case Cause::shell_deposit:
+      ailment.shell_deposit += part.magnitude;
+      break;
+    case Cause::plugging:
+      ailment.plugged += part.magnitude;
+      break;
+    case Cause::tube_bypass:
+      ailment.tube_bypass += part.magnitude;
+      break;
+    case Cause::shell_bypass:
+      ailment.shell_bypass += part.magnitude;
+      break;
+    case Cause::area_lost:
+      ailment.area_lost += part.magnitude;
+      break;
+    case Cause::none:
+    case Cause::instrument:
+      break;
+  }
+}
+
+bool is_relative(Channel channel) {
+  return is_flow(channel) || is_drop(channel);
+}
+
+/// From a reading to the truth, and back, where the instrument shows wrong.
+double truth(double reading, const Part& part) {
+  return is_relative(*part.channel) ? reading / (1.0 + part.magnitude) : reading - part.magnitude;
+}
+
+double shown(double truth, const Part& part) {
+  return is_relative(*part.channel) ? truth * (1.0 + part.magnitude) : truth + part.magnitude;
+}
+
+double uncertainty_unread(const Channels& predicted, Channel channel) {
+  const ModelError error;
+  return is_drop(channel) ? error.drop * predicted[index_of(channel)] : error.temperature;
+}
+
+}  // namespace
+
+Limits limits_of(const Part& part, double fouling_before) {
+  constexpr double thickest = 0.02;  // [m2.K/W]
+  switch (part.cause) {
+    case Cause::tube_deposit:
+      return {-std::max(0.0, fouling_before), thickest};
+    case Cause::shell_deposit:
+      return {0.0, thickest};
+    case Cause::instrument:
+      return is_flow(*part.channel)   ? Limits{-0.5, 1.0}
+             : is_drop(*part.channel) ? Limits{-0.9, 3.0}
+                                      : Limits{-30.0, 30.0};
+    default:
+      return {0.0, 0.7};
+  }
+}
+
+std::optional<Channels> predict(const Plant& plant, const Channels& reading, double fouling_before,
+                                std::span<const Part> parts) {
+  Channels real = reading;
+  Ailment ailment{.tube_deposit = fouling_before};
+  for (const Part& part : parts) {
+    add(part, ailment);
+    if (part.channel) value(real, *part.channel) = truth(value(real, *part.channel), part);
+  }
+  const auto response = respond(plant,
+                                {real[index_of(Channel::hot_flow)], real[index_of(Channel::cold_flow)],
+                                 real[index_of(Channel::hot_in)], real[index_of(Channel::cold_in)]},
+                                ailment);
+  if (!response) return {};
+  Channels result;
+  result.fill(nothing);
+  value(result, Channel::hot_out) = response->hot_out;
+  value(result, Channel::cold_out) = response->cold_out;
+  value(result, Channel::tube_dp) = response->tube_dp > 0.0 ? response->tube_dp : nothing;
+  value(result, Channel::shell_dp) = response->shell_dp > 0.0 ? response->shell_dp : nothing;
+  for (const Part& part : parts)
+    if (part.channel) value(result, *part.channel) = shown(value(result, *part.channel), part);
+  return result;
+}
+
+Comparison::Comparison(const Plant& plant, std::span<const Observed> before, std::span<const Observed> after,
+                       double fouling_before)
+    : plant_(&plant), fouling_before_(fouling_before) {
+  for (const Observed& day : after)
+    if (predict(plant, day.value, fouling_before, {})) after_.push_back(day);
+  Channels sum{}, variance{}, days{};
+  for (const Observed& day : before) {
+    const auto predicted = predict(plant, day.value, fouling_before, {});
+    if (!predicted) continue;
+    for (const Channel channel : observables) {
+      const std::size_t i = index_of(channel);
+      const double scale = is_drop(channel) ? (*predicted)[i] : 1.0;
+      const double miss = is_drop(channel) ? day.value[i] / scale : day.value[i] - (*predicted)[i];
+      if (!std::isfinite(miss)) continue;
+      sum[i] += miss;
+      variance[i] += std::pow(day.standard_uncertainty[i] / scale, 2);
+      days[i] += 1.0;
+    }
+  }
+  for (const Channel channel : observables) {
+    const std::size_t i = index_of(channel);
+    offset_[i] = days[i] > 0.0 ? sum[i] / days[i] : nothing;
+    variance_[i] = days[i] > 0.0 ? variance[i] / (days[i] * days[i]) : nothing;
+  }
+  if (const auto all = residuals({})) count_ = static_cast<int>(all->size());
+}
+
+Channels Comparison::carried_over(const Channels& predicted) const {
+  Channels result = predicted;
+  for (const Channel channel : observables) {
+    const std::size_t i = index_of(channel);
+    result[i] = is_drop(channel) ? predicted[i] * offset_[i] : predicted[i] + offset_[i];
+  }
+  return result;
+}
+
+bool Comparison::is_observed(Channel channel) const {
+  const std::size_t i = index_of(channel);
+  return std::isfinite(offset_[i]) &&
+         std::ranges::any_of(after_, [i](const Observed& day) { return std::isfinite(day.value[i]); });
+}
+
+std::optional<std::vector<double>> Comparison::residuals(std::span<const Part> parts) const {
+  std::vector<double> result;
+  for (const Observed& day : after_) {
+    const auto predicted = predict(*plant_, day.value, fouling_before_, parts);
+    if (!predicted) return {};
+    const Channels expected = carried_over(*predicted);
+    for (const Channel channel : observables) {
+      const std::size_t i = index_of(channel);
+      if (!std::isfinite(day.value[i]) || !std::isfinite(expected[i])) continue;
+      const double scale = is_drop(channel) ? (*predicted)[i] : 1.0;
+      const double spread =
+          std::sqrt(std::pow(day.standard_uncertainty[i], 2) + variance_[i] * scale * scale);
+      result.push_back((day.value[i] - expected[i]) / spread);
+    }
+  }
+  return result;
+}
+
+std::optional<Channels> Comparison::last_day(std::span<const Part> parts) const {
+  const auto predicted = predict(*plant_, after_.back().value, fouling_before_, parts);
+  if (!predicted) return {};
+  Channels expected = carried_over(*predicted);
+  // A drop nobody read before is as the model has it.
+  for (const Channel channel : observables)
+    if (std::isnan(offset_[index_of(channel)])) value(expected, channel) = (*predicted)[index_of(channel)];
+  return expected;
+}
+
+Channels Comparison::last_uncertainty() const {
+  const Observed& day = after_.back();
+  Channels result = day.standard_uncertainty;
+  const auto predicted = predict(*plant_, day.value, fouling_before_, {});
+  for (const Channel channel : observables)
+    if (!is_observed(channel) && predicted) value(result, channel) = uncertainty_unread(*predicted, channel);
+  return result;
+}
+
+}  // namespace dutygauge::field

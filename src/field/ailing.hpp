@@ -1,0 +1,51 @@
+#pragma once
+#include <span>
+#include <vector>
+
+#include "dutygauge/field/causes.hpp"
+
+/// Internal to field: causes put to a plant, and how far readings lie from what it then shows.
+namespace dutygauge::field {
+
+inline constexpr std::array observables = {Channel::hot_out, Channel::cold_out, Channel::tube_dp,
+                                           Channel::shell_dp};
+
+/// Bounds of a cause's magnitude.
+struct Limits {
+  double low, high;
+};
+Limits limits_of(const Part& part, double fouling_before);
+
+/// What the unit would show of its observables at a reading's flows and inlets; NaN in the
+/// others and for drops the unit does not know. Empty where that cannot be.
+std::optional<Channels> predict(const Plant& plant, const Channels& reading, double fouling_before,
+                                std::span<const Part> parts);
+
+/// The days after a change against predictions that agree with the days before.
+class Comparison {
+ public:
+  Comparison(const Plant& plant, std::span<const Observed> before, std::span<const Observed> after,
+             double fouling_before);
+
+  int count() const { return count_; }  ///< observables of all days after
+  double fouling_before() const { return fouling_before_; }
+  bool is_observed(Channel channel) const;
+
+  /// Residuals in standard uncertainties; empty where the parts cannot be.
+  std::optional<std::vector<double>> residuals(std::span<const Part> parts) const;
+
+  /// Predicted observables of the last day, and what they are uncertain by (2 % or 0.1 K where not read).
+  std::optional<Channels> last_day(std::span<const Part> parts) const;
+  Channels last_uncertainty() const;
+
+ private:
+  Channels carried_over(const Channels& predicted) const;
+
+  const Plant* plant_;
+  std::vector<Observed> after_;
+  double fouling_before_;
+  Channels offset_{}, variance_{};  ///< of the days before: [K] or ratio; of their mean
+  int count_ = 0;
+};
+
+}  // namespace dutygauge::field
