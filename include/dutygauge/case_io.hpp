@@ -85,7 +85,7 @@ struct Case {
   Findings findings;    ///< the same
   std::vector<Accepted> accepted;
   field::Mapping readings;  ///< how the plant's record is to be read
-  field::Plan plan;
+  field::Planned plan;
 };
 
 /// Reads YAML text strictly: one document, no anchors, aliases, tags, merges;

@@ -119,7 +119,7 @@ Case build_plain(const Document& document) {
   const rating::Methods methods = methods_of(reading);
   bids::Claims claims = claims_of(reading);
   field::Mapping readings = mapping_of(reading);
-  field::Plan plan = plan_of(reading, readings.clock.offset);
+  field::Planned plan = plan_of(reading, readings.clock.offset);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");

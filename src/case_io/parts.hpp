@@ -55,6 +55,6 @@ bids::Claims claims_of(Reading& reading);
 
 /// How the plant's record is to be read, and what is planned.
 field::Mapping mapping_of(Reading& reading);
-field::Plan plan_of(Reading& reading, std::optional<int> offset);
+field::Planned plan_of(Reading& reading, std::optional<int> offset);
 
 }  // namespace dutygauge::case_io

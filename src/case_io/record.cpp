@@ -169,17 +169,17 @@ std::optional<field::Period> period_of(Reading& reading, const std::string& bloc
   return field::Period{*from, *to};
 }
 
-field::EventKind event_kind(const Reading& reading, const std::string& key) {
-  using field::EventKind;
+field::Doing event_kind(const Reading& reading, const std::string& key) {
+  using field::Doing;
   const auto what = word(reading.entries(), key);
-  if (what == "cleaning") return EventKind::cleaning;
-  if (what == "outage") return EventKind::outage;
-  if (what == "plugging") return EventKind::plugging;
-  return what == "recalibration" ? EventKind::recalibration : EventKind::other;
+  if (what == "cleaning") return Doing::cleaning;
+  if (what == "outage") return Doing::outage;
+  if (what == "plugging") return Doing::plugging;
+  return what == "recalibration" ? Doing::recalibration : Doing::other;
 }
 
-std::vector<field::Event> events_of(Reading& reading, std::optional<int> offset) {
-  std::vector<field::Event> events;
+std::vector<field::Done> events_of(Reading& reading, std::optional<int> offset) {
+  std::vector<field::Done> events;
   for (int i = 0;; ++i) {
     const std::string block = fmt::format("readings.events.{}", i);
     if (!reading.has(block)) break;
@@ -193,7 +193,7 @@ std::vector<field::Event> events_of(Reading& reading, std::optional<int> offset)
     else if (at || period)
       events.push_back({at ? field::Period{*at, *at} : *period, event_kind(reading, joined(block, "what"))});
   }
-  std::ranges::stable_sort(events, {}, [](const field::Event& event) { return event.when.from; });
+  std::ranges::stable_sort(events, {}, [](const field::Done& event) { return event.when.from; });
   return events;
 }
 
@@ -215,8 +215,8 @@ field::Mapping mapping_of(Reading& reading) {
   return mapping;
 }
 
-field::Plan plan_of(Reading& reading, std::optional<int> offset) {
-  field::Plan plan;
+field::Planned plan_of(Reading& reading, std::optional<int> offset) {
+  field::Planned plan;
   const Entries& entries = reading.entries();
   plan.next_stop = moment(reading, "plan.next_stop", offset, false);
   plan.cleaning_cost = si(entries, "plan.cleaning.cost");

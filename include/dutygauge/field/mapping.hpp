@@ -70,12 +70,12 @@ struct Period {
   bool holds(std::int64_t time) const { return time >= from && time <= to; }
 };
 
-enum class EventKind { cleaning, outage, plugging, recalibration, other };
+enum class Doing { cleaning, outage, plugging, recalibration, other };
 
 /// What the plant knows to have happened; `when` of a moment has two equal ends.
-struct Event {
+struct Done {
   Period when;
-  EventKind kind = EventKind::other;
+  Doing kind = Doing::other;
 };
 
 /// How a record is to be read.
@@ -90,11 +90,11 @@ struct Mapping {
   Assumptions assumed;                                         ///< of the instruments
   bool shell_density_known = true, tube_density_known = true;  ///< a volume flow needs it
   std::optional<Period> clean_period;
-  std::vector<Event> events;  ///< in order of their beginning
+  std::vector<Done> events;  ///< in order of their beginning
 };
 
 /// What is planned, and what it costs.
-struct Plan {
+struct Planned {
   std::optional<std::int64_t> next_stop;
   std::optional<double> cleaning_cost;                ///< [currency]
   std::optional<double> cleaning_time;                ///< [s]

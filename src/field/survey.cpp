@@ -1,0 +1,50 @@
+#include <algorithm>
+#include <cmath>
+
+#include "dutygauge/field/screening.hpp"
+
+namespace dutygauge::field {
+
+void Thinned::add(double value) {
+  if (seen_++ % stride_ != 0) return;
+  if (values_.size() == most_) {
+    std::size_t kept = 0;
+    for (std::size_t i = 0; i < values_.size(); i += 2) values_[kept++] = values_[i];
+    values_.resize(kept);
+    stride_ *= 2;
+    if ((seen_ - 1) % stride_ != 0) return;
+  }
+  values_.push_back(value);
+}
+
+double Thinned::median() const {
+  if (values_.empty()) return 0.0;
+  std::vector<double> sorted = values_;
+  const auto middle = sorted.begin() + static_cast<std::ptrdiff_t>(sorted.size() / 2);
+  std::ranges::nth_element(sorted, middle);
+  return *middle;
+}
+
+Survey survey_of(Record& record, std::uint64_t most, const std::function<void(const Reading&)>& keep) {
+  Survey survey;
+  Thinned hot, cold, intervals;
+  std::int64_t last = 0;
+  Reading reading;
+  while (survey.rows < most && record.next(reading)) {
+    if (survey.rows++ == 0)
+      survey.start = reading.time;
+    else
+      intervals.add(static_cast<double>(reading.time - last));
+    last = reading.time;
+    for (auto& [flows, channel] : {std::pair{&hot, Channel::hot_flow}, std::pair{&cold, Channel::cold_flow}})
+      if (const double flow = reading.value[index_of(channel)]; flow > 0.0) flows->add(flow);
+    if (keep) keep(reading);
+  }
+  survey.whole = survey.rows < most;
+  survey.hot_flow = hot.median();
+  survey.cold_flow = cold.median();
+  survey.interval = intervals.median();
+  return survey;
+}
+
+}  // namespace dutygauge::field
