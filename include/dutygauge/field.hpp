@@ -6,6 +6,7 @@
 #include <string_view>
 #include <vector>
 
+#include "dutygauge/field/causes.hpp"
 #include "dutygauge/field/changes.hpp"
 #include "dutygauge/field/cycles.hpp"
 #include "dutygauge/field/decision.hpp"
@@ -31,9 +32,15 @@ struct Suspect {
 };
 
 /// What may have done it, with its weight [-]; all weights sum to 1.
-struct Cause {
+struct WeighedCause {
   std::string name;
   double weight = 0;
+};
+
+/// The least and the greatest fouling that single readings of a day show.
+struct DayRange {
+  double day = 0;            ///< as Day::day
+  double low = 0, high = 0;  ///< [m2.K/W]
 };
 
 /// One reading of the record: which instruments are held to be right.
@@ -56,12 +63,13 @@ struct Evidence {
   DropLaws drop_laws = {};
   std::vector<Logged> logged = {};
   std::vector<Suspect> suspects = {};
-  std::vector<Cause> causes = {};
+  std::vector<WeighedCause> causes = {};
   std::optional<Allowed> allowed = {};  ///< empty: no service is stated
   double film_uncertainty = 0;          ///< standard, of 1/u_clean [m2.K/W]: in the level, not in a change
   bool calibrated = false;              ///< on a clean period: constant errors cancel in the level
   std::vector<Margin> margins = {};
   Plan plan = {};
+  std::vector<DayRange> ranges = {};  ///< of the hypothesis used; may be empty
 };
 
 /// How well the heat balance closes.
@@ -97,7 +105,7 @@ struct FieldResult {
   Closure closure = {};
   Events events = {};
   std::vector<Suspect> suspects = {};
-  std::vector<Cause> causes = {};  ///< the greatest weight first
+  std::vector<WeighedCause> causes = {};  ///< the greatest weight first
   std::optional<Allowed> allowed;
   std::vector<Margin> margins;
   Plan plan;
@@ -106,6 +114,7 @@ struct FieldResult {
   Advice advice = Advice::settle_first;
   std::string why = {};
   Days days = {};  ///< of the hypothesis used
+  std::vector<DayRange> ranges = {};
 
   const Outcome& used() const { return outcomes.front(); }
 };
