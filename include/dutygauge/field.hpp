@@ -1,6 +1,6 @@
 #pragma once
 #include <cstdint>
-#include <map>
+#include <utility>
 #include <optional>
 #include <string>
 #include <string_view>
@@ -21,7 +21,7 @@ namespace dutygauge::field {
 /// What became of the rows.
 struct RowCounts {
   std::uint64_t read = 0, used = 0;
-  std::map<std::string, std::uint64_t> dropped = {};  ///< by reason
+  std::vector<std::pair<std::string, std::uint64_t>> dropped = {};  ///< by reason
 };
 
 /// Channels that may be wrong, together or one of them, from some day on.

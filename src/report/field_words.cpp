@@ -135,7 +135,8 @@ std::vector<std::string> until(const FieldResult& result) {
 std::vector<std::string> instruments(const FieldResult& result) {
   std::vector<std::string> lines;
   if (result.closure.median)
-    lines.push_back(fmt::format("heat balance off by {} (+-{}): {}", signed_percent(*result.closure.median),
+    lines.push_back(fmt::format("heat balance off by {} (+-{}): {}",
+                                signed_percent(std::round(1e3 * *result.closure.median) / 1e3 + 0.0),
                                 per_cent(*result.closure.u95), result.closure.verdict));
   else
     lines.push_back("heat balance " + result.closure.verdict);
@@ -158,8 +159,7 @@ std::vector<std::string> causes(const FieldResult& result) {
 
 std::vector<std::string> data(const FieldResult& result) {
   if (result.rows.dropped.empty()) return {};
-  std::vector<std::pair<std::string, std::uint64_t>> dropped(result.rows.dropped.begin(),
-                                                             result.rows.dropped.end());
+  auto dropped = result.rows.dropped;
   std::ranges::stable_sort(dropped, std::ranges::greater{}, &std::pair<std::string, std::uint64_t>::second);
   std::string line = "not used: ";
   for (std::size_t i = 0; i < dropped.size(); ++i)
