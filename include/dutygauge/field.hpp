@@ -25,7 +25,7 @@ struct RowCounts {
 };
 
 /// Channels that may be wrong, together or one of them, from some day on.
-struct Suspect {
+struct Doubt {
   std::vector<Channel> channels;
   double since = 0;  ///< [d] since the first reading
   std::string text;  ///< one sentence
@@ -62,7 +62,7 @@ struct Evidence {
   std::vector<Hypothesis> hypotheses;  ///< at least one; the first is the one used
   DropLaws drop_laws = {};
   std::vector<Logged> logged = {};
-  std::vector<Suspect> suspects = {};
+  std::vector<Doubt> suspects = {};
   std::vector<WeighedCause> causes = {};
   std::optional<Allowed> allowed = {};  ///< empty: no service is stated
   double film_uncertainty = 0;          ///< standard, of 1/u_clean [m2.K/W]: in the level, not in a change
@@ -104,7 +104,7 @@ struct FieldResult {
   RowCounts rows = {};
   Closure closure = {};
   Events events = {};
-  std::vector<Suspect> suspects = {};
+  std::vector<Doubt> suspects = {};
   std::vector<WeighedCause> causes = {};  ///< the greatest weight first
   std::optional<Allowed> allowed;
   std::vector<Margin> margins;

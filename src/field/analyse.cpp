@@ -124,9 +124,9 @@ Outcome outcome_of(const Hypothesis& hypothesis, const Evidence& evidence, const
   return outcome;
 }
 
-std::vector<Suspicion> suspicions_of(const std::vector<Suspect>& suspects) {
+std::vector<Suspicion> suspicions_of(const std::vector<Doubt>& suspects) {
   std::vector<Suspicion> suspicions;
-  for (const Suspect& suspect : suspects) suspicions.push_back({suspect.channels, suspect.since});
+  for (const Doubt& suspect : suspects) suspicions.push_back({suspect.channels, suspect.since});
   return suspicions;
 }
 

@@ -48,7 +48,7 @@ Json events_json(const FieldResult& result) {
 
 Json suspects_json(const FieldResult& result) {
   Json suspects = Json::array();
-  for (const field::Suspect& suspect : result.suspects) {
+  for (const field::Doubt& suspect : result.suspects) {
     Json channels = Json::array();
     for (const field::Channel channel : suspect.channels) channels.push_back(field::name_of(channel));
     suspects.push_back(

@@ -140,7 +140,7 @@ std::vector<std::string> instruments(const FieldResult& result) {
                                 per_cent(*result.closure.u95), result.closure.verdict));
   else
     lines.push_back("heat balance " + result.closure.verdict);
-  for (const field::Suspect& suspect : result.suspects)
+  for (const field::Doubt& suspect : result.suspects)
     lines.push_back(fmt::format("since {}: {}", spoken_date(result.start, suspect.since), suspect.text));
   return lines;
 }
@@ -231,7 +231,7 @@ std::vector<std::string> events_in_words(const CaseName& about, const FieldResul
 
 std::vector<std::string> next_of(const FieldResult& result) {
   std::vector<std::string> tasks;
-  for (const field::Suspect& suspect : result.suspects) {
+  for (const field::Doubt& suspect : result.suspects) {
     std::vector<std::string> names;
     for (const field::Channel channel : suspect.channels) names.emplace_back(field::name_of(channel));
     if (!names.empty()) tasks.push_back(fmt::format("check {} against another instrument", listed(names)));
