@@ -118,6 +118,8 @@ Case build_plain(const Document& document) {
   check_inlets(reading);
   const rating::Methods methods = methods_of(reading);
   bids::Claims claims = claims_of(reading);
+  field::Mapping readings = mapping_of(reading);
+  field::Plan plan = plan_of(reading, readings.clock.offset);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");
@@ -139,6 +141,8 @@ Case build_plain(const Document& document) {
     put_film(films[is_shell_side ? 0 : 1], is_shell_side, result.problem);
   result.service = service_of(entries, result.display);
   result.claims = std::move(claims);
+  result.readings = std::move(readings);
+  result.plan = std::move(plan);
   append(result.assumed, reading.assumed());
   append(result.assumed, derived.assumed);
   append(result.findings, derived.findings);

@@ -13,15 +13,16 @@ namespace {
 
 /// Whether values stand under the key as a block or list.
 bool takes_block(Form form) {
-  return form == Form::block || form == Form::list || form == Form::fluid || form == Form::whole_or_list;
+  return form == Form::block || form == Form::list || form == Form::fluid || form == Form::whole_or_list ||
+         form == Form::texts;
 }
 
 bool takes_list(Form form) {
-  return form == Form::list || form == Form::whole_or_list;
+  return form == Form::list || form == Form::whole_or_list || form == Form::texts;
 }
 
 bool takes_value(Form form) {
-  return form != Form::block && form != Form::list;
+  return form != Form::block && form != Form::list && form != Form::texts;
 }
 
 }  // namespace
@@ -34,6 +35,9 @@ bool Entry::is_word() const {
     case Form::version:
     case Form::tema:
     case Form::fluid:
+    case Form::instant:
+    case Form::money:
+    case Form::energy_price:
       return true;
     default:
       return false;
@@ -42,6 +46,7 @@ bool Entry::is_word() const {
 
 units::Kind Entry::kind() const {
   if (dynamic) return units::Kind::viscosity;
+  if (relative) return units::Kind::ratio;
   if (field->form != Form::flow) return field->kind;
   return basis == units::FlowBasis::mass ? units::Kind::mass_flow : units::Kind::volume_flow;
 }
