@@ -1,11 +1,12 @@
 #pragma once
 #include <cstdint>
-#include <map>
+#include <utility>
 #include <optional>
 #include <string>
 #include <string_view>
 #include <vector>
 
+#include "dutygauge/field/causes.hpp"
 #include "dutygauge/field/changes.hpp"
 #include "dutygauge/field/cycles.hpp"
 #include "dutygauge/field/decision.hpp"
@@ -20,20 +21,26 @@ namespace dutygauge::field {
 /// What became of the rows.
 struct RowCounts {
   std::uint64_t read = 0, used = 0;
-  std::map<std::string, std::uint64_t> dropped = {};  ///< by reason
+  std::vector<std::pair<std::string, std::uint64_t>> dropped = {};  ///< by reason
 };
 
 /// Channels that may be wrong, together or one of them, from some day on.
-struct Suspect {
+struct Doubt {
   std::vector<Channel> channels;
   double since = 0;  ///< [d] since the first reading
   std::string text;  ///< one sentence
 };
 
 /// What may have done it, with its weight [-]; all weights sum to 1.
-struct Cause {
+struct WeighedCause {
   std::string name;
   double weight = 0;
+};
+
+/// The least and the greatest fouling that single readings of a day show.
+struct DayRange {
+  double day = 0;            ///< as Day::day
+  double low = 0, high = 0;  ///< [m2.K/W]
 };
 
 /// One reading of the record: which instruments are held to be right.
@@ -55,13 +62,14 @@ struct Evidence {
   std::vector<Hypothesis> hypotheses;  ///< at least one; the first is the one used
   DropLaws drop_laws = {};
   std::vector<Logged> logged = {};
-  std::vector<Suspect> suspects = {};
-  std::vector<Cause> causes = {};
+  std::vector<Doubt> suspects = {};
+  std::vector<WeighedCause> causes = {};
   std::optional<Allowed> allowed = {};  ///< empty: no service is stated
   double film_uncertainty = 0;          ///< standard, of 1/u_clean [m2.K/W]: in the level, not in a change
   bool calibrated = false;              ///< on a clean period: constant errors cancel in the level
   std::vector<Margin> margins = {};
   Plan plan = {};
+  std::vector<DayRange> ranges = {};  ///< of the hypothesis used; may be empty
 };
 
 /// How well the heat balance closes.
@@ -96,8 +104,8 @@ struct FieldResult {
   RowCounts rows = {};
   Closure closure = {};
   Events events = {};
-  std::vector<Suspect> suspects = {};
-  std::vector<Cause> causes = {};  ///< the greatest weight first
+  std::vector<Doubt> suspects = {};
+  std::vector<WeighedCause> causes = {};  ///< the greatest weight first
   std::optional<Allowed> allowed;
   std::vector<Margin> margins;
   Plan plan;
@@ -106,6 +114,7 @@ struct FieldResult {
   Advice advice = Advice::settle_first;
   std::string why = {};
   Days days = {};  ///< of the hypothesis used
+  std::vector<DayRange> ranges = {};
 
   const Outcome& used() const { return outcomes.front(); }
 };

@@ -84,13 +84,14 @@ Decision no_decision(const std::string& why) {
 }
 
 /// A cleaning helps against a deposit, and against what sits in front of the tubes.
-bool cleaning_helps(const std::vector<Cause>& causes) {
+bool cleaning_helps(const std::vector<WeighedCause>& causes) {
   if (causes.empty() || causes.front().weight < 0.5) return true;
   const std::string& name = causes.front().name;
   return name.ends_with("deposit") || name == "none";
 }
 
-Decision decision_of(const Outcome& outcome, const Evidence& evidence, const std::vector<Cause>& causes) {
+Decision decision_of(const Outcome& outcome, const Evidence& evidence,
+                     const std::vector<WeighedCause>& causes) {
   if (!outcome.fouling) return no_decision("too few days are left to say how the fouling goes");
   if (!evidence.allowed) {
     if (outcome.fouling->choice.trend)
@@ -107,7 +108,7 @@ Decision decision_of(const Outcome& outcome, const Evidence& evidence, const std
 }
 
 Outcome outcome_of(const Hypothesis& hypothesis, const Evidence& evidence, const Events& events,
-                   const std::vector<Cause>& causes) {
+                   const std::vector<WeighedCause>& causes) {
   Outcome outcome{.name = hypothesis.name};
   const auto cycles = cycles_of(fouling_of(hypothesis.days), events);
   const double systematic = systematic_of(hypothesis.days);
@@ -123,9 +124,9 @@ Outcome outcome_of(const Hypothesis& hypothesis, const Evidence& evidence, const
   return outcome;
 }
 
-std::vector<Suspicion> suspicions_of(const std::vector<Suspect>& suspects) {
+std::vector<Suspicion> suspicions_of(const std::vector<Doubt>& suspects) {
   std::vector<Suspicion> suspicions;
-  for (const Suspect& suspect : suspects) suspicions.push_back({suspect.channels, suspect.since});
+  for (const Doubt& suspect : suspects) suspicions.push_back({suspect.channels, suspect.since});
   return suspicions;
 }
 
@@ -183,8 +184,9 @@ FieldResult analyse(const Evidence& evidence) {
       .margins = evidence.margins,
       .plan = evidence.plan,
       .outcomes = {},
-      .days = days};
-  std::ranges::stable_sort(result.causes, std::ranges::greater{}, &Cause::weight);
+      .days = days,
+      .ranges = evidence.ranges};
+  std::ranges::stable_sort(result.causes, std::ranges::greater{}, &WeighedCause::weight);
   for (const Hypothesis& hypothesis : evidence.hypotheses) {
     // What stepped under one hypothesis may not have under another.
     const Events events = &hypothesis == &evidence.hypotheses.front()
