@@ -9,6 +9,8 @@ namespace dutygauge::field {
 namespace {
 
 constexpr double z95 = 2.0;  // as for all expanded uncertainties
+// Of a difference between two days whose constant errors are alike with r = 0.9: 2 (1 - r) of the variance.
+constexpr double left_of_constant = 0.2;
 
 double or_zero(const std::vector<double>& values) {
   return values.empty() ? 0.0 : median_of(values);
@@ -65,11 +67,11 @@ std::optional<FoulingNow> fouling_now(const Cycles& cycles, const Evidence& evid
   const double level = variance(fit, slopes_of(law, [end](const Law& l) { return l.at(end); }));
   const double change = variance(fit, slopes_of(law, [=](const Law& l) { return l.at(end) - l.at(begin); }));
   const double rate = variance(fit, slopes_of(law, [end](const Law& l) { return l.rate_at(end); }));
-  const double constant = evidence.calibrated ? 0.0 : systematic * systematic;
+  const double constant = systematic * systematic + evidence.film_uncertainty * evidence.film_uncertainty;
   now.now = law.at(end);
-  now.u95_level = z95 * std::sqrt(level + constant + evidence.film_uncertainty * evidence.film_uncertainty);
+  now.u95_level = z95 * std::sqrt(level + (evidence.calibrated ? left_of_constant : 1.0) * constant);
   now.change = law.at(end) - law.at(begin);
-  now.u95_change = z95 * std::sqrt(change);
+  now.u95_change = z95 * std::sqrt(change + left_of_constant * constant);
   now.rate = law.rate_at(end);
   now.rate_low = now.rate - z95 * std::sqrt(rate);
   now.rate_high = now.rate + z95 * std::sqrt(rate);
@@ -115,7 +117,7 @@ Outcome outcome_of(const Hypothesis& hypothesis, const Evidence& evidence, const
   outcome.fouling = fouling_now(cycles, evidence, systematic);
   if (evidence.allowed) {
     // The films are in both the level and what is allowed, and cancel; the instruments do not.
-    const double constant = evidence.calibrated ? 0.0 : systematic;
+    const double constant = systematic * std::sqrt(evidence.calibrated ? left_of_constant : 1.0);
     const Allowed allowed{evidence.allowed->fouling,
                           std::hypot(evidence.allowed->standard_uncertainty, constant)};
     outcome.forecast = forecast(cycles, allowed);
@@ -147,14 +149,18 @@ void conclude(FieldResult& result) {
 }  // namespace
 
 Closure closure_of(const Days& days) {
-  std::vector<double> values, uncertainties;
+  std::vector<double> values, uncertainties, moves;
   for (const Day& day : days)
     if (std::isfinite(day.apparent.closure) && std::isfinite(day.apparent.closure_uncertainty)) {
+      const double per_reading = std::sqrt(0.5 * std::max(day.count, 1));
+      if (!values.empty()) moves.push_back(std::abs(day.apparent.closure - values.back()) * per_reading);
       values.push_back(day.apparent.closure);
       uncertainties.push_back(day.apparent.closure_uncertainty);
     }
   if (values.empty()) return {.verdict = "not tested: a flow is missing"};
-  const double median = median_of(values), u = median_of(uncertainties);
+  // A median of many days has lost the scatter of the readings; their constant errors stay.
+  const double median = median_of(values), both = median_of(uncertainties), scatter = 1.4826 * or_zero(moves);
+  const double u = std::sqrt(std::max(both * both - scatter * scatter, 0.25 * both * both));
   Closure closure{.median = median, .u95 = z95 * u};
   const double size = std::abs(median);
   closure.verdict = size <= u         ? "closes"
@@ -162,12 +168,6 @@ Closure closure_of(const Days& days) {
                     : size <= 3.0 * u ? "doubtful"
                                       : "does not close";
   return closure;
-}
-
-std::string_view name_of(Channel channel) {
-  constexpr std::array<std::string_view, channel_count> names = {
-      "hot_flow", "cold_flow", "hot_in", "hot_out", "cold_in", "cold_out", "tube_dp", "shell_dp", "valve"};
-  return names.at(index_of(channel));
 }
 
 FieldResult analyse(const Evidence& evidence) {
