@@ -28,7 +28,7 @@ double floor_of(Quantity quantity) {
       return 0.05;
     case Quantity::hot_flow:
     case Quantity::cold_flow:
-      return 0.08;
+      return 0.1;
     default:
       return 2.0;
   }
@@ -201,6 +201,13 @@ std::optional<Channel> shifted_channel(const Group& group, const std::vector<Sus
   return only;
 }
 
+std::optional<Channel> load_channel(const Group& group) {
+  for (const Quantity quantity :
+       {Quantity::hot_flow, Quantity::cold_flow, Quantity::hot_in, Quantity::cold_in})
+    if (group.has(quantity)) return channel_of(quantity);
+  return {};
+}
+
 bool load_changed(const Group& group) {
   return group.has(Quantity::hot_flow) || group.has(Quantity::cold_flow) || group.has(Quantity::hot_in) ||
          group.has(Quantity::cold_in);
@@ -220,18 +227,11 @@ What cause_of_rise(const Group& group) {
   return load_changed(group) ? What::load_change : What::unexplained;
 }
 
-Event event_of(const Group& group, Quantity quantity, What what) {
-  Event event{.at = time_of(group, quantity), .what = what};
+Event event_of(const Group& group, Quantity quantity, What what, std::optional<Channel> channel = {}) {
+  Event event{.at = time_of(group, quantity), .what = what, .channel = channel};
   if (group.has(Quantity::fouling)) event.fouling = group.jump(Quantity::fouling);
   if (group.has(Quantity::closure)) event.closure = group.jump(Quantity::closure);
   return event;
-}
-
-std::optional<Channel> load_channel(const Group& group) {
-  for (const Quantity quantity :
-       {Quantity::hot_flow, Quantity::cold_flow, Quantity::hot_in, Quantity::cold_in})
-    if (group.has(quantity)) return channel_of(quantity);
-  return {};
 }
 
 /// Which event a step of the closure was. A meter that shifts steps alone with the drop over its
@@ -259,7 +259,7 @@ std::optional<Event> fouling_event(const Group& group) {
     // without a word in the log that is no cleaning.
     if (closure && !drop_fell(group) && !group.cleaning_logged) return {};
     if (load_changed(group) && !group.outage && !drop_fell(group) && !group.cleaning_logged)
-      return event_of(group, Quantity::fouling, What::load_change);
+      return event_of(group, Quantity::fouling, What::load_change, load_channel(group));
     return event_of(group, Quantity::fouling, What::cleaning);
   }
   if (closure) return {};
