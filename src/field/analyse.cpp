@@ -3,6 +3,7 @@
 #include <stdexcept>
 
 #include "dutygauge/field.hpp"
+#include "dutygauge/field/mapping.hpp"
 #include "shape_fit.hpp"
 
 namespace dutygauge::field {
@@ -165,9 +166,7 @@ Closure closure_of(const Days& days) {
 }
 
 std::string_view name_of(Channel channel) {
-  constexpr std::array<std::string_view, channel_count> names = {
-      "hot_flow", "cold_flow", "hot_in", "hot_out", "cold_in", "cold_out", "tube_dp", "shell_dp", "valve"};
-  return names.at(index_of(channel));
+  return name(channel);
 }
 
 FieldResult analyse(const Evidence& evidence) {
