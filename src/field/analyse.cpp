@@ -3,6 +3,7 @@
 #include <stdexcept>
 
 #include "dutygauge/field.hpp"
+#include "dutygauge/field/mapping.hpp"
 #include "shape_fit.hpp"
 
 namespace dutygauge::field {

@@ -1,6 +1,7 @@
 #include <algorithm>
 
 #include "field_words.hpp"
+#include "record.hpp"
 #include "table_parts.hpp"
 
 namespace dutygauge::report {
@@ -89,7 +90,7 @@ Json options_json(const FieldResult& result) {
 
 }  // namespace
 
-std::string json(const CaseName& about, const FieldResult& result) {
+std::string json(const CaseName& about, const FieldResult& result, const field::History* record) {
   Json object = start_of(about);
   Json dropped = Json::object();
   for (const auto& [reason, count] : result.rows.dropped) dropped[reason] = count;
@@ -109,6 +110,7 @@ std::string json(const CaseName& about, const FieldResult& result) {
   object["advice"] = name_of(result.advice);
   object["same_either_way"] = result.same_either_way ? Json(*result.same_either_way) : Json(nullptr);
   object["why"] = result.why;
+  if (record != nullptr) object["record"] = record_json(*record);
   return one_line(object);
 }
 

@@ -4,6 +4,7 @@
 
 #include "field_words.hpp"
 #include "page.hpp"
+#include "record.hpp"
 #include "table_parts.hpp"
 
 namespace dutygauge::report {
@@ -67,7 +68,7 @@ void options(Page& page, const FieldResult& result) {
 
 }  // namespace
 
-std::string text(const CaseName& about, const FieldResult& result) {
+std::string text(const CaseName& about, const FieldResult& result, const field::History* record) {
   Page page;
   top(page, about, result);
   for (const Fact& said : facts_of(about, result)) {
@@ -75,6 +76,12 @@ std::string text(const CaseName& about, const FieldResult& result) {
     if (said.name == "DATA") options(page, result);
     fact(page, said);
     if (said.name == "ANSWER") page.blank();
+  }
+  if (record != nullptr) {
+    page.blank();
+    const auto lines = record_lines(*record);
+    for (std::size_t i = 0; i < lines.size(); ++i) page.section(i == 0 ? "READ" : "", lines[i]);
+    page.blank();
   }
   const auto tasks = next_of(result);
   std::string line;
