@@ -118,6 +118,8 @@ Case build_plain(const Document& document) {
   check_inlets(reading);
   const rating::Methods methods = methods_of(reading);
   bids::Claims claims = claims_of(reading);
+  std::optional<uncertainty::SteadyReading> read;
+  if (shell_side && tube_side) read = anchor_of(reading, shell_side->stream, tube_side->stream);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");
@@ -137,6 +139,7 @@ Case build_plain(const Document& document) {
                     .methods = methods};
   for (const bool is_shell_side : {true, false})
     put_film(films[is_shell_side ? 0 : 1], is_shell_side, result.problem);
+  if (read) result.anchor = AnchorReading{std::move(*read), result.problem};
   result.service = service_of(entries, result.display);
   result.claims = std::move(claims);
   append(result.assumed, reading.assumed());
