@@ -6,6 +6,7 @@
 
 #include "dutygauge/field/causes.hpp"
 #include "field_plants.hpp"
+#include "field_simulated.hpp"
 #include "support.hpp"
 
 // Why a unit shows something else than before.
@@ -251,6 +252,32 @@ TEST_CASE("field: two causes at once are found as a pair") {
   }
   CHECK(relative(deposit, 2e-4) < 0.01);
   CHECK(relative(bypass, 0.2) < 0.01);
+}
+
+TEST_CASE("field: the cleaning of a simulated year is seen as its deposit gone") {
+  // What really happened: stopped on day 178, 92 % of the tube deposit removed, back on day 182.
+  const field::Plant plant(plants::problem(plants::water_cooler));
+  const auto instruments = plants::instruments({.flow_systematic = 0.01,
+                                                .flow_random = 0.01,
+                                                .temperature_systematic = 0.15,
+                                                .temperature_random = 0.15});
+  const auto days = simulated::daily(plant, instruments, simulated::running_hours("A"));
+  const auto between = [&](double from, double to) {
+    field::Days some;
+    for (const field::Day& day : days)
+      if (day.day > from && day.day < to) some.push_back(day);
+    return some;
+  };
+  const auto ranking = field::rank_over_days(plant, instruments, between(168, 178), between(182, 190));
+  REQUIRE(ranking.has_value());
+  CHECK(ranking->verdict == Ranked::most_likely);
+  const field::Part& part = ranking->singles.front().parts.front();
+  CHECK(field::name_of(part, days.front().value) == "tube-side deposit removed");
+  CHECK(std::abs(part.magnitude + 0.26e-3) < 0.03e-3);
+  // Two stretches of the same steady deposit differ by nothing.
+  const auto quiet = field::rank_over_days(plant, instruments, between(150, 158), between(158, 166));
+  REQUIRE(quiet.has_value());
+  CHECK(quiet->verdict == Ranked::no_change);
 }
 
 TEST_CASE("field: where nothing can be predicted nothing is ranked") {

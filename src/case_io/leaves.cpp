@@ -354,12 +354,14 @@ void Reading::assume_spans(const std::string& key, const Entry& entry) {
       .why = fmt::format("the case gives the range {}: rated at its middle", shown(entry.text)),
       .low = value.low,
       .high = value.high,
-      .look_in = place_of(key)};
+      .look_in = place_of(key),
+      .span = Span::range};
   if (value.standard_deviation) {
     assumption.why =
         fmt::format("the case gives {}: low and high are one standard deviation away", shown(entry.text));
     assumption.low = value.si - *value.standard_deviation;
     assumption.high = value.si + *value.standard_deviation;
+    assumption.span = Span::deviation;
   }
   assume(std::move(assumption));
 }

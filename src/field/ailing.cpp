@@ -65,6 +65,23 @@ double uncertainty_unread(const Channels& predicted, Channel channel) {
   return is_drop(channel) ? error.drop * predicted[index_of(channel)] : error.temperature;
 }
 
+/// Mean of some days; their variance where they are enough to tell it.
+struct Sample {
+  double mean = nothing, variance = 0;
+};
+
+Sample sample_of(const std::vector<double>& values) {
+  constexpr std::size_t enough = 5;
+  Sample sample;
+  if (values.empty()) return sample;
+  double sum = 0.0, squares = 0.0;
+  for (const double v : values) sum += v;
+  sample.mean = sum / static_cast<double>(values.size());
+  for (const double v : values) squares += std::pow(v - sample.mean, 2);
+  if (values.size() >= enough) sample.variance = squares / static_cast<double>(values.size() - 1);
+  return sample;
+}
+
 }  // namespace
 
 Limits limits_of(const Part& part, double fouling_before) {
@@ -112,7 +129,8 @@ Comparison::Comparison(const Plant& plant, std::span<const Observed> before, std
     : plant_(&plant), fouling_before_(fouling_before) {
   for (const Observed& day : after)
     if (predict(plant, day.value, fouling_before, {})) after_.push_back(day);
-  Channels sum{}, variance{}, days{};
+  std::array<std::vector<double>, channel_count> misses;
+  Channels variance{};
   for (const Observed& day : before) {
     const auto predicted = predict(plant, day.value, fouling_before, {});
     if (!predicted) continue;
@@ -121,15 +139,17 @@ Comparison::Comparison(const Plant& plant, std::span<const Observed> before, std
       const double scale = is_drop(channel) ? (*predicted)[i] : 1.0;
       const double miss = is_drop(channel) ? day.value[i] / scale : day.value[i] - (*predicted)[i];
       if (!std::isfinite(miss)) continue;
-      sum[i] += miss;
+      misses[i].push_back(miss);
       variance[i] += std::pow(day.standard_uncertainty[i] / scale, 2);
-      days[i] += 1.0;
     }
   }
   for (const Channel channel : observables) {
     const std::size_t i = index_of(channel);
-    offset_[i] = days[i] > 0.0 ? sum[i] / days[i] : nothing;
-    variance_[i] = days[i] > 0.0 ? variance[i] / (days[i] * days[i]) : nothing;
+    const Sample sample = sample_of(misses[i]);
+    const auto days = static_cast<double>(misses[i].size());
+    offset_[i] = sample.mean;
+    scatter_[i] = sample.variance;
+    variance_[i] = std::max(variance[i] / days, sample.variance) / days;
   }
   if (const auto all = residuals({})) count_ = static_cast<int>(all->size());
 }
@@ -159,8 +179,9 @@ std::optional<std::vector<double>> Comparison::residuals(std::span<const Part> p
       const std::size_t i = index_of(channel);
       if (!std::isfinite(day.value[i]) || !std::isfinite(expected[i])) continue;
       const double scale = is_drop(channel) ? (*predicted)[i] : 1.0;
+      const double stated = std::pow(day.standard_uncertainty[i], 2);
       const double spread =
-          std::sqrt(std::pow(day.standard_uncertainty[i], 2) + variance_[i] * scale * scale);
+          std::sqrt(std::max(stated, scatter_[i] * scale * scale) + variance_[i] * scale * scale);
       result.push_back((day.value[i] - expected[i]) / spread);
     }
   }

@@ -44,7 +44,9 @@ class Comparison {
   const Plant* plant_;
   std::vector<Observed> after_;
   double fouling_before_;
-  Channels offset_{}, variance_{};  ///< of the days before: [K] or ratio; of their mean
+  Channels offset_{};    ///< of the days before from the model: [K] or ratio
+  Channels variance_{};  ///< of their mean
+  Channels scatter_{};   ///< variance of one day, as the days before show it; 0 where they are few
   int count_ = 0;
 };
 

@@ -55,7 +55,8 @@ std::vector<std::string> spread_in_words(const Result& result) {
   if (!result.spread || !result.assessment.rating.outcome) return {};
   const auto& spread = *result.spread;
   const auto& outcome = *result.assessment.rating.outcome;
-  std::vector<std::string> said{fmt::format("In 9 cases of 10: duty +-{:.1f} %, {}, {}, {}, {}.",
+  std::vector<std::string> said{fmt::format("{}n 9 cases of 10: duty +-{:.1f} %, {}, {}, {}, {}.",
+                                            result.anchored ? "At design fouling, i" : "I",
                                             100.0 * half_width(spread, Output::duty) / outcome.duty,
                                             outlet(result, Side::shell), outlet(result, Side::tube),
                                             drop(result, Side::shell, outcome.shell_drop.total()),

@@ -79,10 +79,11 @@ Observed observed(const Day& day, const Instruments& instruments, const ModelErr
 
 /// Ranks causes of the change from `before` to `after` by BIC (Schwarz 1978). Each cause is fitted to the
 /// outlets and drops of all days after; what the model with `fouling_before` in the tubes
-/// misses before is carried over: temperatures by difference, drops by ratio. Magnitudes
-/// stay where they can be: shares 0 to 0.7, a deposit at most as much less as there was.
-/// With several days at several flows a deposit, the same for all, parts from a by-pass.
-/// Empty where `before` or `after` hold no day that can be predicted.
+/// misses before is carried over: temperatures by difference, drops by ratio.
+/// A day counts no more than the days before scatter among themselves, where they are five or more.
+/// Magnitudes stay where they can be: shares 0 to 0.7, a deposit at most as much less as there was. With
+/// several days at several flows a deposit, the same for all, parts from a by-pass. Empty where `before` or
+/// `after` hold no day that can be predicted.
 std::optional<Ranking> rank_causes(const Plant& plant, std::span<const Observed> before,
                                    std::span<const Observed> after, double fouling_before);
 
