@@ -71,6 +71,7 @@ struct Evidence {
   std::vector<Margin> margins = {};
   Plan plan = {};
   std::vector<DayRange> ranges = {};  ///< of the hypothesis used; may be empty
+  Days as_read = {};                  ///< with every instrument; empty where a hypothesis has them so
 };
 
 /// How well the heat balance closes.
