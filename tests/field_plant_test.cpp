@@ -1,7 +1,9 @@
 #include <doctest/doctest.h>
 
 #include <cmath>
+#include <iterator>
 #include <limits>
+#include <random>
 
 #include "field_plants.hpp"
 #include "field_simulated.hpp"
@@ -281,6 +283,33 @@ TEST_CASE("field: readings that cannot be give nothing") {
   CHECK_FALSE(field::apparent(plant, instruments, reading(0.0, 110.0, 55.0, 43.0, 28.0, 36.7)));
   CHECK_FALSE(field::apparent(plant, instruments, reading(missing, missing, 55.0, 43.0, 28.0, 36.7)));
   CHECK_FALSE(field::apparent(plant, instruments, reading(80.0, 110.0, missing, missing, 28.0, 36.7)));
+}
+
+TEST_CASE("field: no reading, however wild, gives anything but numbers or nothing") {
+  const double values[] = {missing, 0.0,   -1.0,  1e-300, 1e300, std::numeric_limits<double>::infinity(),
+                           1.0,     80.0,  110.0, 290.0,  301.0, 315.0,
+                           328.0,   420.0, 560.0};
+  const auto instruments = plants::instruments({.flow_random = 0.01, .temperature_random = 0.2});
+  for (const std::string& text : {plants::water_cooler, plants::oil_preheater, plants::drawn_cooler}) {
+    const field::Plant plant(plants::problem(text));
+    std::mt19937 random(3);
+    std::uniform_int_distribution<std::size_t> any(0, std::size(values) - 1);
+    for (int i = 0; i < 20000; ++i) {
+      field::Channels wild;
+      for (double& value : wild) value = values[any(random)];
+      const auto a = field::apparent(plant, instruments, wild);
+      if (a) {
+        CHECK(std::isfinite(a->fouling));
+        CHECK(std::isfinite(a->fouling_random));
+        CHECK(std::isfinite(a->fouling_systematic));
+        CHECK(a->u > 0.0);
+      }
+      const auto shown = field::respond(
+          plant, {wild[0], wild[1], wild[2], wild[4]},
+          {.tube_deposit = 1e-6 * wild[6], .shell_deposit = 1e-6 * wild[7], .plugged = 0.01 * wild[8]});
+      if (shown) CHECK(std::isfinite(shown->duty + shown->hot_out + shown->tube_dp + shown->shell_dp));
+    }
+  }
 }
 
 TEST_CASE("field: what the unit shows with a deposit is read back as that deposit") {

@@ -197,6 +197,8 @@ std::optional<Apparent> apparent(const Plant& plant, const Instruments& instrume
   const Inversion at{&plant, b, weighted, ends, *ntu, 1.0 / u, slopes};
   const Spread fouling = propagated(plant, instruments, b, gradient_of_fouling(at));
   const double clean = plant.calibration.factor * films.sum();
+  // Flows past all bounds overflow on the way.
+  if (!std::isfinite(clean + fouling.random + fouling.systematic + hot_spread + cold_spread)) return {};
   return Apparent{.hot_duty = b.missing && is_hot(*b.missing) ? nothing : b.hot_duty,
                   .cold_duty = b.missing && !is_hot(*b.missing) ? nothing : b.cold_duty,
                   .duty = weighted.duty,

@@ -123,6 +123,8 @@ std::optional<Balance> balance_of(const Plant& plant, const Channels& reading) {
   if (b.missing) {
     infer(plant, b);
     find_duties(plant, b);
+    // A temperature past the end of its fluid's range comes back as that end.
+    if (!(std::abs(b.hot_duty - b.cold_duty) < 1e-6 * std::abs(b.hot_duty))) return {};
   }
   if (!is_possible(plant, b)) return {};
   find_slopes(plant, b);
