@@ -20,6 +20,17 @@ double median_of(double* begin, std::size_t count) {
   return begin[count / 2];
 }
 
+/// Whether the median of the values is within a distance of one: more than half of them lie on
+/// either side of it then. Cheaper than the median, and nearly every reading is.
+bool is_near_median(double value, double distance, const double* values, std::size_t count) {
+  std::size_t below = 0, above = 0;
+  for (std::size_t i = 0; i < count; ++i) {
+    below += values[i] <= value + distance ? 1 : 0;
+    above += values[i] >= value - distance ? 1 : 0;
+  }
+  return 2 * below > count && 2 * above > count;
+}
+
 }  // namespace
 
 Steady steady_limits(const Survey& survey, const Limits& limits) {
@@ -115,6 +126,8 @@ void Screen::find_spikes(std::int64_t row) {
     for (std::int64_t i = first; i <= last; ++i)
       if (const double value = slot(i).value[c]; !std::isnan(value)) window[count++] = value;
     if (count < least_of_window) continue;
+    if (is_near_median(at.value[c], 0.5 * limits_.spike * random_of(c, at.value[c]), window.data(), count))
+      continue;
     const double middle = median_of(window.data(), count);
     // Nearly all readings are too close to be a spike whatever the others scatter.
     const double distance = std::abs(at.value[c] - middle), least = random_of(c, middle);
