@@ -1,7 +1,11 @@
 #include <doctest/doctest.h>
 #include <fmt/format.h>
+#include <sys/stat.h>
+#include <unistd.h>
 
 #include <cmath>
+#include <csignal>
+#include <thread>
 
 #include "dutygauge/case_io.hpp"
 #include "dutygauge/field/history.hpp"
@@ -99,4 +103,93 @@ TEST_CASE("field: daily fouling of plant G is within 25e-6 of the truth, from it
   CHECK(errors.rms <= 25e-6);
   CHECK(errors.days >= 350);
   CHECK(g.result.basis == Basis::clean_period);
+}
+
+TEST_CASE("field: films that are wrong by a factor are put right on a clean period, a trend in it included") {
+  Simulated a("A");
+  const double wrong = 1.1;  // of 1/u_clean
+  rating::Problem& problem = a.a_case.problem;
+  problem.tube_side.film_law->value /= wrong;
+  problem.shell_side.film_law->value /= wrong;
+  problem.exchanger.layer_resistance *= wrong;
+  a.a_case.readings.clean_period = {read_moment("2021-01-01", {}).value(),
+                                    read_moment("2021-01-08", {}).value()};
+  a.result = history(problem, a.a_case.readings, {TEST_DATA "/field/A-readings.csv"});
+  CHECK(a.result.basis == Basis::clean_period);
+  CHECK(a.result.calibrated_on > 150);
+  // The unit begins with 20e-6 m2.K/W, which is clean from now on: 3.4 % of 1/u_clean there.
+  CHECK(a.result.calibration.factor == doctest::Approx((1.0 + 20e-6 * 1709.5) / wrong).epsilon(0.01));
+  CHECK(a.result.calibration.standard_uncertainty < 0.01);
+  for (double& value : a.truth) value -= 20e-6;
+  const auto errors = a.errors(0, 170);
+  INFO(fmt::format("rms {:.2e}, mean {:.2e}", errors.rms, errors.mean));
+  CHECK(errors.rms <= 10e-6);
+}
+
+TEST_CASE("field: without a clean period computed films are held against the first cleaning") {
+  Simulated g("G");
+  g.a_case.readings.clean_period.reset();
+  const std::int64_t start = read_moment("2021-01-01", {}).value();
+  g.a_case.readings.events.push_back({{start, start}, Doing::cleaning});
+  const auto result = history(g.a_case.problem, g.a_case.readings, {TEST_DATA "/field/G-readings.csv"});
+  CHECK(result.basis == Basis::cleaning);
+  CHECK(result.days.front().apparent.fouling == doctest::Approx(0.0).scale(1e-3).epsilon(0.01));
+  g.a_case.readings.events.clear();
+  const auto open = history(g.a_case.problem, g.a_case.readings, {TEST_DATA "/field/G-readings.csv"});
+  CHECK(open.basis == Basis::films);
+  CHECK(open.calibration.factor == 1.0);
+  CHECK(open.film_uncertainty > 10.0 * result.film_uncertainty);
+}
+
+TEST_CASE("field: a clean period without readings is refused") {
+  Simulated a("A");
+  a.a_case.readings.clean_period = {0, 86400};
+  CHECK_THROWS_AS(history(a.a_case.problem, a.a_case.readings, {TEST_DATA "/field/A-readings.csv"}),
+                  FileError);
+}
+
+namespace {
+
+/// What a record says through a pipe; the year twice, so that it is longer than what is kept of it.
+std::optional<History> piped(const case_io::Case& a_case) {
+  const std::string path = "/tmp/field-history-" + std::to_string(getpid());
+  REQUIRE(mkfifo(path.c_str(), 0600) == 0);
+  std::string text = support::read_text(TEST_DATA "/field/A-readings.csv");
+  std::string next_year = text.substr(text.find('\n') + 1);
+  for (std::size_t at = 0; (at = next_year.find("2021-", at)) != std::string::npos;) next_year[at + 3] = '2';
+  std::thread writer([&] {
+    std::ofstream file(path, std::ios::binary);  // a reader that gives up early breaks it: no matter
+    file << text << next_year;
+  });
+  std::optional<History> result;
+  try {
+    result = history(a_case.problem, a_case.readings, {path});
+  } catch (const FileError& error) {
+    CHECK(error.text().what.find("a pipe is read once") != std::string::npos);
+  }
+  writer.join();
+  unlink(path.c_str());
+  return result;
+}
+
+}  // namespace
+
+TEST_CASE("field: a pipe is judged by its first 10 000 rows, and says so") {
+  std::signal(SIGPIPE, SIG_IGN);
+  Simulated a("A");
+  const auto result = piped(a.a_case);
+  REQUIRE(result);
+  CHECK_FALSE(result->survey.whole);
+  CHECK(result->survey.rows == 10'000);
+  CHECK(result->tally.rows == 2 * 8760);
+  REQUIRE(result->days.size() > 700);
+  for (std::size_t i = 0; i < 300; ++i)
+    CHECK(result->days[i].apparent.fouling ==
+          doctest::Approx(a.result.days[i].apparent.fouling).epsilon(0.02));
+  a.a_case.readings.clean_period = {read_moment("2021-01-01", {}).value(),
+                                    read_moment("2021-01-08", {}).value()};
+  CHECK(piped(a.a_case)->basis == Basis::clean_period);
+  a.a_case.readings.clean_period = {read_moment("2022-06-01", {}).value(),
+                                    read_moment("2022-06-08", {}).value()};
+  CHECK_FALSE(piped(a.a_case));
 }

@@ -284,14 +284,14 @@ TEST_CASE("field: the header's mistakes are named where they stand") {
   };
   const Row rows[] = {
       {"no unit", "time,hot_flow,cold_flow[kg/s],hot_in[degC],hot_out[degC],cold_in[degC],cold_out[degC]\n",
-       "has no unit", 2},
+       "has no unit", 6},
       {"wrong brackets", "time,hot_flow (kg/s),cold_flow[kg/s],hot_in[degC]\n", "no unit in square brackets",
-       2},
-      {"a pressure as flow", "time,hot_flow[bar],cold_flow[kg/s]\n", "hot_flow[bar]", 2},
-      {"an ambiguous unit", "time,hot_in[C],cold_flow[kg/s]\n", "\"C\"", 2},
-      {"a gauge for a drop", "time,tube_dp[barg],cold_flow[kg/s]\n", "gauge", 2},
-      {"no unit at all", "time,hot_flow[+- 1 kg/s],x\n", "is no unit", 2},
-      {"twice", "time,hot_in[degC],hot_in[degF]\n", "two columns for hot_in", 3},
+       6},
+      {"a pressure as flow", "time,hot_flow[bar],cold_flow[kg/s]\n", "hot_flow[bar]", 6},
+      {"an ambiguous unit", "time,hot_in[C],cold_flow[kg/s]\n", "\"C\"", 6},
+      {"a gauge for a drop", "time,tube_dp[barg],cold_flow[kg/s]\n", "gauge", 6},
+      {"no unit at all", "time,hot_flow[+- 1 kg/s],x\n", "is no unit", 6},
+      {"twice", "time,hot_in[degC],hot_in[degF]\n", "two columns for hot_in", 19},
       {"no time", "Zeit,hot_in[degC]\n", "no column 'time'", 1},
       {"too few", "time,hot_in[degC],cold_in[degC]\n", "no columns for hot_flow", 1},
   };

@@ -141,6 +141,15 @@ TEST_CASE("field: readings about a step of load are left out, and the hour after
   CHECK(rows_with(rows, Drop::unsteady) == "99 100 101");
 }
 
+TEST_CASE("field: a flow that a controller moves all the time is steady while it moves as usual") {
+  const Survey calm{.hot_flow_change = 0.008, .hot_in_change = 0.2};
+  CHECK(steady_limits(calm).hot_flow == 0.05);
+  CHECK(steady_limits(calm).hot_in == 1.0);
+  const Survey hunting{.cold_flow_change = 0.03, .cold_in_change = 0.5};
+  CHECK(steady_limits(hunting).cold_flow == doctest::Approx(0.1334).epsilon(1e-3));
+  CHECK(steady_limits(hunting).cold_in == doctest::Approx(2.22).epsilon(2e-3));
+}
+
 TEST_CASE("field: a step across a gap is not seen as one") {
   Made made;
   for (int i = 100; i < 200; ++i) {

@@ -54,8 +54,8 @@ constexpr std::string_view compare_examples[] = {
 constexpr Option compare_options[] = {case_option, one_json_option, units_option, out_option, force_option};
 
 constexpr std::string_view field_examples[] = {
-    "dutygauge field cooler.yaml readings.csv",
-    "dutygauge field --json cooler.yaml 2025.csv 2026.csv --csv hours.csv    every row to a file, too"};
+    "dutygauge field cooler.yaml readings.csv                              a year of readings",
+    "dutygauge field --json cooler.yaml readings.csv --csv hours.csv       every row to a file, too"};
 constexpr Option field_options[] = {
     one_json_option,
     {"csv", "", "FILE", "what every row says as CSV in SI; - is standard output, instead of the page"},

@@ -20,7 +20,7 @@ class DayBook {
     Channels value;
     Apparent apparent;
   };
-  static constexpr std::size_t most = 4096;
+  static constexpr std::size_t most = 1024;
 
   std::int64_t start_, day_ = 0;
   Days& days_;

@@ -32,12 +32,14 @@ Label label_of(std::string_view text) {
 struct Header {
   const std::vector<KeptLine>& lines;
   std::string file;
-  std::vector<Cells> rows;  ///< of all kept lines
+  std::vector<Cells> rows;                       ///< of all kept lines
+  std::vector<std::vector<std::size_t>> starts;  ///< of each cell in its line [B]
 
   [[noreturn]] void fail(std::size_t row, std::size_t column, std::string what, std::string expected,
                          std::string remedy) const {
     std::int64_t line = row < lines.size() ? lines[row].number : 0;
-    throw FileError(file, line, static_cast<int>(column) + 1,
+    const bool is_cell = row < starts.size() && column < starts[row].size();
+    throw FileError(file, line, is_cell ? static_cast<int>(starts[row][column]) + 1 : 1,
                     {std::move(what), std::move(expected), std::move(remedy)});
   }
 };
@@ -261,11 +263,14 @@ void check_width(const Header& header, std::size_t names, const Layout& layout) 
 }
 
 Header cut(const std::vector<KeptLine>& lines, const std::string& file, char separator) {
-  Header header{lines, file, {}};
+  Header header{lines, file, {}, {}};
   std::vector<std::string_view> cells;
   for (const KeptLine& line : lines) {
     split(line.text, separator, most_columns + 1, cells);
     header.rows.emplace_back(cells.begin(), cells.end());
+    header.starts.emplace_back();
+    for (const std::string_view cell : cells)
+      header.starts.back().push_back(static_cast<std::size_t>(cell.data() - line.text.data()));
   }
   return header;
 }

@@ -20,7 +20,26 @@ double median_of(double* begin, std::size_t count) {
   return begin[count / 2];
 }
 
+/// Whether the median of the values is within a distance of one: more than half of them lie on
+/// either side of it then. Cheaper than the median, and nearly every reading is.
+bool is_near_median(double value, double distance, const double* values, std::size_t count) {
+  std::size_t below = 0, above = 0;
+  for (std::size_t i = 0; i < count; ++i) {
+    below += values[i] <= value + distance ? 1 : 0;
+    above += values[i] >= value - distance ? 1 : 0;
+  }
+  return 2 * below > count && 2 * above > count;
+}
+
 }  // namespace
+
+Steady steady_limits(const Survey& survey, const Limits& limits) {
+  const double habit = limits.steady_habit;
+  return {.hot_flow = std::max(limits.steady_flow, habit * survey.hot_flow_change),
+          .cold_flow = std::max(limits.steady_flow, habit * survey.cold_flow_change),
+          .hot_in = std::max(limits.steady_inlet, habit * survey.hot_in_change),
+          .cold_in = std::max(limits.steady_inlet, habit * survey.cold_in_change)};
+}
 
 Screen::Screen(const Mapping& mapping, const Survey& survey, const Channels& resolution, Tally& tally,
                Sink sink, const Limits& limits)
@@ -30,6 +49,7 @@ Screen::Screen(const Mapping& mapping, const Survey& survey, const Channels& res
       tally_(tally),
       sink_(std::move(sink)),
       limits_(limits),
+      steady_(steady_limits(survey, limits)),
       slots_(ring),
       restart_(long_ago),
       step_(long_ago) {}
@@ -106,6 +126,8 @@ void Screen::find_spikes(std::int64_t row) {
     for (std::int64_t i = first; i <= last; ++i)
       if (const double value = slot(i).value[c]; !std::isnan(value)) window[count++] = value;
     if (count < least_of_window) continue;
+    if (is_near_median(at.value[c], 0.5 * limits_.spike * random_of(c, at.value[c]), window.data(), count))
+      continue;
     const double middle = median_of(window.data(), count);
     // Nearly all readings are too close to be a spike whatever the others scatter.
     const double distance = std::abs(at.value[c] - middle), least = random_of(c, middle);
@@ -154,18 +176,17 @@ bool Screen::has_moved(std::int64_t row, std::int64_t other) {
   const Slot &a = slot(row), &b = slot(other);
   const auto seconds = static_cast<double>(std::abs(a.raw.time - b.raw.time));
   if (survey_.interval > 0.0 && seconds > longest_step * survey_.interval) return false;
+  // What is missing compares as false.
   const double difference = a.value[index_of(Channel::hot_in)] - a.value[index_of(Channel::cold_in)];
-  for (const Channel channel : {Channel::hot_flow, Channel::cold_flow, Channel::hot_in, Channel::cold_in}) {
+  const auto is_beyond = [&](Channel channel, double limit) {
     const std::size_t c = index_of(channel);
-    if (a.spike[c] || b.spike[c]) continue;
-    double allowed = limits_.steady_flow * std::abs(a.value[c]);
-    if (!is_flow(channel))
-      allowed = std::isnan(difference) ? limits_.steady_inlet
-                                       : std::max(limits_.steady_inlet, limits_.steady_share * difference);
-    allowed = std::max(allowed, limits_.steady_noise * std::sqrt(2.0) * random_of(c, a.value[c]));
-    if (std::abs(a.value[c] - b.value[c]) > allowed) return true;
-  }
-  return false;
+    return !a.spike[c] && !b.spike[c] && std::abs(a.value[c] - b.value[c]) > limit;
+  };
+  const double share = std::isnan(difference) ? 0.0 : limits_.steady_share * difference;
+  return is_beyond(Channel::hot_flow, steady_.hot_flow * std::abs(a.value[index_of(Channel::hot_flow)])) ||
+         is_beyond(Channel::cold_flow, steady_.cold_flow * std::abs(a.value[index_of(Channel::cold_flow)])) ||
+         is_beyond(Channel::hot_in, std::max(steady_.hot_in, share)) ||
+         is_beyond(Channel::cold_in, std::max(steady_.cold_in, share));
 }
 
 bool Screen::is_unsteady(std::int64_t row) {

@@ -112,6 +112,7 @@ Json record_json(const field::History& record) {
   Json files = Json::array();
   for (const field::Understood& file : record.understood) files.push_back(file_json(file));
   const field::Tally& tally = record.tally;
+  const field::Steady steady = field::steady_limits(record.survey);
   Json assumed = Json::array();
   for (const Assumption& one : record.assumed)
     assumed.push_back(
@@ -119,6 +120,11 @@ Json record_json(const field::History& record) {
   return {{"files", files},
           {"interval_s", record.survey.interval},
           {"medians_of", survey_word(record.survey)},
+          {"step_beyond",
+           {{"hot_flow", steady.hot_flow},
+            {"cold_flow", steady.cold_flow},
+            {"hot_in_K", steady.hot_in},
+            {"cold_in_K", steady.cold_in}}},
           {"values",
            {{"missing", tally.missing},
             {"bad", tally.bad},
@@ -150,6 +156,11 @@ std::vector<std::string> record_lines(const field::History& record) {
   for (std::size_t i = 0; i < tally.first_bad.size(); ++i)
     values += (i == 0 ? "; first: " : "; ") + tally.first_bad[i];
   lines.push_back(values + fmt::format(". Medians from {}.", survey_word(record.survey)));
+  const field::Steady steady = field::steady_limits(record.survey);
+  lines.push_back(
+      fmt::format("A step is a change from one reading to the next of more than {:.1f} % in hot_flow, "
+                  "{:.1f} % in cold_flow, {:.1f} K in hot_in, {:.1f} K in cold_in.",
+                  100.0 * steady.hot_flow, 100.0 * steady.cold_flow, steady.hot_in, steady.cold_in));
   lines.push_back(level_line(record));
   std::vector<std::string> assumed;
   for (const Assumption& one : record.assumed)

@@ -11,10 +11,12 @@ namespace dutygauge::field {
 /// What a record is like as a whole; the screen needs it beforehand.
 struct Survey {
   double hot_flow = 0, cold_flow = 0;  ///< medians of what is not zero [kg/s]; 0: not measured
-  double interval = 0;                 ///< between readings, median [s]
-  std::int64_t start = 0;              ///< first reading
-  std::uint64_t rows = 0;              ///< it was made from
-  bool whole = true;                   ///< of the whole record; else of its beginning
+  /// Median change from reading to reading: flows as a share [-], inlets [K].
+  double hot_flow_change = 0, cold_flow_change = 0, hot_in_change = 0, cold_in_change = 0;
+  double interval = 0;     ///< between readings, median [s]
+  std::int64_t start = 0;  ///< first reading
+  std::uint64_t rows = 0;  ///< it was made from
+  bool whole = true;       ///< of the whole record; else of its beginning
 };
 
 /// Evenly thinned values of a stream, so that its median needs bounded memory: beyond
@@ -44,12 +46,19 @@ struct Limits {
   double steady_flow = 0.05;              ///< from reading to reading [-]
   double steady_inlet = 1.0;              ///< [K], or
   double steady_share = 0.05;             ///< of the inlets' difference [-]
-  double steady_noise = 3.0;              ///< standard deviations of a difference count as noise [-]
+  double steady_habit = 3.0 * 1.4826;     ///< times the median change counts as the unit's habit [-]
   std::int64_t after_step = 3600;         ///< [s]
   std::int64_t after_restart = 6 * 3600;  ///< [s]
   int frozen = 12;                        ///< readings alike to the last digit
   int straight = 4;                       ///< readings on a line between two others
 };
+
+/// From which change on a reading follows a step: flows as a share [-], inlets [K]. A flow that
+/// a controller moves all the time is steady while it moves as it uses to.
+struct Steady {
+  double hot_flow = 0, cold_flow = 0, hot_in = 0, cold_in = 0;
+};
+Steady steady_limits(const Survey& survey, const Limits& limits = {});
 
 /// A screened row: what was frozen, or a spike of a pressure drop, is missing in it.
 struct Screened {
@@ -101,6 +110,7 @@ class Screen {
   Tally& tally_;
   const Sink sink_;
   const Limits limits_;
+  const Steady steady_;
   std::vector<Slot> slots_;
   std::int64_t in_ = 0, spiked_ = 0, out_ = 0;  ///< rows pushed, tested for spikes, emitted
   std::array<int, channel_count> alike_{};      ///< readings without a change, so far
