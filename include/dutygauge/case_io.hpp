@@ -4,6 +4,7 @@
 #include <stdexcept>
 #include <string>
 #include <string_view>
+#include <variant>
 #include <vector>
 
 #include "dutygauge/bids.hpp"
@@ -72,9 +73,15 @@ struct Accepted {
   std::string id, because, by;
 };
 
-/// A reading of the running unit, and the unit it was taken of: as it is, without overlays.
+/// A fouling that a record of readings has shown.
+struct FoundFouling {
+  std::string taken = {};        ///< when, as typed
+  double value = 0, sigma = 0;  ///< on the outside area [m2.K/W]
+};
+
+/// What says how the running unit is, and the unit it was taken of: as it is, without overlays.
 struct AnchorReading {
-  uncertainty::SteadyReading reading;
+  std::variant<uncertainty::SteadyReading, FoundFouling> reading;
   rating::Problem unit;
 };
 

@@ -55,8 +55,8 @@ std::optional<double> flow_density(Reading& reading, const std::string& side, co
 
 /// The reading the unit is to be tied to; empty where there is none or it cannot be one, which
 /// is noted.
-std::optional<uncertainty::SteadyReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
-                                                    const rating::Stream& tube_side);
+std::optional<AnchorReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
+                                       const rating::Stream& tube_side);
 
 /// Builds the case of a document without overlays. Throws InputError.
 Case build_plain(const Document& document);

@@ -3,6 +3,8 @@
 #include <limits>
 #include <tuple>
 
+#include <tbb/parallel_for.h>
+
 #include "dutygauge/explore.hpp"
 #include "how_sure.hpp"
 
@@ -94,7 +96,10 @@ std::vector<report::AcceptedFinding> take_accepted(Findings& findings,
 std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorReading>& read,
                                             Findings& findings) {
   if (!read) return {};
-  auto anchor = uncertainty::anchor_to(read->unit, read->reading);
+  const auto* found = std::get_if<case_io::FoundFouling>(&read->reading);
+  auto anchor = found ? uncertainty::anchor_to_fouling(read->unit, found->value, found->sigma)
+                      : uncertainty::anchor_to(read->unit, std::get<uncertainty::SteadyReading>(read->reading));
+  if (found && anchor.value) anchor.value->reading.taken = found->taken;
   findings.insert(findings.end(), anchor.findings.begin(), anchor.findings.end());
   if (!anchor.value) return {};
   const auto rated = rating::rate(uncertainty::today(*anchor.value, anchor.value->unit));
@@ -104,8 +109,8 @@ std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorR
 
 /// Everything but the claims.
 report::Result without_claims(const std::vector<case_io::Case>& cases, const Swings& swings) {
-  std::vector<report::RatedCase> all;
-  for (const auto& one : cases) all.push_back(rated(one));
+  std::vector<report::RatedCase> all(cases.size());
+  tbb::parallel_for(std::size_t{0}, cases.size(), [&](std::size_t i) { all[i] = rated(cases[i]); });
   Findings of_anchor;
   const auto anchored = anchored_to(cases.front().anchor, of_anchor);
   for (auto& one : all) one.findings.insert(one.findings.end(), of_anchor.begin(), of_anchor.end());

@@ -60,10 +60,10 @@ double deviation(Distribution distribution, double deviate) {
 
 double drawn(const Source& source, double deviate) {
   const bool moved = source.varied == Varied::inlet_temperature || source.varied == Varied::read_inlet ||
-                     source.varied == Varied::read_outlet;
+                     source.varied == Varied::read_outlet || source.varied == Varied::found_fouling;
   if (source.distribution != Distribution::lognormal)
     return (moved ? 0.0 : 1.0) + source.sigma * deviation(source.distribution, deviate);
-  if (moved) throw std::invalid_argument("uncertainty::drawn: a temperature has no lognormal error");
+  if (moved) throw std::invalid_argument("uncertainty::drawn: what is moved has no lognormal error");
   return std::exp(deviate * std::sqrt(std::log1p(source.sigma * source.sigma)));
 }
 

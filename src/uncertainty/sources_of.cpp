@@ -161,11 +161,19 @@ std::vector<Source> sources_of_today(const Anchor& anchor, const rating::Problem
       made.distribution = Distribution::normal;
       sources.push_back(std::move(made));
     };
+    if (anchor.resistance_sigma > 0.0) continue;
     if ((shell ? reading.shell_side : reading.tube_side).mass_flow)
       of_reading(Varied::read_flow, "flow as read", reading.flow_sigma);
     of_reading(Varied::read_inlet, "inlet as read", reading.temperature_sigma);
     of_reading(Varied::read_outlet, "outlet as read", reading.temperature_sigma);
   }
+  if (anchor.resistance_sigma > 0.0)
+    sources.push_back({.name = "the fouling found",
+                       .key = "found_fouling",
+                       .varied = Varied::found_fouling,
+                       .sigma = anchor.resistance_sigma,
+                       .distribution = Distribution::normal,
+                       .source = "common_practice"});
   return sources;
 }
 
