@@ -40,7 +40,7 @@ def script_fault(words):
     script = ROOT / words[0]
     if not script.exists() or not script.stat().st_mode & 0o100:
         return "no such script"
-    runs = [(ROOT / file).read_text() for file in (".ci/run", "README.md", "tests/readme_test.py")]
+    runs = [(ROOT / file).read_text() for file in (".ci/run", "scripts/test", "README.md", "tests/readme_test.py")]
     runs.append(TEXT.split("## 10. Release")[1].split("## 11.")[0])
     return "" if any(words[0] in text for text in runs) else "neither CI, nor a test, nor the release runs it"
 

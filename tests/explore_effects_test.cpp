@@ -127,10 +127,40 @@ TEST_CASE("explore: compare shows what was changed and what came of it") {
   CHECK(comparison.inputs[0].key == "streams.shell_side.flow");
   CHECK(comparison.inputs[0].before == "108 t/h");
   CHECK(comparison.inputs[0].after == "120 t/h");
-  CHECK(comparison.after->duty > comparison.before->duty);
+  CHECK(comparison.after.running->duty > comparison.before.running->duty);
   CHECK(explore::compare(a, a).inputs.empty());
   const auto json = nlohmann::json::parse(report::json(comparison));
   CHECK(json["outputs"][0]["name"] == "duty_W");
   CHECK(json["outputs"][0]["difference"].get<double>() ==
-        doctest::Approx(comparison.after->duty - comparison.before->duty));
+        doctest::Approx(comparison.after.running->duty - comparison.before.running->duty));
+  // Both have the same scatter: the difference is surer than either, and this one stands out.
+  const double of_difference = json["outputs"][0]["difference_90"].get<double>();
+  const auto spread = explore::rate(a).spread;
+  CHECK(of_difference < 0.3 * (spread->spreads[0].high - spread->spreads[0].low));
+  CHECK(json["outputs"][0]["significant"] == true);
+}
+
+TEST_CASE("explore: a difference smaller than what it may be wrong by is not called significant") {
+  const auto a = case_named("lean-solvent-cooler");
+  // By the other method for the shell, whose scatter is another one, the duty is hardly another.
+  const auto b = case_io::with_value(a, "methods.shell_side", "kern");
+  const auto json = nlohmann::json::parse(report::json(explore::compare(a, b)));
+  CHECK(json["outputs"][0]["significant"] == false);
+  CHECK(report::text(explore::compare(a, b)).find("within the spread") != std::string::npos);
+}
+
+TEST_CASE("explore: recorded results compare as the cases do, without how sure it is") {
+  const auto a = case_named("lean-solvent-cooler");
+  const auto b = case_io::with_value(a, "streams.shell_side.flow", "120 t/h");
+  const auto recorded = report::recorded(report::json(explore::rate(a)));
+  REQUIRE(recorded.has_value());
+  const auto comparison = explore::compare(*recorded, explore::compared(b));
+  REQUIRE(comparison.inputs.size() == 1);
+  CHECK(comparison.inputs[0].before == "108 t/h");
+  CHECK(comparison.before.running->duty == doctest::Approx(explore::compared(a).running->duty));
+  CHECK_FALSE(comparison.spread.has_value());
+  CHECK_FALSE(report::recorded("dutygauge: 1").has_value());
+  CHECK_FALSE(report::recorded("{\"a\": 1}").has_value());
+  CHECK_THROWS_AS(report::recorded(R"({"schema_version": 1})"), std::invalid_argument);
+  CHECK_THROWS_AS(report::recorded(R"({"schema_version": 1, "error": ["x"]})"), std::invalid_argument);
 }

@@ -50,6 +50,18 @@ TEST_CASE("case_io: a deviation is listed with one standard deviation to both si
   CHECK(line->why.find("one standard deviation") != std::string::npos);
 }
 
+TEST_CASE("case_io: a spread as wide as its value is refused where the value cannot be negative") {
+  for (const char* typed : {"flow: 21.5 +- 22 kg/s", "flow: 21.5 kg/s +- 100 %"}) {
+    CAPTURE(typed);
+    try {
+      built(with("flow: 21.5 kg/s", typed));
+      FAIL("not refused");
+    } catch (const case_io::InputError& error) {
+      CHECK(error.lines().front().find("a spread as wide as the value itself") != std::string::npos);
+    }
+  }
+}
+
 TEST_CASE("case_io: a least wall is listed with its span") {
   const auto a_case = built(with("wall: 2.11 mm", "wall: 14 BWG min"));
   const Assumption* line = assumed(a_case, "exchanger.tubes.wall");

@@ -174,6 +174,7 @@ class Help(InFolder):
             self.write(name, starter())
         self.write("after.yaml", too_much_asked())
         self.write("readings.csv", readings())
+        (self.folder / "before.json").write_bytes(run("rate", "--json", self.folder / "before.yaml").stdout)
         shutil.copytree(ROOT / "cases", self.folder / "cases")
         path = {**os.environ, "PATH": f"{PROGRAM.parent}:{os.environ['PATH']}"}
         self.assertIn("rate", commands())

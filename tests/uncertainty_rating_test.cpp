@@ -165,13 +165,25 @@ TEST_CASE("uncertainty: the difference of two cases of one unit is surer than ei
 
 TEST_CASE("uncertainty: inputs given with a spread reach the outlets") {
   Question question = question_of(cooler(), 1.0);
-  question.sources = {inlet_source(Side::tube, 2.0)};
+  question.sources = {{.name = "the inlet",
+                       .key = "inlet",
+                       .varied = Varied::inlet_temperature,
+                       .side = Side::tube,
+                       .sigma = 2.0,
+                       .distribution = Distribution::normal,
+                       .source = {}}};
   const auto result = propagate(question);
   // An outlet follows its own inlet by 1 - P and the other stream's by P (constant films): between 0 and 1.
   const double moved = (*result)[Output::tube_outlet].sigma / 2.0;
   const double p = question.nominal.p_tube;
   CHECK(std::abs(moved - (1.0 - p)) < 0.02);
-  question.sources = {flow_source(Side::shell, 0.05)};
+  question.sources = {{.name = "the flow",
+                       .key = "flow",
+                       .varied = Varied::flow,
+                       .side = Side::shell,
+                       .sigma = 0.05,
+                       .distribution = Distribution::normal,
+                       .source = {}}};
   CHECK((*propagate(question))[Output::shell_drop].sigma / question.nominal.shell_drop.total() ==
         doctest::Approx(0.05 * 1.85).epsilon(0.06));  // drops go as flow^1.75 to ^2
 }

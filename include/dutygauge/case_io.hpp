@@ -11,6 +11,7 @@
 #include "dutygauge/findings.hpp"
 #include "dutygauge/rating.hpp"
 #include "dutygauge/service.hpp"
+#include "dutygauge/uncertainty/anchor.hpp"
 
 /// Case files: YAML to a Case of the structs below this level. No physics.
 namespace dutygauge::case_io {
@@ -71,6 +72,12 @@ struct Accepted {
   std::string id, because, by;
 };
 
+/// A reading of the running unit, and the unit it was taken of: as it is, without overlays.
+struct AnchorReading {
+  uncertainty::SteadyReading reading;
+  rating::Problem unit;
+};
+
 /// A case ready to be rated.
 struct Case {
   std::string file, title, tag, sha256;
@@ -80,6 +87,7 @@ struct Case {
   rating::Problem problem;
   service::Service service;
   bids::Claims claims;  ///< of the sheet, as built
+  std::optional<AnchorReading> anchor;
   Inputs inputs;        ///< as typed, and assumed, in SI
   Assumptions assumed;  ///< made while reading and deriving
   Findings findings;    ///< the same
@@ -93,8 +101,11 @@ struct Case {
 /// holds. Throws InputError.
 Document read_document(std::string_view text, std::string file);
 
-/// Reads a file (regular file or pipe, at most 4 MB), "-" for standard input.
+/// The bytes of a file (regular file or pipe, at most 4 MB), "-" for standard input.
 /// Throws InputError; the text says what the system said.
+std::string read_text(const std::string& path);
+
+/// Reads such a file as a document. Throws InputError.
 Document read_file(const std::string& path);
 
 /// Names of the operating cases in file order; "base" alone where the file states none.

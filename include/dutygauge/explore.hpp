@@ -71,7 +71,13 @@ report::Sweep sweep(const case_io::Document& document, const std::vector<Variati
 report::Reach reach(const case_io::Document& document, const Dial& pushed,
                     const std::optional<Variation>& range, const std::optional<Variation>& over);
 
-/// What changed between two cases, going in and coming out.
+/// A case as rated, to be compared.
+report::Compared compared(const case_io::Document& document);
+
+/// What changed between two cases, going in and coming out, and how sure the difference is.
 report::Comparison compare(const case_io::Document& a, const case_io::Document& b);
+
+/// The same of two that may be recorded results: without how sure it is.
+report::Comparison compare(report::Compared a, report::Compared b);
 
 }  // namespace dutygauge::explore

@@ -27,6 +27,13 @@ struct Finding {
 };
 using Findings = std::vector<Finding>;
 
+/// What the two ends of an assumption's span are.
+enum class Span {
+  plausible,  ///< ends that such values rarely pass, the value in between most likely
+  range,      ///< given by the case: anywhere in between
+  deviation,  ///< given by the case: one standard deviation away
+};
+
 /// A value the program chose because the case does not give it.
 struct Assumption {
   std::string key;   ///< full dotted key of the case file
@@ -36,6 +43,7 @@ struct Assumption {
   std::string why;                            ///< where the value comes from
   std::optional<double> low = {}, high = {};  ///< plausible span, SI
   std::string look_in = {};                   ///< the document that would settle it
+  Span span = Span::plausible;                ///< what `low` and `high` are
 };
 using Assumptions = std::vector<Assumption>;
 

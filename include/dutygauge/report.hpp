@@ -11,12 +11,26 @@
 /// Results to text and JSON. Knows no file format of the input; no physics.
 namespace dutygauge::report {
 
-/// One operating case in the two states that are rated.
+/// A state that a reading of the running unit has made known.
+struct Today {
+  service::Assessment assessment;
+  std::optional<uncertainty::Result> spread{};
+  std::optional<uncertainty::Spreads> change{};  ///< of the outcome less that under the reading's conditions
+};
+
+/// One operating case in the states that are rated.
 struct RatedCase {
   std::string name;
   service::Assessment design_fouling, clean;
   Findings findings;  ///< of the case as read and as rated at design fouling
   std::optional<uncertainty::Result> spread{}, spread_clean{};  ///< at design fouling, and clean
+  std::optional<Today> today{};                                 ///< where an anchor says what that is
+};
+
+/// The reading a unit is tied to, and what the unit of today shows under its conditions.
+struct Anchored {
+  uncertainty::Anchor anchor;
+  rating::Outcome outcome;
 };
 
 /// A finding somebody has decided on: shown as such, without effect on the exit status.
@@ -64,6 +78,7 @@ struct Result {
   std::string present_since = {};     ///< the unit is rated as it is since that day; empty: as built
   std::vector<std::optional<Effect>> effects = {};  ///< one for each of `assumed`, or none at all
   std::vector<Lever> levers = {};                   ///< the strongest first
+  std::optional<Anchored> anchored = {};            ///< where the case has an anchor that can be believed
 };
 
 struct TextOptions {

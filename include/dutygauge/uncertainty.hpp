@@ -9,6 +9,7 @@
 #include <vector>
 
 #include "dutygauge/rating.hpp"
+#include "dutygauge/uncertainty/anchor.hpp"
 
 /// How sure a rating is: what each of its sources may be wrong by, carried to the
 /// outcome to first order and by sampling. Knows no service, no file.
@@ -71,11 +72,13 @@ enum class Varied {
   conductivity,
   viscosity,
   flow,
-  inlet_temperature,  ///< the only one that is moved, not multiplied
+  inlet_temperature,  ///< the only one of a problem that is moved, not multiplied
   wall_conductivity,
+  film_with_flow,  ///< a film away from where an anchor has tied it
+  read_flow,       ///< of an anchor's reading, and its temperatures, which are moved
+  read_inlet,
+  read_outlet,
 };
-
-enum class Side { shell, tube };
 
 /// One thing that may be wrong.
 struct Source {
@@ -89,25 +92,45 @@ struct Source {
   std::string source;  ///< key in sources.hpp
 };
 
+/// A deviation in standard deviations, from a standard normal deviate.
+double deviation(Distribution distribution, double deviate);
+
 /// What a source's value is multiplied by, or moved by [K], at a standard normal deviate.
 double drawn(const Source& source, double deviate);
 
-/// A problem with one source at a deviate.
+/// A problem with one of its sources at a deviate.
 void apply(const Source& source, double deviate, rating::Problem& problem);
+
+/// A reading with one of its sources at a deviate.
+void apply(const Source& source, double deviate, SteadyReading& reading);
 
 /// What is uncertain in a rating by its nature: scatter of the methods in the regimes of
 /// the outcome, the bands of both fluids' properties, both foulings, the wall.
 std::vector<Source> sources_of(const rating::Problem& problem, const rating::Outcome& outcome);
 
-/// A flow known to `sigma` [-], an inlet temperature known to `sigma` [K]: independent from case to case.
-Source flow_source(Side side, double sigma);
-Source inlet_source(Side side, double sigma);
+/// What is uncertain in a rating of today, tied to a reading: of `sources_of` what is not a
+/// fouling, both films away from the flows read, and the reading itself.
+std::vector<Source> sources_of_today(const Anchor& anchor, const rating::Problem& problem,
+                                     const rating::Outcome& outcome);
 
 // --- the spread of ratings
 
 enum class Output { duty, shell_outlet, tube_outlet, shell_drop, tube_drop };
 inline constexpr std::size_t output_count = 5;
 using Spreads = std::array<Spread, output_count>;
+
+/// An input of a case that lies open, by what the outcome becomes at both ends of its span.
+/// For what no factor on a problem stands for: a dimension, a choice.
+struct Swing {
+  std::string name, key;
+  Distribution distribution = Distribution::triangular;
+  /// Change of each output at the ends: of temperatures [K], else relative [-].
+  std::array<double, output_count> at_low{}, at_high{};
+};
+
+/// Adds a swing to an outcome: along the parabola through both ends, at a standard normal
+/// deviate; a normal distribution has its ends one standard deviation away.
+void apply(const Swing& swing, double deviate, rating::Outcome& outcome);
 
 /// Whether an outcome is what is asked for.
 using Predicate = std::function<bool(const rating::Outcome&)>;
@@ -117,7 +140,9 @@ struct Question {
   rating::Problem problem;
   rating::Outcome nominal;
   std::vector<Source> sources;
-  Predicate meets{};  ///< empty: no probability
+  std::vector<Swing> swings{};     ///< common to all cases of one unit, by key
+  std::optional<Anchor> anchor{};  ///< the problem is the unit of today: each sample is tied to the reading
+  Predicate meets{};               ///< empty: no probability
 };
 
 /// Part of the variance of each output that a source carries, first order [-].

@@ -120,6 +120,8 @@ Case build_plain(const Document& document) {
   bids::Claims claims = claims_of(reading);
   field::Mapping readings = mapping_of(reading);
   field::Planned plan = plan_of(reading, readings.clock.offset);
+  std::optional<uncertainty::SteadyReading> read;
+  if (shell_side && tube_side) read = anchor_of(reading, shell_side->stream, tube_side->stream);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");
@@ -139,6 +141,7 @@ Case build_plain(const Document& document) {
                     .methods = methods};
   for (const bool is_shell_side : {true, false})
     put_film(films[is_shell_side ? 0 : 1], is_shell_side, result.problem);
+  if (read) result.anchor = AnchorReading{std::move(*read), result.problem};
   result.service = service_of(entries, result.display);
   result.claims = std::move(claims);
   result.readings = std::move(readings);

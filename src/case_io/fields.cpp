@@ -147,7 +147,6 @@ std::string indices_hidden(std::string_view key) {
 }
 
 constexpr Unread unread[] = {
-    {"anchor", "a reading of the running unit"},
     {"requirements", "a purchaser's own limits"},
     {"guarantee", "what a vendor guarantees"},
     {"inquiry", "the inquiry a bid answers"},

@@ -62,11 +62,15 @@ std::string all_bytes(const Handle& handle, const std::string& path) {
 
 }  // namespace
 
-Document read_file(const std::string& path) {
+std::string read_text(const std::string& path) {
   const Handle handle(path);
   if (handle.number() < 0) fail_with(errno, path);
   require_file_or_pipe(handle, path);
-  return read_document(all_bytes(handle, path), path);
+  return all_bytes(handle, path);
+}
+
+Document read_file(const std::string& path) {
+  return read_document(read_text(path), path);
 }
 
 }  // namespace dutygauge::case_io

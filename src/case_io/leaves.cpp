@@ -93,6 +93,11 @@ Outcome checked(Entry entry) {
   for (const auto& end : {std::optional(entry.value.si), entry.value.low, entry.value.high})
     if (end)
       if (auto mistake = out_of_bounds(entry, *end)) return *mistake;
+  // Of what cannot be negative, a third of all values would be.
+  const auto& deviation = entry.value.standard_deviation;
+  if (deviation && entry.field->bounds.least == 0.0 && *deviation >= entry.value.si)
+    return misread(*entry.field, quoted(entry.text) + " is a spread as wide as the value itself",
+                   "give one standard deviation, or a range such as 8..12");
   return entry;
 }
 
@@ -354,12 +359,14 @@ void Reading::assume_spans(const std::string& key, const Entry& entry) {
       .why = fmt::format("the case gives the range {}: rated at its middle", shown(entry.text)),
       .low = value.low,
       .high = value.high,
-      .look_in = place_of(key)};
+      .look_in = place_of(key),
+      .span = Span::range};
   if (value.standard_deviation) {
     assumption.why =
         fmt::format("the case gives {}: low and high are one standard deviation away", shown(entry.text));
     assumption.low = value.si - *value.standard_deviation;
     assumption.high = value.si + *value.standard_deviation;
+    assumption.span = Span::deviation;
   }
   assume(std::move(assumption));
 }

@@ -99,6 +99,21 @@ Document made(const Document& document, const std::string& operating_case, bool 
   return result;
 }
 
+/// The reading and the unit it was taken of, as they stand without a case's overlay. Where the
+/// file is no case without one, as they stand in the first.
+void share_anchor(const Document& document, std::vector<Case>& cases) {
+  if (!document.blocks.contains("anchor") || !document.blocks.contains(cases_block)) return;
+  Document base = plain(document);
+  if (document.blocks.contains(present_block)) lay(document, present_block, base);
+  auto anchor = cases.front().anchor;
+  try {
+    anchor = build_plain(base).anchor;
+  } catch (const InputError&) {
+    // What is missing stands in the overlays.
+  }
+  for (Case& one : cases) one.anchor = anchor;
+}
+
 /// The same mistake in two operating cases.
 bool is_same(const Mistake& a, const Mistake& b) {
   return a.at.line == b.at.line && a.at.column == b.at.column && a.key == b.key && a.what == b.what;
@@ -161,6 +176,7 @@ std::vector<Case> build_all(const Document& document) {
     }
   }
   if (!mistakes.empty()) throw InputError(document.file, merged(std::move(mistakes), names.size()));
+  share_anchor(document, cases);
   return cases;
 }
 

@@ -48,6 +48,16 @@ bool knows_density(const Reading& reading, const std::string& side);
 /// The stream of "shell_side" or "tube_side"; empty where it cannot be made.
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 
+/// The density [kg/m3] that turns the volume flow written at `side`.flow into a mass flow; empty
+/// with a mistake noted.
+std::optional<double> flow_density(Reading& reading, const std::string& side, const fluids::Fluid& fluid,
+                                   const Inlet& inlet);
+
+/// The reading the unit is to be tied to; empty where there is none or it cannot be one, which
+/// is noted.
+std::optional<uncertainty::SteadyReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
+                                                    const rating::Stream& tube_side);
+
 /// Builds the case of a document without overlays. Throws InputError.
 Case build_plain(const Document& document);
 /// What the sheet claims; empty where it claims nothing.

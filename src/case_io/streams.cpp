@@ -78,7 +78,8 @@ std::optional<double> density_there(Reading& reading, const std::string& key, co
   return {};
 }
 
-/// The density [kg/m3] that turns the written volume flow into a mass flow; empty with a mistake noted.
+}  // namespace
+
 std::optional<double> flow_density(Reading& reading, const std::string& side, const Fluid& fluid,
                                    const Inlet& inlet) {
   const std::string key = side + ".flow";
@@ -101,8 +102,6 @@ std::optional<double> flow_density(Reading& reading, const std::string& side, co
                        {at_inlet ? *inlet.temperature : flow.at_temperature,
                         at_inlet || !is_gas ? *inlet.pressure : standard_atmosphere});
 }
-
-}  // namespace
 
 bool knows_density(const Reading& reading, const std::string& side) {
   for (const char* family : {".fluid.constant", ".fluid.two_point"})

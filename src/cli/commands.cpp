@@ -50,7 +50,7 @@ constexpr Option reach_options[] = {
 
 constexpr std::string_view compare_examples[] = {
     "dutygauge compare before.yaml after.yaml          what changed going in, and coming out",
-    "dutygauge compare --json before.yaml after.yaml   the same for a script"};
+    "dutygauge compare before.json after.yaml          what rate --json once wrote, against a case"};
 constexpr Option compare_options[] = {case_option, one_json_option, units_option, out_option, force_option};
 
 constexpr std::string_view field_examples[] = {
@@ -128,7 +128,7 @@ constexpr Command table[] = {
      "fluids and what can be built. A limit that is met and left again within one step of the search (4 %, "
      "1.5 K) can be missed: a range of your own makes finer steps.",
      run_reach},
-    {"compare", "say what changed between two cases, going in and coming out", "[OPTION]... A B",
+    {"compare", "say what changed between two cases or results, going in and coming out", "[OPTION]... A B",
      compare_examples, compare_options, "", run_compare},
     {"field", "say what a plant's readings tell of a unit in service", "[OPTION]... CASE READINGS...",
      field_examples, field_options,

@@ -6,17 +6,41 @@
 #include "vary.hpp"
 
 namespace dutygauge::cli {
+namespace {
+
+/// A case, or the recorded result of one.
+struct Given {
+  std::optional<case_io::Document> document;
+  std::optional<report::Compared> recorded;
+};
+
+Given given(const Call& call, const std::string& path) {
+  const std::string text = case_io::read_text(path);
+  try {
+    if (auto recorded = report::recorded(text)) return {{}, std::move(recorded)};
+  } catch (const std::invalid_argument& error) {
+    throw case_io::InputError(
+        path, {{{}, "", error.what(), "a case, or what rate --json wrote of one file", "rate it again"}});
+  }
+  return {operating_case(call, case_io::read_document(text, path)), {}};
+}
+
+}  // namespace
 
 int run_compare(const Call& call, Streams streams) {
-  if (call.arguments.size() != 2) throw CallError("compare takes two cases: compare A.yaml B.yaml");
+  if (call.arguments.size() != 2)
+    throw CallError("compare takes two cases or results: compare A.yaml B.yaml");
   if (std::ranges::count(call.arguments, "-") > 1)
     throw CallError("standard input (-) can be read only once");
-  const auto a = operating_case(call, case_io::read_file(call.arguments.front()));
-  const auto b = operating_case(call, case_io::read_file(call.arguments.back()));
-  report::Comparison comparison = explore::compare(a, b);
-  if (const auto display = units_asked_for(call)) comparison.a.display = *display;
+  const Given a = given(call, call.arguments.front()), b = given(call, call.arguments.back());
+  const auto side = [](const Given& one) {
+    return one.recorded ? *one.recorded : explore::compared(*one.document);
+  };
+  report::Comparison comparison = a.document && b.document ? explore::compare(*a.document, *b.document)
+                                                           : explore::compare(side(a), side(b));
+  if (const auto display = units_asked_for(call)) comparison.before.about.display = *display;
   deliver(call, call.has("json") ? report::json(comparison) + "\n" : report::text(comparison), streams.out);
-  return comparison.before && comparison.after ? done : no_result;
+  return comparison.before.running && comparison.after.running ? done : no_result;
 }
 
 }  // namespace dutygauge::cli

@@ -33,21 +33,42 @@ std::vector<report::InputChange> changes(const Texts& before, const Texts& after
   return all;
 }
 
+/// The spread of what b has less what a has; empty where either has no result.
+std::optional<uncertainty::Spreads> spread_between(const service::Assessment& a,
+                                                   const service::Assessment& b) {
+  std::vector<uncertainty::Question> questions;
+  for (const auto* one : {&a, &b})
+    questions.push_back({.problem = one->problem,
+                         .nominal = *one->rating.outcome,
+                         .sources = uncertainty::sources_of(one->problem, *one->rating.outcome)});
+  return uncertainty::propagate_together(questions).less_first.back();
+}
+
+report::Compared compared(const case_io::Document& document, const Point& point) {
+  const case_io::Case a_case = case_io::build(document);
+  report::Compared one{.about = name_of(a_case), .inputs = texts_of(document, a_case), .no_result = point.why};
+  if (!point.assessment) return one;
+  one.running = running(*point.assessment);
+  one.verdict = point.assessment->verdict.text;
+  return one;
+}
+
 }  // namespace
 
+report::Compared compared(const case_io::Document& document) {
+  return compared(document, rated(document));
+}
+
+report::Comparison compare(report::Compared a, report::Compared b) {
+  auto inputs = changes(a.inputs, b.inputs);
+  return {.before = std::move(a), .after = std::move(b), .inputs = std::move(inputs)};
+}
+
 report::Comparison compare(const case_io::Document& a, const case_io::Document& b) {
-  const case_io::Case case_a = case_io::build(a), case_b = case_io::build(b);
-  report::Comparison result{.a = name_of(case_a), .b = name_of(case_b)};
-  result.inputs = changes(texts_of(a, case_a), texts_of(b, case_b));
   const Point before = rated(a), after = rated(b);
-  const auto take = [](const Point& point, auto& numbers, std::string& why, std::string& verdict) {
-    why = point.why;
-    if (!point.assessment) return;
-    numbers = running(*point.assessment);
-    verdict = point.assessment->verdict.text;
-  };
-  take(before, result.before, result.no_result_before, result.verdict_before);
-  take(after, result.after, result.no_result_after, result.verdict_after);
+  auto result = compare(compared(a, before), compared(b, after));
+  if (before.assessment && after.assessment)
+    result.spread = spread_between(*before.assessment, *after.assessment);
   return result;
 }
 

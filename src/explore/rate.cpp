@@ -3,11 +3,15 @@
 #include <limits>
 #include <tuple>
 
+#include <tbb/parallel_for.h>
+
 #include "dutygauge/explore.hpp"
 #include "how_sure.hpp"
 
 namespace dutygauge::explore {
 namespace {
+
+using Swings = std::vector<std::vector<uncertainty::Swing>>;
 
 rating::Problem without_fouling(rating::Problem problem) {
   problem.shell_side.fouling_resistance = 0.0;
@@ -88,11 +92,30 @@ std::vector<report::AcceptedFinding> take_accepted(Findings& findings,
   return accepted;
 }
 
+/// The unit of today under the reading's conditions; what the reading cannot be goes to the findings.
+std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorReading>& read,
+                                            Findings& findings) {
+  if (!read) return {};
+  auto anchor = uncertainty::anchor_to(read->unit, read->reading);
+  findings.insert(findings.end(), anchor.findings.begin(), anchor.findings.end());
+  if (!anchor.value) return {};
+  const auto rated = rating::rate(uncertainty::today(*anchor.value, anchor.value->unit));
+  if (!rated.outcome) return {};
+  return report::Anchored{std::move(*anchor.value), *rated.outcome};
+}
+
 /// Everything but the claims.
-report::Result without_claims(const std::vector<case_io::Case>& cases) {
-  std::vector<report::RatedCase> all;
-  for (const auto& one : cases) all.push_back(rated(one));
-  add_spreads(all);
+report::Result without_claims(const std::vector<case_io::Case>& cases, const Swings& swings) {
+  std::vector<report::RatedCase> all(cases.size());
+  tbb::parallel_for(std::size_t{0}, cases.size(), [&](std::size_t i) { all[i] = rated(cases[i]); });
+  Findings of_anchor;
+  const auto anchored = anchored_to(cases.front().anchor, of_anchor);
+  for (auto& one : all) one.findings.insert(one.findings.end(), of_anchor.begin(), of_anchor.end());
+  if (anchored)
+    for (std::size_t i = 0; i < cases.size(); ++i)
+      all[i].today = {service::assess(uncertainty::today(anchored->anchor, cases[i].problem),
+                                      service_of(cases[i]))};
+  add_spreads(all, anchored, swings);
   const std::size_t worst = governing(all);
   const case_io::Case& a_case = cases[worst];
   report::Result result{.file = std::filesystem::path(a_case.file).filename().string(),
@@ -106,7 +129,8 @@ report::Result without_claims(const std::vector<case_io::Case>& cases) {
                         .assumed = all_assumed(cases, worst),
                         .findings = all_findings(all, worst),
                         .governing = worst,
-                        .present_since = a_case.present_since};
+                        .present_since = a_case.present_since,
+                        .anchored = anchored};
   result.cases = std::move(all);
   return result;
 }
@@ -134,7 +158,10 @@ service::Assessment assess_both_ways(const rating::Problem& problem, const servi
 report::Result rate(const case_io::Document& document, std::optional<units::System> display) {
   auto cases = case_io::build_all(document);
   for (auto& one : cases) one.display = display.value_or(one.display);
-  auto result = without_claims(cases);
+  Swings swings;
+  for (const auto& one : cases)
+    swings.push_back(swings_of(case_io::overlaid(document, one.operating_case), one));
+  auto result = without_claims(cases, swings);
   const auto found = std::ranges::find(cases, cases[0].claims.operating_case, &case_io::Case::operating_case);
   const std::size_t named = found == cases.end() ? 0 : static_cast<std::size_t>(found - cases.begin());
   if (!document.blocks.contains("present")) {
@@ -146,7 +173,7 @@ report::Result rate(const case_io::Document& document, std::optional<units::Syst
 }
 
 report::Result rate(const case_io::Case& a_case) {
-  auto result = without_claims({a_case});
+  auto result = without_claims({a_case}, {});
   const service::Assessment assessment = result.assessment;
   return completed(std::move(result), a_case, assessment);
 }

@@ -33,10 +33,19 @@ bool is_too_unsure(const RatedCase& one) {
   return confidence && one.spread && one.spread->probability.value_or(1.0) < *confidence;
 }
 
+std::string answer_today(const RatedCase& one, bool fouled) {
+  const bool today = *one.today->assessment.verdict.met;
+  if (today && fouled) return "yes, today and at design fouling";
+  if (today) return "yes as it is today, no at design fouling";
+  return fouled ? "no as it is today, yes at design fouling" : "no, neither today nor at design fouling";
+}
+
 std::string answer_of(const RatedCase& one) {
   if (!one.design_fouling.rating.outcome) return "no result";
   if (!one.design_fouling.verdict.met) return "no service is stated";
-  const bool fouled = *one.design_fouling.verdict.met, clean = one.clean.verdict.met.value_or(false);
+  const bool fouled = *one.design_fouling.verdict.met;
+  if (one.today && one.today->assessment.verdict.met) return answer_today(one, fouled);
+  const bool clean = one.clean.verdict.met.value_or(false);
   if (fouled && is_too_unsure(one)) return "not sure enough for a yes";
   if (fouled) return clean ? "yes" : "yes at design fouling, no clean";
   return clean ? "yes clean, no at design fouling" : "no, not even clean";
@@ -196,10 +205,13 @@ void answer_of_cases(Page& page, const Result& result) {
   }
   std::string text;
   for (const auto& [answer, names] : groups)
-    text += fmt::format("{}: {}. ", capitalised(listed(names)), answer);
+    text += result.cases.size() == 1 ? capitalised(answer) + ". "
+                                     : fmt::format("{}: {}. ", capitalised(listed(names)), answer);
   page.section("ANSWER", text);
   const auto& governing = result.cases[result.governing];
-  page.section("", fmt::format("The worst is {}: {}", spoken(governing.name),
+  const std::string which =
+      result.cases.size() == 1 ? "At design fouling" : "The worst is " + spoken(governing.name);
+  page.section("", fmt::format("{}: {}", which,
                                governing.design_fouling.rating.outcome
                                    ? reason(governing.design_fouling)
                                    : governing.design_fouling.rating.no_result + "."));
@@ -218,8 +230,9 @@ Rows rows_of(const Result& result, const std::vector<Column>& columns) {
   const char* const heading[] = {"proba-", "bility", "", ""};
   for (std::size_t i = 0; i < rows.size(); ++i) rows[i].insert(rows[i].end(), {heading[i], ""});
   for (const auto& one : result.cases) {
-    rows.push_back(row_of("  " + clipped(spoken(one.name), longest_case),
-                          {"clean", one.clean, one.spread_clean}, columns));
+    const State other = one.today ? State{"today", one.today->assessment, one.today->spread}
+                                  : State{"clean", one.clean, one.spread_clean};
+    rows.push_back(row_of("  " + clipped(spoken(one.name), longest_case), other, columns));
     rows.push_back(row_of("", {"design fouling", one.design_fouling, one.spread}, columns));
   }
   return rows;

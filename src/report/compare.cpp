@@ -15,15 +15,26 @@ struct Line {
   std::string label, json_key;
   Kind kind;
   std::optional<double> before, after;
+  std::optional<uncertainty::Spread> spread = {};  ///< of after less before
 };
 
+/// Half of what lies between the 5 and the 95 % quantile of the difference.
+double half_width(const Line& line) {
+  return 0.5 * (line.spread->high - line.spread->low);
+}
+
+/// Whether the difference is larger than what it may be wrong by in 9 cases of 10.
+bool is_significant(const Line& line) {
+  return std::abs(*line.after - *line.before) > half_width(line);
+}
+
 std::vector<Line> lines(const Comparison& comparison) {
-  const auto& names = comparison.a;
+  const auto& names = comparison.before.about;
   const auto of = [&comparison](auto&& take) {
     const auto one = [&take](const std::optional<Running>& running) -> std::optional<double> {
       return running ? std::optional<double>(take(*running)) : std::nullopt;
     };
-    return std::pair(one(comparison.before), one(comparison.after));
+    return std::pair(one(comparison.before.running), one(comparison.after.running));
   };
   std::vector<Line> all;
   const auto add = [&](std::string label, const char* key, Kind kind, auto&& take) {
@@ -39,12 +50,14 @@ std::vector<Line> lines(const Comparison& comparison) {
       [](const Running& r) { return r.shell_drop; });
   add(names.tube_side + " pressure drop", "tube_side_pressure_drop_Pa", Kind::pressure_difference,
       [](const Running& r) { return r.tube_drop; });
+  if (comparison.spread)
+    for (std::size_t i = 0; i < uncertainty::output_count; ++i) all[i].spread = (*comparison.spread)[i];
   add("U in service", "u_dirty_W_m2K", Kind::film_coefficient, [](const Running& r) { return r.u_dirty; });
   const auto margin = [&](const char* label, const char* key, Kind kind, auto member) {
     const auto one = [member](const std::optional<Running>& r) -> std::optional<double> {
       return r ? (*r).*member : std::nullopt;
     };
-    all.push_back({label, key, kind, one(comparison.before), one(comparison.after)});
+    all.push_back({label, key, kind, one(comparison.before.running), one(comparison.after.running)});
   };
   margin("duty margin", "margin_duty", Kind::ratio, &Running::duty_margin);
   margin("outlet margin", "margin_temperature_K", Kind::temperature_difference, &Running::temperature_margin);
@@ -66,6 +79,17 @@ std::string difference(const Line& line, const Figures& figures) {
   return fmt::format("{:+.1f} %", 100.0 * change / *line.before);
 }
 
+/// "+-0.3 K  beyond it": what the difference may be wrong by, and whether that matters.
+std::string how_sure(const Line& line, const Figures& figures) {
+  if (!line.spread || !line.before || !line.after) return "";
+  if (*line.after == *line.before) return "";
+  const double width = half_width(line);
+  const bool degrees = line.kind == Kind::temperature;
+  const std::string shown = degrees ? figures.with_unit(width, Kind::temperature_difference)
+                                    : fmt::format("{:.1f} %", 100.0 * width / *line.before);
+  return fmt::format("+-{}, {}", shown, is_significant(line) ? "significant" : "within the spread");
+}
+
 void going_in(Page& page, const Comparison& comparison) {
   if (comparison.inputs.empty()) {
     page.section("GOING IN", "Nothing differs.");
@@ -82,14 +106,14 @@ void going_in(Page& page, const Comparison& comparison) {
 }
 
 void coming_out(Page& page, const Comparison& comparison) {
-  const Figures figures(comparison.a.display);
-  std::vector<std::vector<std::string>> rows = {{"COMING OUT", "A", "B", "", "B less A"}};
+  const Figures figures(comparison.before.about.display);
+  std::vector<std::vector<std::string>> rows = {{"COMING OUT", "A", "B", "", "B less A", comparison.spread ? "in 9 cases of 10" : ""}};
   for (const Line& line : lines(comparison))
     if (line.before || line.after)
       rows.push_back({"  " + line.label, shown(line.before, line.kind, figures),
                       shown(line.after, line.kind, figures),
-                      line.kind == Kind::ratio ? "%" : figures.unit(line.kind), difference(line, figures)});
-  page.table(rows, {Align::left, Align::right, Align::right, Align::left, Align::left}, 0);
+                      line.kind == Kind::ratio ? "%" : figures.unit(line.kind), difference(line, figures), how_sure(line, figures)});
+  page.table(rows, {Align::left, Align::right, Align::right, Align::left, Align::left, Align::left}, 0);
 }
 
 std::string said(const std::string& verdict, const std::string& no_result) {
@@ -100,13 +124,13 @@ std::string said(const std::string& verdict, const std::string& no_result) {
 
 std::string text(const Comparison& comparison) {
   Page page;
-  page.line(fmt::format("A  {}  {}  input {}", comparison.a.file, comparison.a.title,
-                        comparison.a.input_sha256.substr(0, 8)));
-  page.line(fmt::format("B  {}  {}  input {}", comparison.b.file, comparison.b.title,
-                        comparison.b.input_sha256.substr(0, 8)));
+  page.line(fmt::format("A  {}  {}  input {}", comparison.before.about.file, comparison.before.about.title,
+                        comparison.before.about.input_sha256.substr(0, 8)));
+  page.line(fmt::format("B  {}  {}  input {}", comparison.after.about.file, comparison.after.about.title,
+                        comparison.after.about.input_sha256.substr(0, 8)));
   page.line(std::string(page_width, '-'));
-  page.section("ANSWER", "A: " + said(comparison.verdict_before, comparison.no_result_before));
-  page.section("", "B: " + said(comparison.verdict_after, comparison.no_result_after));
+  page.section("ANSWER", "A: " + said(comparison.before.verdict, comparison.before.no_result));
+  page.section("", "B: " + said(comparison.after.verdict, comparison.after.no_result));
   page.blank();
   going_in(page, comparison);
   page.blank();
@@ -138,18 +162,20 @@ std::string json(const Comparison& comparison) {
     outputs.push_back({{"name", line.json_key},
                        {"a", value(line.before)},
                        {"b", value(line.after)},
-                       {"difference", both ? Json(*line.after - *line.before) : Json(nullptr)}});
+                       {"difference", both ? Json(*line.after - *line.before) : Json(nullptr)},
+                       {"difference_90", both && line.spread ? Json(half_width(line)) : Json(nullptr)},
+                       {"significant", both && line.spread ? Json(is_significant(line)) : Json(nullptr)}});
   }
   return one_line({{"dutygauge", DUTYGAUGE_VERSION},
                    {"schema_version", 1},
-                   {"a", name(comparison.a)},
-                   {"b", name(comparison.b)},
+                   {"a", name(comparison.before.about)},
+                   {"b", name(comparison.after.about)},
                    {"inputs", inputs},
                    {"outputs", outputs},
-                   {"result_a", result(comparison.before)},
-                   {"result_b", result(comparison.after)},
-                   {"no_result_a", word(comparison.no_result_before)},
-                   {"no_result_b", word(comparison.no_result_after)}});
+                   {"result_a", result(comparison.before.running)},
+                   {"result_b", result(comparison.after.running)},
+                   {"no_result_a", word(comparison.before.no_result)},
+                   {"no_result_b", word(comparison.after.no_result)}});
 }
 
 }  // namespace dutygauge::report

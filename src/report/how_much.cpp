@@ -147,7 +147,7 @@ void velocity_rows(const Result& result, const rating::Outcome& outcome, std::ve
 }  // namespace
 
 void how_much(Page& page, const Result& result) {
-  if (result.cases.size() > 1) return how_much_of_cases(page, result);
+  if (result.cases.size() > 1 || result.anchored) return how_much_of_cases(page, result);
   const auto& outcome = *result.assessment.rating.outcome;
   std::vector<Row> rows = {{"HOW MUCH     running free, design fouling", "", "", "limit", "margin", ""}};
   duty_rows(result, outcome, rows);

@@ -37,7 +37,8 @@ std::string where_it_comes_from(const uncertainty::Result& spread) {
   std::vector<std::string> parts;
   for (const auto& share : spread.shares)
     if (parts.size() < most_sources && share[Output::duty] >= least_share)
-      parts.push_back(fmt::format("{} ({:.0f} %)", share.name, 100.0 * share[Output::duty]));
+      parts.push_back(fmt::format("{} ({:.0f} %)", share.name == share.key ? "the " + plain_words(share.key) : share.name,
+                                  100.0 * share[Output::duty]));
   if (parts.empty()) return "";
   return fmt::format("What is open about the duty comes from {}.", listed(parts));
 }
@@ -55,7 +56,8 @@ std::vector<std::string> spread_in_words(const Result& result) {
   if (!result.spread || !result.assessment.rating.outcome) return {};
   const auto& spread = *result.spread;
   const auto& outcome = *result.assessment.rating.outcome;
-  std::vector<std::string> said{fmt::format("In 9 cases of 10: duty +-{:.1f} %, {}, {}, {}, {}.",
+  std::vector<std::string> said{fmt::format("{}n 9 cases of 10: duty +-{:.1f} %, {}, {}, {}, {}.",
+                                            result.anchored ? "At design fouling, i" : "I",
                                             100.0 * half_width(spread, Output::duty) / outcome.duty,
                                             outlet(result, Side::shell), outlet(result, Side::tube),
                                             drop(result, Side::shell, outcome.shell_drop.total()),

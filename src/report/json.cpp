@@ -9,6 +9,7 @@
 
 #include "dutygauge/report.hpp"
 #include "dutygauge/sources.hpp"
+#include "anchor_json.hpp"
 #include "spread_json.hpp"
 #include "words.hpp"
 
@@ -181,6 +182,10 @@ Json operating_case(const RatedCase& one) {
   Json json = state(one.design_fouling, one.spread);
   const Json fouled = json;
   json["states"] = {{"clean", state(one.clean, one.spread_clean)}, {"design_fouling", fouled}};
+  if (one.today) {
+    json["states"]["today"] = state(one.today->assessment, one.today->spread);
+    json["states"]["today"]["change_since_reading"] = change_json(one.today->change);
+  }
   return json;
 }
 
@@ -376,6 +381,7 @@ std::string json(const Result& result) {
                    {"solutions", solutions(assessment)},
                    {"states", states(result)},
                    {"operating_cases", operating_cases(result)},
+                   {"anchor", anchor_json(result.anchored)},
                    {"assumed", assumed(result)},
                    {"levers", levers(result.levers)},
                    {"findings", findings(result)},

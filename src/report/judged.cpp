@@ -144,7 +144,8 @@ std::string in_the_case(const Result& result) {
 void how_sure(Page& page, const Result& result) {
   const auto& assessment = result.assessment;
   const std::size_t remarks = remarks_on_methods(result.findings);
-  const auto spread = spread_in_words(result);
+  auto spread = today_in_words(result);
+  std::ranges::move(spread_in_words(result), std::back_inserter(spread));
   if (spread.empty() && !assessment.second_opinion && remarks == 0) return;
   page.blank();
   std::string name = "HOW SURE";

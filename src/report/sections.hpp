@@ -27,6 +27,9 @@ void next_steps(Page& page, const Result& result);
 /// What the spread of the result says, sentence by sentence; empty without one.
 std::vector<std::string> spread_in_words(const Result& result);
 
+/// What the reading says of the unit, and what changes from there; empty without an anchor.
+std::vector<std::string> today_in_words(const Result& result);
+
 /// Films, resistances, factors and parts of the pressure drops in words; the inputs; the sources.
 void details(Page& page, const Result& result);
 

@@ -43,7 +43,7 @@ void heading(Page& page, const Result& result) {
 }
 
 void answer(Page& page, const Result& result) {
-  if (result.cases.size() > 1) return answer_of_cases(page, result);
+  if (result.cases.size() > 1 || result.anchored) return answer_of_cases(page, result);
   const auto& rating = result.assessment.rating;
   page.section("ANSWER",
                rating.outcome ? result.assessment.verdict.text : "No result: " + rating.no_result + ".");

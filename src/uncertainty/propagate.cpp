@@ -2,7 +2,9 @@
 #include <map>
 #include <stdexcept>
 
-#include "dutygauge/uncertainty.hpp"
+#include <tbb/parallel_for.h>
+
+#include "sample.hpp"
 
 namespace dutygauge::uncertainty {
 namespace {
@@ -17,42 +19,12 @@ Values values_of(const rating::Outcome& outcome) {
 /// One question with its rating by mean properties, which its samples deviate from.
 struct Asked {
   const Question* question;
-  rating::Outcome by_means;
-  std::vector<std::size_t> inputs;  ///< by source: which of all deviates is its own
+  Sample by_means;
+  std::vector<std::size_t> inputs;  ///< by source, then by swing: which of all deviates is its own
 };
 
-/// What stands between two figures of one kind; 1 where there is nothing to relate.
-double ratio(double value, double reference) {
-  return reference == 0.0 ? 1.0 : value / reference;
-}
-
-double carried_outlet(double outlet, double inlet, const rating::Stream& stream, double by_means,
-                      double nominal) {
-  const double as_shown = ratio(nominal - stream.inlet_temperature, by_means - stream.inlet_temperature);
-  return inlet + (outlet - inlet) * as_shown;
-}
-
-/// A sample's deviation from the rating by means, put on the outcome as shown.
-rating::Outcome carried(const Asked& asked, const rating::Problem& problem, rating::Outcome sample) {
-  const rating::Outcome &nominal = asked.question->nominal, &by_means = asked.by_means;
-  const rating::Problem& base = asked.question->problem;
-  sample.duty *= ratio(nominal.duty, by_means.duty);
-  sample.shell_outlet = carried_outlet(sample.shell_outlet, problem.shell_side.inlet_temperature,
-                                       base.shell_side, by_means.shell_outlet, nominal.shell_outlet);
-  sample.tube_outlet = carried_outlet(sample.tube_outlet, problem.tube_side.inlet_temperature, base.tube_side,
-                                      by_means.tube_outlet, nominal.tube_outlet);
-  sample.shell_drop = sample.shell_drop.times(ratio(nominal.shell_drop.total(), by_means.shell_drop.total()));
-  sample.tube_drop = sample.tube_drop.times(ratio(nominal.tube_drop.total(), by_means.tube_drop.total()));
-  return sample;
-}
-
-/// The outcome of a question at deviates of its own sources.
 std::optional<rating::Outcome> rated(const Asked& asked, std::span<const double> deviates) {
-  rating::Problem problem = asked.question->problem;
-  for (std::size_t i = 0; i < deviates.size(); ++i) apply(asked.question->sources[i], deviates[i], problem);
-  const rating::Rating sample = rating::rate_mean(problem);
-  if (!sample.outcome) return {};
-  return carried(asked, problem, *sample.outcome);
+  return shown_sample(*asked.question, asked.by_means, deviates);
 }
 
 /// Gives every source its place among the deviates; common sources of one key share it.
@@ -68,6 +40,11 @@ std::size_t number_inputs(std::vector<std::optional<Asked>>& all) {
       if (source.common) common[source.key] = input;
       asked->inputs.push_back(input);
     }
+    for (const Swing& swing : asked->question->swings) {
+      const auto [place, is_new] = common.try_emplace(swing.key, count);
+      if (is_new) ++count;
+      asked->inputs.push_back(place->second);
+    }
   }
   return count;
 }
@@ -81,15 +58,16 @@ void fill_first_order(const Asked& asked, Result& result) {
     const Values values = values_of(*outcome);
     return std::vector<double>(values.begin(), values.end());
   };
-  const std::vector<Source>& sources = asked.question->sources;
-  const auto linear = first_order(model, sources.size());
+  const auto linear = first_order(model, asked.inputs.size());
   if (!linear) return;
   std::ranges::copy(linear->sigma, result.first_order_sigma.begin());
-  for (std::size_t i = 0; i < sources.size(); ++i) {
-    Share share{.name = sources[i].name, .key = sources[i].key};
-    for (std::size_t k = 0; k < output_count; ++k) share.of[k] = linear->share(i, k);
+  const auto add_share = [&](const std::string& name, const std::string& key) {
+    Share share{.name = name, .key = key};
+    for (std::size_t k = 0; k < output_count; ++k) share.of[k] = linear->share(result.shares.size(), k);
     result.shares.push_back(std::move(share));
-  }
+  };
+  for (const Source& source : asked.question->sources) add_share(source.name, source.key);
+  for (const Swing& swing : asked.question->swings) add_share(swing.name, swing.key);
   std::ranges::stable_sort(result.shares, std::ranges::greater{},
                            [](const Share& share) { return share[Output::duty]; });
 }
@@ -97,18 +75,20 @@ void fill_first_order(const Asked& asked, Result& result) {
 /// All samples of one question.
 struct Samples {
   std::vector<std::optional<Values>> values;
-  std::vector<bool> meets;
+  std::vector<char> meets;  ///< not bool: samples are written at the same time
 };
 
 Samples samples_of(const Asked& asked, const std::vector<std::vector<double>>& points) {
-  Samples samples;
-  std::vector<double> deviates(asked.inputs.size());
-  for (const std::vector<double>& point : points) {
-    std::ranges::transform(asked.inputs, deviates.begin(), [&](std::size_t input) { return point[input]; });
+  Samples samples{.values = std::vector<std::optional<Values>>(points.size()),
+                  .meets = std::vector<char>(points.size())};
+  tbb::parallel_for(std::size_t{0}, points.size(), [&](std::size_t i) {
+    std::vector<double> deviates(asked.inputs.size());
+    std::ranges::transform(asked.inputs, deviates.begin(),
+                           [&](std::size_t input) { return points[i][input]; });
     const auto outcome = rated(asked, deviates);
-    samples.values.push_back(outcome ? std::optional(values_of(*outcome)) : std::nullopt);
-    samples.meets.push_back(outcome && asked.question->meets && asked.question->meets(*outcome));
-  }
+    if (outcome) samples.values[i] = values_of(*outcome);
+    samples.meets[i] = outcome && asked.question->meets && asked.question->meets(*outcome);
+  });
   return samples;
 }
 
@@ -139,7 +119,7 @@ std::optional<Result> result_of(const Asked& asked, const Samples& samples) {
   result.failed = static_cast<int>(std::ranges::count_if(samples.values, [](const auto& of) { return !of; }));
   result.evaluations = result.samples + 1;  // and the nominal by means
   if (asked.question->meets)
-    result.probability = part(std::ranges::count(samples.meets, true), samples.meets.size());
+    result.probability = part(std::ranges::count(samples.meets, 1), samples.meets.size());
   fill_first_order(asked, result);
   return result;
 }
@@ -161,8 +141,8 @@ Together propagate_together(std::span<const Question> questions, const Sampling&
   if (questions.empty()) throw std::invalid_argument("uncertainty::propagate_together: nothing is asked");
   std::vector<std::optional<Asked>> all;
   for (const Question& question : questions) {
-    const rating::Rating by_means = rating::rate_mean(question.problem);
-    all.push_back(by_means.outcome ? std::optional(Asked{&question, *by_means.outcome, {}}) : std::nullopt);
+    auto by_means = nominal_by_means(question);
+    all.push_back(by_means ? std::optional(Asked{&question, std::move(*by_means), {}}) : std::nullopt);
   }
   const auto points = normal_points(number_inputs(all), sampling);
   Together together;

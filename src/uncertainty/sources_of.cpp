@@ -34,6 +34,10 @@ constexpr Scatter shell_drop_kern{0.50, "kern_1950"};
 constexpr Scatter wall{0.05, "common_practice"};     // alloys
 constexpr Scatter fouling{0.40, "common_practice"};  // chosen from a table: 0.35 to 0.5
 
+// Of the exponent with which a film follows its flow: what a tied film may be wrong by, for
+// each unit of ln(flow/flow read). Methods differ by some 0.05 in it.
+constexpr Scatter flow_exponent{0.05, "common_practice"};
+
 /// For values somebody typed without saying how good they are: a liquid of known grade.
 constexpr double density_as_typed = 0.01, heat_capacity_as_typed = 0.03, conductivity_as_typed = 0.07,
                  viscosity_as_typed = 0.15;
@@ -139,18 +143,30 @@ std::vector<Source> sources_of(const rating::Problem& problem, const rating::Out
   return sources;
 }
 
-Source flow_source(Side side, double sigma) {
-  Source made = source(Varied::flow, side, "flow", {sigma, ""});
-  made.distribution = Distribution::normal;
-  made.common = false;
-  return made;
-}
-
-Source inlet_source(Side side, double sigma) {
-  Source made = source(Varied::inlet_temperature, side, "inlet temperature", {sigma, ""});
-  made.distribution = Distribution::normal;
-  made.common = false;
-  return made;
+std::vector<Source> sources_of_today(const Anchor& anchor, const rating::Problem& problem,
+                                     const rating::Outcome& outcome) {
+  auto sources = sources_of(problem, outcome);
+  std::erase_if(sources, [](const Source& s) { return s.varied == Varied::fouling; });
+  const SteadyReading& reading = anchor.reading;
+  for (const Side side : {Side::shell, Side::tube}) {
+    const bool shell = side == Side::shell;
+    const auto stream = [shell](const rating::Problem& of) -> const rating::Stream& {
+      return shell ? of.shell_side : of.tube_side;
+    };
+    const double steps = std::abs(std::log(stream(problem).mass_flow / stream(anchor.at_reading).mass_flow));
+    sources.push_back(source(Varied::film_with_flow, side, "film away from the flow read",
+                             {flow_exponent.sigma * steps, flow_exponent.source}));
+    const auto of_reading = [&](Varied varied, const char* what, double sigma) {
+      Source made = source(varied, side, what, {sigma, "common_practice"});
+      made.distribution = Distribution::normal;
+      sources.push_back(std::move(made));
+    };
+    if ((shell ? reading.shell_side : reading.tube_side).mass_flow)
+      of_reading(Varied::read_flow, "flow as read", reading.flow_sigma);
+    of_reading(Varied::read_inlet, "inlet as read", reading.temperature_sigma);
+    of_reading(Varied::read_outlet, "outlet as read", reading.temperature_sigma);
+  }
+  return sources;
 }
 
 }  // namespace dutygauge::uncertainty

@@ -1,9 +1,12 @@
 #pragma once
+#include <map>
 #include <optional>
 #include <string>
+#include <string_view>
 #include <vector>
 
 #include "dutygauge/findings.hpp"
+#include "dutygauge/uncertainty.hpp"
 #include "dutygauge/units.hpp"
 
 /// A case varied and rated again, as tables: sweep, reach and compare.
@@ -87,13 +90,25 @@ struct InputChange {
   std::string key, before, after;
 };
 
-struct Comparison {
-  CaseName a, b;
-  std::vector<InputChange> inputs = {};
-  std::optional<Running> before = {}, after = {};
-  std::string no_result_before = {}, no_result_after = {};
-  std::string verdict_before = {}, verdict_after = {};
+/// One of two that are compared: a case as rated, or the recorded result of one.
+struct Compared {
+  CaseName about;
+  std::map<std::string, std::string> inputs = {};  ///< as typed, by key
+  std::optional<Running> running = {};
+  std::string no_result = {}, verdict = {};
 };
+
+struct Comparison {
+  Compared before, after;
+  std::vector<InputChange> inputs = {};
+  /// Of after less before, with what both have wrong in common left out; empty where a side
+  /// is a recorded result, whose methods cannot be run again.
+  std::optional<uncertainty::Spreads> spread = {};
+};
+
+/// Reads what `rate --json` wrote of one file; empty where the text is no such object.
+/// Throws std::invalid_argument with a sentence where it is one without a result to compare.
+std::optional<Compared> recorded(std::string_view text);
 
 /// Text pages: at most 100 columns, ASCII.
 std::string text(const Sweep& sweep);
