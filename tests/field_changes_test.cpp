@@ -205,3 +205,28 @@ TEST_CASE("field: a meter that drifts is a slope of the closure, not a step") {
   });
   CHECK(kinds_of(events_of(both, laws, {}, {})) == std::vector{What::sensor_drift, What::sensor_shift});
 }
+
+TEST_CASE("field: a step where a channel goes missing is the balance's, not the deposit's") {
+  auto days =
+      series::days(200, [](int i, series::Settings& s) { s.fouling = i < 80 || i >= 120 ? 1e-4 : 2e-4; });
+  for (Day& day : days)
+    if (day.day > 80.0 && day.day < 120.0) {
+      day.value[index_of(Channel::cold_flow)] = std::nan("");
+      day.apparent.closure = std::nan("");
+    }
+  const auto events = events_of(days, laws, {}, {});
+  REQUIRE(events.size() == 2);
+  for (const Event& event : events) {
+    CHECK(event.what == What::sensor_shift);
+    CHECK(event.channel == Channel::cold_flow);
+  }
+}
+
+TEST_CASE("field: a day without readings is no outage unless somebody says so") {
+  const auto days = series::days(100, [](int i, series::Settings& s) { s.running = i != 50; });
+  CHECK(events_of(days, laws, {}, {}).empty());
+  const auto longer = series::days(100, [](int i, series::Settings& s) { s.running = i < 50 || i > 52; });
+  CHECK(only(events_of(longer, laws, {}, {}), What::outage).at == 50.0);
+  const auto said = events_of(days, laws, {{50.2, 50.9, What::outage}}, {});
+  CHECK(only(said, What::outage).logged);
+}

@@ -204,6 +204,18 @@ TEST_CASE("field: a saw-tooth is a law for each tooth, with what each cleaning l
   CHECK(*cycles[2].residue == doctest::Approx(0.183).epsilon(0.15));
 }
 
+TEST_CASE("field: a step that is no cleaning does not end a cycle") {
+  series::Noise noise(9, 3e-6, 0.2);
+  Trend plugged;
+  for (int day = 0; day < 120; ++day)
+    plugged.push_back({.time = day + 0.5, .value = 1e-6 * day + (day < 90 ? 0.0 : 5e-5) + noise()});
+  const auto cycles = cycles_of(plugged, {{.at = 90.0, .what = What::plugging, .fouling = 5e-5}});
+  REQUIRE(cycles.size() == 1);
+  CHECK(cycles[0].choice->best().law.kind == LawKind::linear);
+  CHECK(cycles[0].choice->best().law.rise == doctest::Approx(1e-6).epsilon(0.05));
+  CHECK(cycles[0].choice->best().law.at(119.5) == doctest::Approx(1.695e-4).epsilon(0.03));
+}
+
 TEST_CASE("field: soon after a cleaning the growth before it is the best guess") {
   series::Noise noise(4, 3e-6, 0.2);
   Trend saw;

@@ -1,9 +1,12 @@
 #include <doctest/doctest.h>
 
 #include <cmath>
+#include <iterator>
 #include <limits>
+#include <random>
 
 #include "field_plants.hpp"
+#include "field_simulated.hpp"
 #include "support.hpp"
 
 // One reading against the exchanger: what it says, how sure, and what the exchanger would show.
@@ -146,6 +149,59 @@ TEST_CASE("field: the fouling's uncertainty follows every channel through the wh
   }
 }
 
+TEST_CASE("field: either stream may be the hot one, in the tubes or in the shell") {
+  // At consistent readings the weights of the duties do not matter, so that moving one channel
+  // shows the fouling's slope. Cooling water in the shell, and drawn or given films.
+  const std::string hot_tubes = R"(dutygauge: 1
+exchanger: {tema: AEL, area: 180 m2, wall_resistance: 0.00003 m2.K/W, tubes: {passes: 4}}
+streams:
+  tube_side:
+    fluid: {constant: {heat_capacity: 2400 J/kg.K}}
+    flow: 60 kg/s
+    inlet: {temperature: 120 degC}
+    fouling: 0 m2.K/W
+    film_law: {value: 1400 W/m2.K, at_flow: 60 kg/s, flow_exponent: 0.8, temperature_slope: 0.005 1/K, at_temperature: 90 degC, surface: outside}
+  shell_side:
+    fluid: {constant: {heat_capacity: 4180 J/kg.K}}
+    flow: 70 kg/s
+    inlet: {temperature: 25 degC}
+    fouling: 0 m2.K/W
+    film_law: {value: 2500 W/m2.K, at_flow: 70 kg/s, flow_exponent: 0.6, surface: outside}
+)";
+  struct Row {
+    const std::string& text;
+    field::Conditions conditions;
+  };
+  const Row rows[] = {{hot_tubes, {60, 70, 393.15, 298.15}},
+                      {plants::oil_preheater, {62, 95, 563.15, 423.15}},
+                      {plants::drawn_cooler, {46, 60, 325.15, 300.15}}};
+  for (const Row& row : rows) {
+    CAPTURE(row.text);
+    const field::Plant plant(plants::problem(row.text), {.factor = 1.05});
+    const auto shown = field::respond(plant, row.conditions, {.tube_deposit = 2e-4});
+    REQUIRE(shown.has_value());
+    const field::Conditions& c = row.conditions;
+    const field::Channels at = {c.hot_flow,      c.cold_flow, c.hot_in, shown->hot_out, c.cold_in,
+                                shown->cold_out, missing,     missing,  missing};
+    const auto instruments = plants::instruments({.flow_systematic = 0.01, .temperature_systematic = 0.2});
+    CHECK(std::abs(field::apparent(plant, instruments, at)->fouling - 2e-4) < 1e-11);
+    double variance = 0.0;
+    for (std::size_t i = 0; i < 6; ++i) {
+      const double u = instruments[i].systematic * (instruments[i].relative ? at[i] : 1.0);
+      field::Channels more = at, less = at;
+      more[i] += 1e-3 * u, less[i] -= 1e-3 * u;
+      const auto up = field::apparent(plant, instruments, more),
+                 down = field::apparent(plant, instruments, less);
+      REQUIRE((up && down));
+      variance += std::pow((up->fouling - down->fouling) / 2e-3, 2);
+    }
+    const auto a = field::apparent(plant, instruments, at);
+    REQUIRE(a.has_value());
+    // Of the drawn unit walls are held where the films are moved.
+    CHECK(relative(a->fouling_systematic, std::sqrt(variance)) < 1e-3);
+  }
+}
+
 TEST_CASE("field: noise is amplified as the arrangement's slope says") {
   // Computed values, printed to three digits.
   struct Row {
@@ -227,6 +283,33 @@ TEST_CASE("field: readings that cannot be give nothing") {
   CHECK_FALSE(field::apparent(plant, instruments, reading(0.0, 110.0, 55.0, 43.0, 28.0, 36.7)));
   CHECK_FALSE(field::apparent(plant, instruments, reading(missing, missing, 55.0, 43.0, 28.0, 36.7)));
   CHECK_FALSE(field::apparent(plant, instruments, reading(80.0, 110.0, missing, missing, 28.0, 36.7)));
+}
+
+TEST_CASE("field: no reading, however wild, gives anything but numbers or nothing") {
+  const double values[] = {missing, 0.0,   -1.0,  1e-300, 1e300, std::numeric_limits<double>::infinity(),
+                           1.0,     80.0,  110.0, 290.0,  301.0, 315.0,
+                           328.0,   420.0, 560.0};
+  const auto instruments = plants::instruments({.flow_random = 0.01, .temperature_random = 0.2});
+  for (const std::string& text : {plants::water_cooler, plants::oil_preheater, plants::drawn_cooler}) {
+    const field::Plant plant(plants::problem(text));
+    std::mt19937 random(3);
+    std::uniform_int_distribution<std::size_t> any(0, std::size(values) - 1);
+    for (int i = 0; i < 20000; ++i) {
+      field::Channels wild;
+      for (double& value : wild) value = values[any(random)];
+      const auto a = field::apparent(plant, instruments, wild);
+      if (a) {
+        CHECK(std::isfinite(a->fouling));
+        CHECK(std::isfinite(a->fouling_random));
+        CHECK(std::isfinite(a->fouling_systematic));
+        CHECK(a->u > 0.0);
+      }
+      const auto shown = field::respond(
+          plant, {wild[0], wild[1], wild[2], wild[4]},
+          {.tube_deposit = 1e-6 * wild[6], .shell_deposit = 1e-6 * wild[7], .plugged = 0.01 * wild[8]});
+      if (shown) CHECK(std::isfinite(shown->duty + shown->hot_out + shown->tube_dp + shown->shell_dp));
+    }
+  }
 }
 
 TEST_CASE("field: what the unit shows with a deposit is read back as that deposit") {
@@ -324,4 +407,41 @@ TEST_CASE("field: what cannot be shows nothing") {
   CHECK_FALSE(field::respond(plant, service, {.tube_bypass = -0.1}));
   CHECK_FALSE(field::respond(plant, {0, 110, 328.15, 301.15}, {}));
   CHECK_FALSE(field::respond(plant, {80, 110, 300.0, 301.15}, {}));
+}
+
+TEST_CASE("field: daily fouling of simulated years lies as close to the truth as a reading allows") {
+  // Attainable by a plain method: A 3.4e-6, G 3.5e-6 with true films; to be accepted: A 8e-6, and G
+  // 25e-6 relative to its clean period, as its films are those of the drawing.
+  struct Row {
+    const char* unit;
+    const std::string& text;
+    int clean_days;
+    double largest;
+  };
+  const Row rows[] = {{"A", plants::water_cooler, 0, 8e-6}, {"G", plants::drawn_cooler, 10, 25e-6}};
+  const auto instruments = plants::instruments({.flow_systematic = 0.01,
+                                                .flow_random = 0.01,
+                                                .temperature_systematic = 0.15,
+                                                .temperature_random = 0.15});
+  for (const Row& row : rows) {
+    CAPTURE(row.unit);
+    const field::Plant plant(plants::problem(row.text));
+    const auto truth = simulated::true_fouling(row.unit);
+    std::map<int, std::vector<double>> found;
+    for (const simulated::Hour& hour : simulated::running_hours(row.unit))
+      if (const auto a = field::apparent(plant, instruments, hour.value))
+        found[static_cast<int>(hour.day)].push_back(a->fouling - truth.at(static_cast<int>(hour.day)));
+    std::vector<double> clean = {0.0};
+    for (int day = 0; day < row.clean_days; ++day) clean.push_back(simulated::median(found[day]));
+    const double offset = row.clean_days > 0 ? simulated::median(clean) : 0.0;
+    double sum = 0.0;
+    int days = 0;
+    for (const auto& [day, errors] : found) {
+      if (errors.size() < 12) continue;
+      sum += std::pow(simulated::median(errors) - offset, 2);
+      ++days;
+    }
+    CHECK(days > 340);
+    CHECK(std::sqrt(sum / days) < row.largest);
+  }
 }

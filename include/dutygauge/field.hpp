@@ -1,9 +1,9 @@
 #pragma once
 #include <cstdint>
-#include <utility>
 #include <optional>
 #include <string>
 #include <string_view>
+#include <utility>
 #include <vector>
 
 #include "dutygauge/field/causes.hpp"
@@ -12,6 +12,7 @@
 #include "dutygauge/field/decision.hpp"
 #include "dutygauge/field/forecast.hpp"
 #include "dutygauge/field/laws.hpp"
+#include "dutygauge/field/mapping.hpp"
 #include "dutygauge/field/series.hpp"
 
 /// Readings of a unit in service: how dirty it is, until when it does its service, why, and
@@ -65,11 +66,12 @@ struct Evidence {
   std::vector<Doubt> suspects = {};
   std::vector<WeighedCause> causes = {};
   std::optional<Allowed> allowed = {};  ///< empty: no service is stated
-  double film_uncertainty = 0;          ///< standard, of 1/u_clean [m2.K/W]: in the level, not in a change
-  bool calibrated = false;              ///< on a clean period: constant errors cancel in the level
+  double film_uncertainty = 0;          ///< standard, of 1/u_clean [m2.K/W]; most of it cancels in a change
+  bool calibrated = false;              ///< on a clean period: the level is a change since then
   std::vector<Margin> margins = {};
   Plan plan = {};
   std::vector<DayRange> ranges = {};  ///< of the hypothesis used; may be empty
+  Days as_read = {};                  ///< with every instrument; empty where a hypothesis has them so
 };
 
 /// How well the heat balance closes.
@@ -79,10 +81,10 @@ struct Closure {
 };
 
 struct FoulingNow {
-  double now = 0;                                ///< [m2.K/W]
-  double u95_level = 0;                          ///< of `now`, instruments and films included [m2.K/W]
-  double change = 0;                             ///< since the cycle began [m2.K/W]
-  double u95_change = 0;                         ///< scatter alone [m2.K/W]
+  double now = 0;         ///< [m2.K/W]
+  double u95_level = 0;   ///< of `now`, instruments and films included [m2.K/W]
+  double change = 0;      ///< since the cycle began [m2.K/W]
+  double u95_change = 0;  ///< of `change`, to which constant errors add little [m2.K/W]
   double rate = 0, rate_low = 0, rate_high = 0;  ///< and where it lies with 95 % [m2.K/W.d]
   double since = 0;                              ///< first day of the cycle [d]
   Choice choice = {};
@@ -123,10 +125,8 @@ struct FieldResult {
 /// Throws std::invalid_argument without a hypothesis.
 FieldResult analyse(const Evidence& evidence);
 
+/// The median over the days with what the instruments always show wrong:
 /// |c| <= u "closes", <= 2 u "closes within uncertainty", <= 3 u "doubtful", else "does not close".
 Closure closure_of(const Days& days);
-
-/// "hot_flow", ...
-std::string_view name_of(Channel channel);
 
 }  // namespace dutygauge::field

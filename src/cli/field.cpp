@@ -11,6 +11,7 @@
 #include "command.hpp"
 #include "dutygauge/case_io.hpp"
 #include "dutygauge/cli.hpp"
+#include "dutygauge/field/diagnosis.hpp"
 #include "dutygauge/field/evidence.hpp"
 #include "dutygauge/report/field.hpp"
 #include "dutygauge/report/series.hpp"
@@ -138,6 +139,14 @@ field::History history_of(const Call& call, const case_io::Case& a_case, Streams
   return history;
 }
 
+field::Evidence evidence_of(const case_io::Case& a_case, const field::History& history) {
+  field::Evidence evidence = field::evidence_of(a_case.problem, a_case.readings, history);
+  const field::Plant plant(a_case.problem, history.calibration);
+  field::diagnose(evidence, plant, a_case.readings.instruments);
+  field::ask(evidence, plant, a_case.service, a_case.plan);
+  return evidence;
+}
+
 report::CaseName name_of(const case_io::Case& a_case) {
   return {.file = std::filesystem::path(a_case.file).filename().string(),
           .title = a_case.title,
@@ -159,7 +168,7 @@ int run_field(const Call& call, Streams streams) {
   try {
     const field::History history = history_of(call, a_case, streams);
     if (call.value("csv") == "-") return history.days.empty() ? no_result : done;
-    const auto result = field::analyse(field::evidence_of(a_case.problem, a_case.readings, history));
+    const auto result = field::analyse(evidence_of(a_case, history));
     const auto about = name_of(a_case);
     deliver(call,
             call.has("json") ? report::json(about, result, &history) + "\n"

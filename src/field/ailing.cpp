@@ -60,9 +60,32 @@ double shown(double truth, const Part& part) {
   return is_relative(*part.channel) ? truth * (1.0 + part.magnitude) : truth + part.magnitude;
 }
 
+/// The flow that makes a drop.
+Channel flow_of(const Plant& plant, Channel drop) {
+  const bool is_hot = plant.prepared.shell_side_is_hot() == (drop == Channel::shell_dp);
+  return is_hot ? Channel::hot_flow : Channel::cold_flow;
+}
+
 double uncertainty_unread(const Channels& predicted, Channel channel) {
   const ModelError error;
   return is_drop(channel) ? error.drop * predicted[index_of(channel)] : error.temperature;
+}
+
+/// Mean of some days; their variance where they are enough to tell it.
+struct Sample {
+  double mean = nothing, variance = 0;
+};
+
+Sample sample_of(const std::vector<double>& values) {
+  constexpr std::size_t enough = 5;
+  Sample sample;
+  if (values.empty()) return sample;
+  double sum = 0.0, squares = 0.0;
+  for (const double v : values) sum += v;
+  sample.mean = sum / static_cast<double>(values.size());
+  for (const double v : values) squares += std::pow(v - sample.mean, 2);
+  if (values.size() >= enough) sample.variance = squares / static_cast<double>(values.size() - 1);
+  return sample;
 }
 
 }  // namespace
@@ -107,12 +130,28 @@ std::optional<Channels> predict(const Plant& plant, const Channels& reading, dou
   return result;
 }
 
+/// Misses made independent and of unit variance: the square root of the inverse of the
+/// covariance I + qq', q the shared error over the scatter.
+template <class Misses>
+void add_independent(const Misses& misses, std::vector<double>& result) {
+  double square = 0.0, along = 0.0;
+  for (const auto& miss : misses) {
+    const double q = miss.shared / miss.scatter;
+    square += q * q;
+    along += q * miss.value / miss.scatter;
+  }
+  const double share = square > 0.0 ? (1.0 - 1.0 / std::sqrt(1.0 + square)) * along / square : 0.0;
+  for (const auto& miss : misses)
+    result.push_back(miss.value / miss.scatter - share * miss.shared / miss.scatter);
+}
+
 Comparison::Comparison(const Plant& plant, std::span<const Observed> before, std::span<const Observed> after,
                        double fouling_before)
     : plant_(&plant), fouling_before_(fouling_before) {
   for (const Observed& day : after)
     if (predict(plant, day.value, fouling_before, {})) after_.push_back(day);
-  Channels sum{}, variance{}, days{};
+  std::array<std::vector<double>, channel_count> misses, flows;
+  Channels variance{};
   for (const Observed& day : before) {
     const auto predicted = predict(plant, day.value, fouling_before, {});
     if (!predicted) continue;
@@ -121,15 +160,19 @@ Comparison::Comparison(const Plant& plant, std::span<const Observed> before, std
       const double scale = is_drop(channel) ? (*predicted)[i] : 1.0;
       const double miss = is_drop(channel) ? day.value[i] / scale : day.value[i] - (*predicted)[i];
       if (!std::isfinite(miss)) continue;
-      sum[i] += miss;
-      variance[i] += std::pow(day.standard_uncertainty[i] / scale, 2);
-      days[i] += 1.0;
+      misses[i].push_back(miss);
+      if (is_drop(channel)) flows[i].push_back(std::log(day.value[index_of(flow_of(plant, channel))]));
+      variance[i] += std::pow(day.scatter[i] / scale, 2);
     }
   }
   for (const Channel channel : observables) {
     const std::size_t i = index_of(channel);
-    offset_[i] = days[i] > 0.0 ? sum[i] / days[i] : nothing;
-    variance_[i] = days[i] > 0.0 ? variance[i] / (days[i] * days[i]) : nothing;
+    const Sample sample = sample_of(misses[i]);
+    const auto days = static_cast<double>(misses[i].size());
+    offset_[i] = sample.mean;
+    flow_[i] = sample_of(flows[i]).mean;
+    scatter_[i] = sample.variance;
+    variance_[i] = std::max(variance[i] / days, sample.variance) / days;
   }
   if (const auto all = residuals({})) count_ = static_cast<int>(all->size());
 }
@@ -149,22 +192,55 @@ bool Comparison::is_observed(Channel channel) const {
          std::ranges::any_of(after_, [i](const Observed& day) { return std::isfinite(day.value[i]); });
 }
 
-std::optional<std::vector<double>> Comparison::residuals(std::span<const Part> parts) const {
-  std::vector<double> result;
+/// Standard uncertainty of a prediction that is alike on all days of the same flow.
+double Comparison::model_spread(const Observed& day, Channel channel) const {
+  const std::size_t i = index_of(channel);
+  const double scale = is_drop(channel) ? day.value[i] : 1.0;
+  double exponent = 0.0;
+  if (is_drop(channel))
+    exponent =
+        ModelError{}.drop_exponent * (std::log(day.value[index_of(flow_of(*plant_, channel))]) - flow_[i]);
+  return std::sqrt(std::pow(day.shared[i], 2) + (variance_[i] + exponent * exponent) * scale * scale);
+}
+
+std::optional<Comparison::Misses> Comparison::misses(std::span<const Part> parts) const {
+  Misses result;
   for (const Observed& day : after_) {
     const auto predicted = predict(*plant_, day.value, fouling_before_, parts);
     if (!predicted) return {};
     const Channels expected = carried_over(*predicted);
-    for (const Channel channel : observables) {
-      const std::size_t i = index_of(channel);
+    for (std::size_t k = 0; k < observables.size(); ++k) {
+      const std::size_t i = index_of(observables[k]);
       if (!std::isfinite(day.value[i]) || !std::isfinite(expected[i])) continue;
-      const double scale = is_drop(channel) ? (*predicted)[i] : 1.0;
-      const double spread =
-          std::sqrt(std::pow(day.standard_uncertainty[i], 2) + variance_[i] * scale * scale);
-      result.push_back((day.value[i] - expected[i]) / spread);
+      const double scale = is_drop(observables[k]) ? day.value[i] : 1.0;
+      result[k].push_back({day.value[i] - expected[i],
+                           std::max(day.scatter[i], std::sqrt(scatter_[i]) * scale),
+                           model_spread(day, observables[k])});
     }
   }
   return result;
+}
+
+std::optional<std::vector<double>> Comparison::residuals(std::span<const Part> parts) const {
+  const auto all = misses(parts);
+  if (!all) return {};
+  std::vector<double> result;
+  for (const auto& of_channel : *all) add_independent(of_channel, result);
+  return result;
+}
+
+void Comparison::widen(std::span<const Part> parts) {
+  const auto all = misses(parts);
+  if (!all) return;
+  for (std::size_t k = 0; k < observables.size(); ++k) {
+    const std::size_t i = index_of(observables[k]);
+    std::vector<double> values;
+    for (const Miss& miss : (*all)[k]) values.push_back(miss.value);
+    double scale = 1.0;
+    if (is_drop(observables[k])) scale = after_.back().value[i];
+    if (std::isfinite(scale))
+      scatter_[i] = std::max(scatter_[i], sample_of(values).variance / (scale * scale));
+  }
 }
 
 std::optional<Channels> Comparison::last_day(std::span<const Part> parts) const {
@@ -179,7 +255,9 @@ std::optional<Channels> Comparison::last_day(std::span<const Part> parts) const 
 
 Channels Comparison::last_uncertainty() const {
   const Observed& day = after_.back();
-  Channels result = day.standard_uncertainty;
+  Channels result{};
+  for (const Channel channel : observables)
+    value(result, channel) = std::hypot(day.scatter[index_of(channel)], model_spread(day, channel));
   const auto predicted = predict(*plant_, day.value, fouling_before_, {});
   for (const Channel channel : observables)
     if (!is_observed(channel) && predicted) value(result, channel) = uncertainty_unread(*predicted, channel);

@@ -31,7 +31,12 @@ class Comparison {
   double fouling_before() const { return fouling_before_; }
   bool is_observed(Channel channel) const;
 
-  /// Residuals in standard uncertainties; empty where the parts cannot be.
+  /// Takes the days after for as scattered as they are about this explanation, each channel
+  /// about its own mean: a mean that is off stays a reason against it.
+  void widen(std::span<const Part> parts);
+
+  /// Residuals that are independent and of unit variance where the parts are right; empty where
+  /// they cannot be.
   std::optional<std::vector<double>> residuals(std::span<const Part> parts) const;
 
   /// Predicted observables of the last day, and what they are uncertain by (2 % or 0.1 K where not read).
@@ -39,12 +44,21 @@ class Comparison {
   Channels last_uncertainty() const;
 
  private:
+  struct Miss {
+    double value, scatter, shared;  ///< observed - expected; standard uncertainties
+  };
+  using Misses = std::array<std::vector<Miss>, observables.size()>;
+  std::optional<Misses> misses(std::span<const Part> parts) const;
   Channels carried_over(const Channels& predicted) const;
+  double model_spread(const Observed& day, Channel channel) const;
 
   const Plant* plant_;
   std::vector<Observed> after_;
   double fouling_before_;
-  Channels offset_{}, variance_{};  ///< of the days before: [K] or ratio; of their mean
+  Channels flow_{};      ///< mean logarithm of the flow that makes a drop, before
+  Channels offset_{};    ///< of the days before from the model: [K] or ratio
+  Channels variance_{};  ///< of their mean
+  Channels scatter_{};   ///< variance of one day, as the days show it; 0 where they are few
   int count_ = 0;
 };
 

@@ -10,6 +10,10 @@ namespace dutygauge::field {
 namespace {
 
 constexpr double z95 = 2.0;  // as for all expanded uncertainties
+// Share of the variance of the instruments' constant errors that is left in a difference: 1 - r, with r = 0.9
+// at similar flows.
+constexpr double left_of_constant = 0.1;
+constexpr double near = 10.0;  // [d] that make the films of a day
 
 double or_zero(const std::vector<double>& values) {
   return values.empty() ? 0.0 : median_of(values);
@@ -56,7 +60,26 @@ std::array<double, 3> slopes_of(const Law& law, F&& something) {
   return slopes;
 }
 
-std::optional<FoulingNow> fouling_now(const Cycles& cycles, const Evidence& evidence, double systematic) {
+/// What the films' own error, a share of 1/u_clean, leaves in a change between two days: that share of what
+/// 1/u_clean itself changed with flows and temperatures, or of its spread in between.
+double film_in_change(const Days& days, const FoulingNow& now, double end, double film_uncertainty) {
+  std::vector<double> all, first, last;
+  for (const Day& day : days) {
+    const double resistance = 1.0 / day.apparent.u_clean;
+    if (!std::isfinite(resistance) || day.day < now.since || day.day > end) continue;
+    all.push_back(resistance);
+    if (day.day < now.since + near) first.push_back(resistance);
+    if (day.day > end - near) last.push_back(resistance);
+  }
+  if (first.empty() || last.empty()) return film_uncertainty;
+  const double middle = median_of(all);
+  std::vector<double> distances;
+  for (const double resistance : all) distances.push_back(std::abs(resistance - middle));
+  const double moved = std::max(std::abs(median_of(last) - median_of(first)), 1.4826 * median_of(distances));
+  return film_uncertainty * std::min(moved / middle, 1.0);
+}
+
+std::optional<FoulingNow> fouling_now(const Cycles& cycles, const Days& days, const Evidence& evidence) {
   if (cycles.empty() || !cycles.back().choice) return {};
   const Cycle& cycle = cycles.back();
   const double begin = cycle.points.front().time, end = cycle.points.back().time;
@@ -66,11 +89,13 @@ std::optional<FoulingNow> fouling_now(const Cycles& cycles, const Evidence& evid
   const double level = variance(fit, slopes_of(law, [end](const Law& l) { return l.at(end); }));
   const double change = variance(fit, slopes_of(law, [=](const Law& l) { return l.at(end) - l.at(begin); }));
   const double rate = variance(fit, slopes_of(law, [end](const Law& l) { return l.rate_at(end); }));
-  const double constant = evidence.calibrated ? 0.0 : systematic * systematic;
+  const double constant = std::pow(systematic_of(days), 2), film = evidence.film_uncertainty;
   now.now = law.at(end);
-  now.u95_level = z95 * std::sqrt(level + constant + evidence.film_uncertainty * evidence.film_uncertainty);
+  now.u95_level =
+      z95 * std::sqrt(level + (evidence.calibrated ? left_of_constant : 1.0) * constant + film * film);
   now.change = law.at(end) - law.at(begin);
-  now.u95_change = z95 * std::sqrt(change);
+  now.u95_change = z95 * std::sqrt(change + left_of_constant * constant +
+                                   std::pow(film_in_change(days, now, end, film), 2));
   now.rate = law.rate_at(end);
   now.rate_low = now.rate - z95 * std::sqrt(rate);
   now.rate_high = now.rate + z95 * std::sqrt(rate);
@@ -113,10 +138,10 @@ Outcome outcome_of(const Hypothesis& hypothesis, const Evidence& evidence, const
   Outcome outcome{.name = hypothesis.name};
   const auto cycles = cycles_of(fouling_of(hypothesis.days), events);
   const double systematic = systematic_of(hypothesis.days);
-  outcome.fouling = fouling_now(cycles, evidence, systematic);
+  outcome.fouling = fouling_now(cycles, hypothesis.days, evidence);
   if (evidence.allowed) {
     // The films are in both the level and what is allowed, and cancel; the instruments do not.
-    const double constant = evidence.calibrated ? 0.0 : systematic;
+    const double constant = systematic * std::sqrt(evidence.calibrated ? left_of_constant : 1.0);
     const Allowed allowed{evidence.allowed->fouling,
                           std::hypot(evidence.allowed->standard_uncertainty, constant)};
     outcome.forecast = forecast(cycles, allowed);
@@ -131,6 +156,23 @@ std::vector<Suspicion> suspicions_of(const std::vector<Doubt>& suspects) {
   return suspicions;
 }
 
+bool is_of_instruments(const Event& event) {
+  return event.what == What::sensor_drift || (event.what == What::sensor_shift && event.closure);
+}
+
+/// What happened: to the unit by the days used, to its instruments by the days as they were read.
+Events all_events(const Events& used, const Evidence& evidence) {
+  if (evidence.as_read.empty()) return used;
+  Events events;
+  for (const Event& event :
+       events_of(evidence.as_read, evidence.drop_laws, evidence.logged, suspicions_of(evidence.suspects)))
+    if (is_of_instruments(event)) events.push_back(event);
+  for (const Event& event : used)
+    if (event.what != What::sensor_shift && event.what != What::sensor_drift) events.push_back(event);
+  std::ranges::stable_sort(events, {}, &Event::at);
+  return events;
+}
+
 /// The advice of all hypotheses, where they agree; of the used one, where nothing is in doubt.
 void conclude(FieldResult& result) {
   const Decision& used = result.used().decision;
@@ -138,7 +180,9 @@ void conclude(FieldResult& result) {
   result.why = used.why;
   const auto same = [&used](const Outcome& outcome) { return outcome.decision.advice == used.advice; };
   if (result.outcomes.size() > 1) result.same_either_way = std::ranges::all_of(result.outcomes, same);
-  const bool doubt = result.closure.verdict == "does not close" || result.outcomes.size() > 1;
+  // Where the instruments at fault are named and left out the rest may be believed.
+  const bool named = !result.suspects.empty() && result.outcomes.size() == 1;
+  const bool doubt = (result.closure.verdict == "does not close" && !named) || result.outcomes.size() > 1;
   if (!doubt || result.same_either_way.value_or(false)) return;
   result.advice = Advice::settle_first;
   result.why = result.outcomes.size() > 1 ? "the advice depends on which instrument is right"
@@ -148,14 +192,18 @@ void conclude(FieldResult& result) {
 }  // namespace
 
 Closure closure_of(const Days& days) {
-  std::vector<double> values, uncertainties;
+  std::vector<double> values, uncertainties, moves;
   for (const Day& day : days)
     if (std::isfinite(day.apparent.closure) && std::isfinite(day.apparent.closure_uncertainty)) {
+      const double per_reading = std::sqrt(0.5 * std::max(day.count, 1));
+      if (!values.empty()) moves.push_back(std::abs(day.apparent.closure - values.back()) * per_reading);
       values.push_back(day.apparent.closure);
       uncertainties.push_back(day.apparent.closure_uncertainty);
     }
   if (values.empty()) return {.verdict = "not tested: a flow is missing"};
-  const double median = median_of(values), u = median_of(uncertainties);
+  // A median of many days has lost the scatter of the readings; their constant errors stay.
+  const double median = median_of(values), both = median_of(uncertainties), scatter = 1.4826 * or_zero(moves);
+  const double u = std::sqrt(std::max(both * both - scatter * scatter, 0.25 * both * both));
   Closure closure{.median = median, .u95 = z95 * u};
   const double size = std::abs(median);
   closure.verdict = size <= u         ? "closes"
@@ -165,33 +213,26 @@ Closure closure_of(const Days& days) {
   return closure;
 }
 
-std::string_view name_of(Channel channel) {
-  return name(channel);
-}
-
 FieldResult analyse(const Evidence& evidence) {
   if (evidence.hypotheses.empty()) throw std::invalid_argument("field::analyse: no hypothesis");
   const Days& days = evidence.hypotheses.front().days;
-  FieldResult result{
-      .start = evidence.start,
-      .rows = evidence.rows,
-      .closure = closure_of(days),
-      .events = events_of(days, evidence.drop_laws, evidence.logged, suspicions_of(evidence.suspects)),
-      .suspects = evidence.suspects,
-      .causes = evidence.causes,
-      .allowed = evidence.allowed,
-      .margins = evidence.margins,
-      .plan = evidence.plan,
-      .outcomes = {},
-      .days = days,
-      .ranges = evidence.ranges};
+  FieldResult result{.start = evidence.start,
+                     .rows = evidence.rows,
+                     .closure = closure_of(evidence.as_read.empty() ? days : evidence.as_read),
+                     .suspects = evidence.suspects,
+                     .causes = evidence.causes,
+                     .allowed = evidence.allowed,
+                     .margins = evidence.margins,
+                     .plan = evidence.plan,
+                     .outcomes = {},
+                     .days = days,
+                     .ranges = evidence.ranges};
   std::ranges::stable_sort(result.causes, std::ranges::greater{}, &WeighedCause::weight);
   for (const Hypothesis& hypothesis : evidence.hypotheses) {
     // What stepped under one hypothesis may not have under another.
-    const Events events = &hypothesis == &evidence.hypotheses.front()
-                              ? result.events
-                              : events_of(hypothesis.days, evidence.drop_laws, evidence.logged,
-                                          suspicions_of(evidence.suspects));
+    const Events events =
+        events_of(hypothesis.days, evidence.drop_laws, evidence.logged, suspicions_of(evidence.suspects));
+    if (result.outcomes.empty()) result.events = all_events(events, evidence);
     result.outcomes.push_back(outcome_of(hypothesis, evidence, events, result.causes));
   }
   conclude(result);

@@ -64,8 +64,8 @@ struct Consistent {
 };
 
 Consistent move_outlets(const Plant& plant, const Balance& b, double duty) {
-  Consistent c{b.hot_out + (b.hot_duty - duty) / b.hot_capacity_rate(),
-               b.cold_out + (duty - b.cold_duty) / b.cold_capacity_rate(), 0.0, 0.0};
+  Consistent c{b.hot_out + (1.0 - duty / b.hot_duty) / b.hot_out_slope,
+               b.cold_out + (duty / b.cold_duty - 1.0) / b.cold_out_slope, 0.0, 0.0};
   const auto heat = [](const rating::Stream& stream, double warm, double cool) {
     return fluids::enthalpy(stream.fluid, warm, stream.inlet_pressure) -
            fluids::enthalpy(stream.fluid, cool, stream.inlet_pressure);
@@ -119,12 +119,20 @@ struct Changes {
 /// What they do to the apparent fouling, to first order, weights and walls held.
 double fouling_change(const Inversion& at, const Changes& d) {
   const Balance& b = at.balance;
-  const double hot_rate = d.hot_flow + d.hot_heat_capacity, cold_rate = d.cold_flow + d.cold_heat_capacity;
-  const double duty = at.weighted.hot_share * (hot_rate + (d.hot_in - d.hot_out) / b.hot_change()) +
-                      at.weighted.cold_share * (cold_rate + (d.cold_out - d.cold_in) / b.cold_change());
+  const double hot_gain = b.hot_in_slope * d.hot_in, cold_loss = b.cold_in_slope * d.cold_in;
+  const double duty =
+      at.weighted.hot_share * (d.hot_flow + d.hot_heat_capacity + hot_gain - b.hot_out_slope * d.hot_out) +
+      at.weighted.cold_share *
+          (d.cold_flow + d.cold_heat_capacity + b.cold_out_slope * d.cold_out - cold_loss);
   const double span = (d.hot_in - d.cold_in) / (b.hot_in - b.cold_in);
-  const double hot_mean = d.hot_in - 0.5 * (b.hot_in - at.ends.hot_out) * (duty - hot_rate);
-  const double cold_mean = d.cold_in + 0.5 * (at.ends.cold_out - b.cold_in) * (duty - cold_rate);
+  // The outlets that carry the duty, and with them the capacity rates and means.
+  const double of_hot = at.weighted.duty / b.hot_duty, of_cold = at.weighted.duty / b.cold_duty;
+  const double hot_out = (hot_gain + of_hot * (d.hot_flow + d.hot_heat_capacity - duty)) / b.hot_out_slope;
+  const double cold_out =
+      (cold_loss + of_cold * (duty - d.cold_flow - d.cold_heat_capacity)) / b.cold_out_slope;
+  const double hot_rate = duty - (d.hot_in - hot_out) / (b.hot_in - at.ends.hot_out);
+  const double cold_rate = duty - (cold_out - d.cold_in) / (at.ends.cold_out - b.cold_in);
+  const double hot_mean = 0.5 * (d.hot_in + hot_out), cold_mean = 0.5 * (d.cold_in + cold_out);
   const bool shell_is_hot = at.plant->prepared.shell_side_is_hot();
   const auto [tube_rate, shell_rate] =
       shell_is_hot ? std::pair{cold_rate, hot_rate} : std::pair{hot_rate, cold_rate};
@@ -189,6 +197,8 @@ std::optional<Apparent> apparent(const Plant& plant, const Instruments& instrume
   const Inversion at{&plant, b, weighted, ends, *ntu, 1.0 / u, slopes};
   const Spread fouling = propagated(plant, instruments, b, gradient_of_fouling(at));
   const double clean = plant.calibration.factor * films.sum();
+  // Flows past all bounds overflow on the way.
+  if (!std::isfinite(clean + fouling.random + fouling.systematic + hot_spread + cold_spread)) return {};
   return Apparent{.hot_duty = b.missing && is_hot(*b.missing) ? nothing : b.hot_duty,
                   .cold_duty = b.missing && !is_hot(*b.missing) ? nothing : b.cold_duty,
                   .duty = weighted.duty,

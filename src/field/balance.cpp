@@ -56,6 +56,21 @@ void find_duties(const Plant& plant, Balance& b) {
   b.cold_duty = b.cold_flow * heat_between(cold_stream(plant), b.cold_out, b.cold_in);
 }
 
+/// Heat capacity [J/kg.K] at one temperature; cheaper than the whole state.
+double heat_capacity(const rating::Stream& stream, double temperature) {
+  constexpr double step = 0.01;  // [K]
+  return heat_between(stream, temperature + step, temperature - step) / (2.0 * step);
+}
+
+void find_slopes(const Plant& plant, Balance& b) {
+  const rating::Stream &hot = hot_stream(plant), &cold = cold_stream(plant);
+  const double of_hot = b.hot_flow / b.hot_duty, of_cold = b.cold_flow / b.cold_duty;
+  b.hot_in_slope = of_hot * heat_capacity(hot, b.hot_in);
+  b.hot_out_slope = of_hot * heat_capacity(hot, b.hot_out);
+  b.cold_in_slope = of_cold * heat_capacity(cold, b.cold_in);
+  b.cold_out_slope = of_cold * heat_capacity(cold, b.cold_out);
+}
+
 bool is_possible(const Plant& plant, const Balance& b) {
   return b.hot_flow > 0.0 && b.cold_flow > 0.0 && b.hot_in > b.cold_in && b.hot_duty > 0.0 &&
          b.cold_duty > 0.0 && b.hot_change() > 0.0 && b.cold_change() > 0.0 && std::isfinite(b.hot_duty) &&
@@ -84,6 +99,11 @@ const fluids::TemperatureRange& cold_range(const Plant& plant) {
   return plant.prepared.shell_side_is_hot() ? plant.prepared.tube_range() : plant.prepared.shell_range();
 }
 
+double drop_exponent(const Plant& plant, Channel flow) {
+  const rating::Stream& stream = flow == Channel::hot_flow ? hot_stream(plant) : cold_stream(plant);
+  return stream.drop_law ? stream.drop_law->flow_exponent : 1.8;
+}
+
 Spread spread_of(const Instrument& instrument, double reading) {
   const double scale = instrument.relative ? std::abs(reading) : 1.0;
   return {instrument.random * scale, instrument.systematic * scale};
@@ -103,14 +123,19 @@ std::optional<Balance> balance_of(const Plant& plant, const Channels& reading) {
   if (b.missing) {
     infer(plant, b);
     find_duties(plant, b);
+    // A temperature past the end of its fluid's range comes back as that end.
+    if (!(std::abs(b.hot_duty - b.cold_duty) < 1e-6 * std::abs(b.hot_duty))) return {};
   }
   if (!is_possible(plant, b)) return {};
+  find_slopes(plant, b);
   return b;
 }
 
 Gradient gradient_of_closure(const Balance& b) {
-  const double hot = 1.0 / b.hot_change(), cold = 1.0 / b.cold_change();
-  return {{1.0 / b.hot_flow, -1.0 / b.cold_flow, hot, -hot, cold, -cold}, 1.0, -1.0};
+  return {{1.0 / b.hot_flow, -1.0 / b.cold_flow, b.hot_in_slope, -b.hot_out_slope, b.cold_in_slope,
+           -b.cold_out_slope},
+          1.0,
+          -1.0};
 }
 
 Spread propagated(const Plant& plant, const Instruments& instruments, const Balance& b,

@@ -18,6 +18,9 @@ const rating::Stream& cold_stream(const Plant& plant);
 const fluids::TemperatureRange& hot_range(const Plant& plant);
 const fluids::TemperatureRange& cold_range(const Plant& plant);
 
+/// How the drop of a flow's own side goes with it: the exponent of its law, else 1.8.
+double drop_exponent(const Plant& plant, Channel flow);
+
 /// Standard uncertainties of a channel at its reading, absolute.
 struct Spread {
   double random, systematic;
@@ -28,13 +31,13 @@ Spread spread_of(const Instrument& instrument, double reading);
 /// All six flows and temperatures, at most one of them from the balance.
 struct Balance {
   double hot_flow, cold_flow, hot_in, hot_out, cold_in, cold_out;
-  double hot_duty, cold_duty;      ///< [W]
+  double hot_duty, cold_duty;  ///< [W]
+  /// Relative change of a duty with the temperature at an end, both counted positive [1/K].
+  double hot_in_slope, hot_out_slope, cold_in_slope, cold_out_slope;
   std::optional<Channel> missing;  ///< the one the balance gave
 
   double hot_change() const { return hot_in - hot_out; }
   double cold_change() const { return cold_out - cold_in; }
-  double hot_capacity_rate() const { return hot_duty / hot_change(); }
-  double cold_capacity_rate() const { return cold_duty / cold_change(); }
 };
 
 /// Empty where more than one is missing, the inlets or a stream's change have the wrong

@@ -8,6 +8,7 @@
 #include <limits>
 
 #include "ailing.hpp"
+#include "balance.hpp"
 
 namespace dutygauge::field {
 namespace {
@@ -110,6 +111,17 @@ void weigh(std::vector<Explanation>& list, double best) {
   for (Explanation& e : list) e.weight /= sum;
 }
 
+std::vector<Explanation> ranked_singles(const Comparison& days) {
+  std::vector<Explanation> singles = {explained(days, {})};
+  for (const Part& part : single_causes(days)) {
+    Explanation e = explained(days, {fitted(days, part)});
+    if (std::isfinite(e.chi_square)) singles.push_back(std::move(e));
+  }
+  sort_by_bic(singles);
+  weigh(singles, singles.front().bic);
+  return singles;
+}
+
 /// Gauss-Newton with damping inside the limits, from the magnitudes given.
 std::vector<Part> fitted_together(const Comparison& days, std::vector<Part> parts) {
   const auto count = static_cast<Eigen::Index>(parts.size());
@@ -149,7 +161,7 @@ bool is_physical(const Part& part) {
   return part.cause != Cause::none && part.cause != Cause::instrument;
 }
 
-/// Pairs of a physical cause with another cause, each from either single fit.
+/// Pairs of a physical cause with another cause, from the better of the two alone.
 std::vector<Explanation> pairs_of(const Comparison& days, const std::vector<Explanation>& singles) {
   std::vector<Part> parts;
   for (const Explanation& e : singles)
@@ -158,14 +170,10 @@ std::vector<Explanation> pairs_of(const Comparison& days, const std::vector<Expl
   for (std::size_t i = 0; i < parts.size(); ++i)
     for (std::size_t j = i + 1; j < parts.size(); ++j) {
       if (!is_physical(parts[i]) && !is_physical(parts[j])) continue;
-      std::optional<Explanation> best;
-      for (const auto& [first, second] : {std::pair{1.0, 0.0}, std::pair{0.0, 1.0}, std::pair{0.5, 0.5}}) {
-        std::vector<Part> start = {parts[i], parts[j]};
-        start[0].magnitude *= first, start[1].magnitude *= second;
-        const Explanation e = explained(days, fitted_together(days, start));
-        if (!best || e.chi_square < best->chi_square) best = e;
-      }
-      if (std::isfinite(best->chi_square)) pairs.push_back(*best);
+      // The list is sorted: the first of the two explains more by itself.
+      const Part second{.cause = parts[j].cause, .channel = parts[j].channel};
+      Explanation e = explained(days, fitted_together(days, {parts[i], second}));
+      if (std::isfinite(e.chi_square)) pairs.push_back(std::move(e));
     }
   sort_by_bic(pairs);
   return pairs;
@@ -203,20 +211,30 @@ std::optional<Separator> separator_of(const Comparison& days, const Explanation&
   return best;
 }
 
+/// A flow or inlet that is missing from the balance; that side's outlet has then been used up.
+Day filled(const Plant& plant, const Instruments& instruments, Day day) {
+  for (const Channel channel : {Channel::hot_flow, Channel::cold_flow, Channel::hot_in, Channel::cold_in}) {
+    if (!std::isnan(day.value[index_of(channel)])) continue;
+    const auto value = inferred(plant, instruments, day.value, channel);
+    if (!value) return day;
+    day.value[index_of(channel)] = value->value;
+    day.value[index_of(is_hot(channel) ? Channel::hot_out : Channel::cold_out)] =
+        std::numeric_limits<double>::quiet_NaN();
+    return day;
+  }
+  return day;
+}
+
 }  // namespace
 
 std::optional<Ranking> rank_causes(const Plant& plant, std::span<const Observed> before,
                                    std::span<const Observed> after, double fouling_before) {
-  const Comparison days(plant, before, after, fouling_before);
+  Comparison days(plant, before, after, fouling_before);
   if (days.count() == 0) return {};
+  // What is left about the best explanation tells how much days differ by themselves.
+  days.widen(ranked_singles(days).front().parts);
   Ranking ranking;
-  ranking.singles.push_back(explained(days, {}));
-  for (const Part& part : single_causes(days)) {
-    Explanation e = explained(days, {fitted(days, part)});
-    if (std::isfinite(e.chi_square)) ranking.singles.push_back(std::move(e));
-  }
-  sort_by_bic(ranking.singles);
-  weigh(ranking.singles, ranking.singles.front().bic);
+  ranking.singles = ranked_singles(days);
   const std::vector<Explanation>* ranked = &ranking.singles;
   const bool explains =
       std::ranges::any_of(ranking.singles, [](const Explanation& e) { return e.p_value > acceptable; });
@@ -235,7 +253,7 @@ std::optional<Ranking> rank_causes(const Plant& plant, std::span<const Observed>
 }
 
 Observed observed(const Day& day, const Instruments& instruments, const ModelError& error) {
-  Observed result{day.value, {}};
+  Observed result{day.value, {}, {}};
   // A median scatters by a quarter more than a mean.
   const double fewer = std::sqrt(1.57 / std::max(1, day.count));
   for (std::size_t i = 0; i < channel_count; ++i) {
@@ -244,7 +262,8 @@ Observed observed(const Day& day, const Instruments& instruments, const ModelErr
     const bool is_drop = channel == Channel::tube_dp || channel == Channel::shell_dp;
     const double scale = instrument.relative ? std::abs(day.value[i]) : 1.0;
     const double model = is_drop ? error.drop * day.value[i] : error.temperature;
-    result.standard_uncertainty[i] = std::hypot(instrument.random * fewer * scale, model);
+    result.scatter[i] = instrument.random * fewer * scale;
+    result.shared[i] = model;
   }
   return result;
 }
@@ -254,10 +273,10 @@ std::optional<Ranking> rank_over_days(const Plant& plant, const Instruments& ins
   std::vector<double> fouling;
   std::vector<Observed> first, second;
   for (const Day& day : before) {
-    first.push_back(observed(day, instruments));
+    first.push_back(observed(filled(plant, instruments, day), instruments));
     fouling.push_back(day.apparent.fouling);
   }
-  for (const Day& day : after) second.push_back(observed(day, instruments));
+  for (const Day& day : after) second.push_back(observed(filled(plant, instruments, day), instruments));
   std::erase_if(fouling, [](double f) { return !std::isfinite(f); });
   if (fouling.empty()) return {};
   const auto middle = fouling.begin() + static_cast<std::ptrdiff_t>(fouling.size() / 2);

@@ -11,15 +11,22 @@ namespace {
 constexpr std::size_t enough_points = 15;  // of a cycle that stands on its own
 constexpr std::size_t levels = 5;          // days that make a level
 
-std::vector<double> cuts_of(const Events& events) {
-  std::vector<double> cuts;
+/// What ends a cycle, or moves its level.
+struct Break {
+  double at = 0;
+  double jump = 0;
+  bool cleaning = false;
+};
+
+std::vector<Break> breaks_of(const Events& events) {
+  std::vector<Break> breaks;
   for (const Event& event : events) {
-    const bool moved = event.what != What::outage && event.fouling.has_value();
-    const bool cleaned = event.what == What::cleaning && event.logged;
-    if (moved || cleaned) cuts.push_back(event.at);
+    const bool cleaning = event.what == What::cleaning && (event.logged || event.seen);
+    if (cleaning || (event.what != What::outage && event.fouling))
+      breaks.push_back({event.at, event.fouling.value_or(0.0), cleaning});
   }
-  std::ranges::sort(cuts);
-  return cuts;
+  std::ranges::stable_sort(breaks, {}, &Break::at);
+  return breaks;
 }
 
 /// Where a cycle begins and ends, by its law where it has one.
@@ -52,12 +59,17 @@ Trend borrowed(const Cycle& before, const Trend& present) {
 
 Cycles cycles_of(const Trend& fouling, const Events& events) {
   Cycles cycles;
-  const auto cuts = cuts_of(events);
+  const auto breaks = breaks_of(events);
   std::size_t next = 0;
   for (const TrendPoint& point : fouling) {
-    bool cut = cycles.empty();
-    for (; next < cuts.size() && point.time > cuts[next]; ++next) cut = true;
-    if (cut) cycles.emplace_back();
+    if (cycles.empty()) cycles.emplace_back();
+    for (; next < breaks.size() && point.time > breaks[next].at; ++next) {
+      if (cycles.back().points.empty()) continue;
+      if (breaks[next].cleaning)
+        cycles.emplace_back();
+      else
+        for (TrendPoint& before : cycles.back().points) before.value += breaks[next].jump;
+    }
     cycles.back().points.push_back(point);
   }
   for (std::size_t i = 0; i < cycles.size(); ++i) {

@@ -134,8 +134,8 @@ Decision advise(std::vector<Option> options, std::size_t best, const Forecast& f
     options[best].recommended = false;
   } else {
     decision.advice = Advice::stop_now;
-    decision.why = forecast.lost_already ? "the service is lost, and a cleaning brings it back"
-                                         : "waiting risks the service or costs more";
+    decision.why =
+        forecast.lost_already ? "a cleaning brings it back" : "waiting risks the service or costs more";
   }
   decision.options = std::move(options);
   return decision;

@@ -11,9 +11,10 @@ namespace {
 constexpr double together = 2.0;        // days within which changes are one event
 constexpr double logged_nearby = 3.0;   // days between what was written down and what is seen
 constexpr double located_nearby = 5.0;  // days between an event and a suspicion of a channel
-constexpr double no_readings = 1.5;     // days between two used days that make an outage
+constexpr double no_readings = 2.5;     // days between two used days that make an outage
 constexpr double drift_floor = 0.015;   // change of the closure over the record that is a drift
 constexpr double clear = 4.0;           // standard errors
+constexpr int absent = 3;               // days in a row without a channel that make it absent
 
 /// Below these a step says nothing.
 double floor_of(Quantity quantity) {
@@ -27,7 +28,7 @@ double floor_of(Quantity quantity) {
       return 0.05;
     case Quantity::hot_flow:
     case Quantity::cold_flow:
-      return 0.08;
+      return 0.1;
     default:
       return 2.0;
   }
@@ -96,6 +97,7 @@ struct Group {
   bool outage = false, outage_logged = false;
   double outage_at = 0;
   std::optional<double> cleaning_logged = {};
+  std::optional<Channel> came_or_went = {};  ///< a channel that was absent before or after
 
   bool has(Quantity quantity) const { return steps.contains(quantity); }
   double jump(Quantity quantity) const {
@@ -162,6 +164,24 @@ std::vector<Group> groups_of(const std::map<Quantity, Trend>& series, std::vecto
   return groups;
 }
 
+/// Where a channel goes missing for days, or comes back: the balance then infers something else.
+void add_absences(std::vector<Group>& groups, const Days& days) {
+  for (std::size_t channel = 0; channel <= index_of(Channel::cold_out); ++channel) {
+    int run = absent;
+    for (std::size_t i = 1; i < days.size(); ++i) {
+      const bool here = std::isfinite(days[i].value[channel]);
+      if (here == std::isfinite(days[i - 1].value[channel])) {
+        ++run;
+        continue;
+      }
+      const double at = 0.5 * (days[i - 1].day + days[i].day);
+      for (Group& group : groups)
+        if (run >= absent && group.near(at, together)) group.came_or_went = static_cast<Channel>(channel);
+      run = 1;
+    }
+  }
+}
+
 /// When a group happened: where the series that says most jumps; an outage's end, as work shows then.
 double time_of(const Group& group, Quantity quantity) {
   return group.outage ? group.to : group.steps.at(quantity).at;
@@ -179,6 +199,13 @@ std::optional<Channel> shifted_channel(const Group& group, const std::vector<Sus
     only = channel_of(quantity);
   }
   return only;
+}
+
+std::optional<Channel> load_channel(const Group& group) {
+  for (const Quantity quantity :
+       {Quantity::hot_flow, Quantity::cold_flow, Quantity::hot_in, Quantity::cold_in})
+    if (group.has(quantity)) return channel_of(quantity);
+  return {};
 }
 
 bool load_changed(const Group& group) {
@@ -200,18 +227,11 @@ What cause_of_rise(const Group& group) {
   return load_changed(group) ? What::load_change : What::unexplained;
 }
 
-Event event_of(const Group& group, Quantity quantity, What what) {
-  Event event{.at = time_of(group, quantity), .what = what};
+Event event_of(const Group& group, Quantity quantity, What what, std::optional<Channel> channel = {}) {
+  Event event{.at = time_of(group, quantity), .what = what, .channel = channel};
   if (group.has(Quantity::fouling)) event.fouling = group.jump(Quantity::fouling);
   if (group.has(Quantity::closure)) event.closure = group.jump(Quantity::closure);
   return event;
-}
-
-std::optional<Channel> load_channel(const Group& group) {
-  for (const Quantity quantity :
-       {Quantity::hot_flow, Quantity::cold_flow, Quantity::hot_in, Quantity::cold_in})
-    if (group.has(quantity)) return channel_of(quantity);
-  return {};
 }
 
 /// Which event a step of the closure was. A meter that shifts steps alone with the drop over its
@@ -228,13 +248,18 @@ Event closure_event(const Group& group, const std::vector<Suspicion>& suspicions
 
 std::optional<Event> fouling_event(const Group& group) {
   if (!group.has(Quantity::fouling)) return {};
+  if (group.came_or_went && !group.cleaning_logged) {
+    Event event = event_of(group, Quantity::fouling, What::sensor_shift);
+    event.channel = group.came_or_went;
+    return event;
+  }
   const bool closure = group.has(Quantity::closure);
   if (group.jump(Quantity::fouling) < 0.0) {
     // A sensor touched at an outage also lowers the fouling seen: without a drop that fell and
     // without a word in the log that is no cleaning.
     if (closure && !drop_fell(group) && !group.cleaning_logged) return {};
     if (load_changed(group) && !group.outage && !drop_fell(group) && !group.cleaning_logged)
-      return event_of(group, Quantity::fouling, What::load_change);
+      return event_of(group, Quantity::fouling, What::load_change, load_channel(group));
     return event_of(group, Quantity::fouling, What::cleaning);
   }
   if (closure) return {};
@@ -388,6 +413,7 @@ Events events_of(const Days& days, const DropLaws& laws, const std::vector<Logge
   const auto series = series_of(days, laws);
   auto groups = groups_of(series, outage_groups(days, logged));
   add_cleanings(groups, logged);
+  add_absences(groups, days);
   Events events;
   for (const Group& group : groups)
     for (const Event& event : events_of_group(group, suspicions)) events.push_back(event);

@@ -150,7 +150,8 @@ std::optional<Response> respond(const Plant& plant, const Conditions& conditions
       numerics::find_root([&](double trial) { return unit.excess(trial); }, {0.0, limit}, 1e-10 * limit);
   if (!duty) return {};
   const Response response = unit.response(*duty);
-  if (!unit.settled()) return {};
+  const double all = response.hot_out + response.cold_out + response.tube_dp + response.shell_dp;
+  if (!unit.settled() || !std::isfinite(all)) return {};
   return response;
 }
 

@@ -39,7 +39,7 @@ Json events_json(const FieldResult& result) {
   for (const field::Event& event : result.events)
     events.push_back({{"at", iso_date(result.start, event.at)},
                       {"what", name_of(event.what)},
-                      {"channel", event.channel ? Json(field::name_of(*event.channel)) : Json(nullptr)},
+                      {"channel", event.channel ? Json(field::name(*event.channel)) : Json(nullptr)},
                       {"fouling_m2K_W", or_null(event.fouling)},
                       {"closure", or_null(event.closure)},
                       {"logged", event.logged},
@@ -51,7 +51,7 @@ Json suspects_json(const FieldResult& result) {
   Json suspects = Json::array();
   for (const field::Doubt& suspect : result.suspects) {
     Json channels = Json::array();
-    for (const field::Channel channel : suspect.channels) channels.push_back(field::name_of(channel));
+    for (const field::Channel channel : suspect.channels) channels.push_back(field::name(channel));
     suspects.push_back(
         {{"channels", channels}, {"since", iso_date(result.start, suspect.since)}, {"text", suspect.text}});
   }

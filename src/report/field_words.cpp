@@ -218,7 +218,7 @@ std::vector<std::string> events_in_words(const CaseName& about, const FieldResul
   std::vector<std::string> lines;
   for (const field::Event& event : result.events) {
     std::string line = fmt::format("{} {}", spoken_date(result.start, event.at), name_of(event.what));
-    if (event.channel) line += fmt::format(", {}", field::name_of(*event.channel));
+    if (event.channel) line += fmt::format(", {}", field::name(*event.channel));
     if (event.fouling)
       line += fmt::format(", fouling {}{}", *event.fouling > 0.0 ? "+" : "",
                           resistance(*event.fouling, about.display));
@@ -233,7 +233,7 @@ std::vector<std::string> next_of(const FieldResult& result) {
   std::vector<std::string> tasks;
   for (const field::Doubt& suspect : result.suspects) {
     std::vector<std::string> names;
-    for (const field::Channel channel : suspect.channels) names.emplace_back(field::name_of(channel));
+    for (const field::Channel channel : suspect.channels) names.emplace_back(field::name(channel));
     if (!names.empty()) tasks.push_back(fmt::format("check {} against another instrument", listed(names)));
   }
   const auto& closure = result.closure;

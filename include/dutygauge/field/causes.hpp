@@ -43,7 +43,7 @@ struct Explanation {
 /// What may be said of a ranking.
 enum class Ranked : std::uint8_t {
   no_change,      ///< no change explains the readings, and nothing explains them better
-  most_likely,    ///< the first has a weight above 0.9 and an acceptable chi-square
+  most_likely,    ///< the first of `open` has a weight above 0.9 and an acceptable chi-square
   not_separable,  ///< several remain: `Ranking::open`
   unexplained,    ///< no single cause is acceptable, and no pair either
 };
@@ -63,30 +63,36 @@ struct Ranking {
   std::optional<Separator> separator;
 };
 
-/// Readings with the standard uncertainty of their change, in which the model's own error
-/// belongs. Missing: NaN. Flows and inlets are taken as they read.
+/// Readings and the standard uncertainties of their change, absolute: what scatters from day
+/// to day, and what is alike on all days after, such as the model's own error. Missing: NaN.
+/// Flows and inlets are taken as they read.
 struct Observed {
-  Channels value{}, standard_uncertainty{};
+  Channels value{}, scatter{}, shared{};
 };
 
-/// Error of a model's changes at changed flows and temperatures: 0.1 K, 2 % of a drop.
+/// Error of a model's changes: of outlets, of a drop, and of a drop's exponent on the flow,
+/// which counts as the flow differs from that of the days before.
 struct ModelError {
-  double temperature = 0.1, drop = 0.02;
+  double temperature = 0.1;    ///< [K]
+  double drop = 0.02;          ///< [-]
+  double drop_exponent = 0.1;  ///< [-]
 };
 
-/// A day's medians with what they scatter by and the model's error.
+/// A day's medians with their scatter and the model's error.
 Observed observed(const Day& day, const Instruments& instruments, const ModelError& error = {});
 
 /// Ranks causes of the change from `before` to `after` by BIC (Schwarz 1978). Each cause is fitted to the
 /// outlets and drops of all days after; what the model with `fouling_before` in the tubes
-/// misses before is carried over: temperatures by difference, drops by ratio. Magnitudes
-/// stay where they can be: shares 0 to 0.7, a deposit at most as much less as there was.
-/// With several days at several flows a deposit, the same for all, parts from a by-pass.
-/// Empty where `before` or `after` hold no day that can be predicted.
+/// misses before is carried over: temperatures by difference, drops by ratio.
+/// Days are no surer than they scatter about the best explanation, where they are five or more.
+/// Magnitudes stay where they can be: shares 0 to 0.7, a deposit at most as much less as there was. With
+/// several days at several flows a deposit, the same for all, parts from a by-pass. Empty where `before` or
+/// `after` hold no day that can be predicted.
 std::optional<Ranking> rank_causes(const Plant& plant, std::span<const Observed> before,
                                    std::span<const Observed> after, double fouling_before);
 
-/// The same over days, with the median apparent fouling of the days before.
+/// The same over days, with the median apparent fouling of the days before. A missing flow or
+/// inlet comes from the balance, and that side's outlet then says nothing more.
 std::optional<Ranking> rank_over_days(const Plant& plant, const Instruments& instruments,
                                       std::span<const Day> before, std::span<const Day> after);
 

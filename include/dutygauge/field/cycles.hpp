@@ -17,8 +17,9 @@ struct Cycle {
 };
 using Cycles = std::vector<Cycle>;
 
-/// Cut at cleanings that were seen or written down, and at any other step of the fouling.
-/// Every cycle has points; without any points there is no cycle.
+/// Cut at cleanings that were seen or written down. Another step of the fouling, such as that of
+/// plugged tubes or of a sensor, is taken out: what lies before it in its cycle is moved to the
+/// level after it, so that the deposit's growth goes on. Every cycle has points.
 Cycles cycles_of(const Trend& fouling, const Events& events);
 
 /// Forecast for the present cycle. While that is shorter than 15 days its level is its own and the
