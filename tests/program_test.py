@@ -173,8 +173,8 @@ class Help(InFolder):
         for name in ("cooler.yaml", "before.yaml"):
             self.write(name, starter())
         self.write("after.yaml", too_much_asked())
-        (self.folder / "before.json").write_bytes(run("rate", "--json", self.folder / "before.yaml").stdout)
         self.write("readings.csv", readings())
+        (self.folder / "before.json").write_bytes(run("rate", "--json", self.folder / "before.yaml").stdout)
         shutil.copytree(ROOT / "cases", self.folder / "cases")
         path = {**os.environ, "PATH": f"{PROGRAM.parent}:{os.environ['PATH']}"}
         self.assertIn("rate", commands())
