@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <functional>
 #include <string>
 
 #include "dutygauge/case_io.hpp"
@@ -25,8 +26,23 @@ class Unit {
         plant_(case_.problem, history_.calibration) {}
 
   /// What is said on a day. Only the screen, whose medians are those of the year, knows what came later.
-  FieldResult as_of(double day, const Planned& planned = {}) const {
+  FieldResult as_of(double day, const Planned& planned = {}) const { return said(day, planned, {}); }
+  FieldResult now() const { return as_of(1e9); }
+
+  /// With readings other than they were; what they say is found anew.
+  FieldResult with(const std::function<void(Day&)>& change) const { return said(1e9, {}, change); }
+
+  const Plant& plant() const { return plant_; }
+  const service::Service& service() const { return case_.service; }
+
+ private:
+  FieldResult said(double day, const Planned& planned, const std::function<void(Day&)>& change) const {
     History known = history_;
+    if (change)
+      for (Day& d : known.days) {
+        change(d);
+        if (const auto says = apparent(plant_, case_.readings.instruments, d.value)) d.apparent = *says;
+      }
     std::erase_if(known.days, [day](const Day& d) { return d.day > day; });
     Evidence evidence = evidence_of(case_.problem, case_.readings, known);
     std::erase_if(evidence.logged, [day](const Logged& entry) { return entry.from > day; });
@@ -34,15 +50,6 @@ class Unit {
     ask(evidence, plant_, case_.service, planned);
     return analyse(evidence);
   }
-  FieldResult now() const { return as_of(1e9); }
-
-  double allowed() const {
-    const auto fouling = allowed_fouling(plant_, case_.service);
-    REQUIRE(fouling);
-    return *fouling;
-  }
-
- private:
   case_io::Case case_;
   History history_;
   Plant plant_;
@@ -72,15 +79,21 @@ std::size_t count(const Events& events, What what) {
   return static_cast<std::size_t>(std::ranges::count(events, what, &Event::what));
 }
 
+double allowed(const Unit& unit) {
+  const auto fouling = allowed_fouling(unit.plant(), unit.service());
+  REQUIRE(fouling);
+  return *fouling;
+}
+
 }  // namespace
 
 TEST_CASE("field: what the service allows is what the simulated plant allows") {
   // rf_allowed_m2K_W; the tool has the plant's own film laws in A and B.
-  CHECK(support::relative(unit("A").allowed(), 0.00023307) < 1e-3);
-  CHECK(support::relative(unit("B").allowed(), 0.001402) < 1e-3);
+  CHECK(support::relative(allowed(unit("A")), 0.00023307) < 1e-3);
+  CHECK(support::relative(allowed(unit("B")), 0.001402) < 1e-3);
   // G's films are of other correlations, calibrated in winter and asked for in summer: the clean U there is
   // a few per cent off, which is most of 1e-5.
-  CHECK(std::abs(unit("G").allowed() - 0.00019076) < 2e-5);
+  CHECK(std::abs(allowed(unit("G")) - 0.00019076) < 2e-5);
 }
 
 TEST_CASE("field: bands from the readings hold the day on which the service was lost") {
@@ -132,7 +145,11 @@ TEST_CASE("field: unit B has an outlet that shifted, a meter that drifts, and a 
     CHECK(count(result.events, never) == 0);
   CHECK(result.used().fouling->choice.best().law.kind == LawKind::linear);
   CHECK(std::abs(result.used().fouling->now - 6.2094e-4) < 6e-5);  // final_rf_apparent
-  CHECK(std::abs(result.margins[0].margin - 0.1409) < 0.01);       // final_service_margin
+  CHECK(result.closure.verdict == "does not close");
+  CHECK(result.advice == Advice::next_stop);  // both faults are named and left out: the rest is believed
+  REQUIRE_FALSE(result.causes.empty());
+  CHECK(result.causes.front().name == "tube-side deposit");
+  CHECK(std::abs(result.margins[0].margin - 0.1409) < 0.01);  // final_service_margin
 }
 
 TEST_CASE("field: unit G hides a falling rate behind its valve") {
@@ -172,4 +189,55 @@ TEST_CASE("field: a plan with prices makes options with bills") {
   // The later stop comes after the service is lost.
   planned.next_stop = 1638316800;
   CHECK(unit("A").as_of(225, planned).advice == Advice::stop_now);
+}
+
+namespace {
+
+service::Service demanding(std::vector<service::Demand> demands) {
+  service::Service service;
+  service.demands = std::move(demands);
+  return service;
+}
+
+}  // namespace
+
+TEST_CASE("field: outlets may be asked for as well as duty, and nothing at all") {
+  const Plant& plant = unit("A").plant();
+  const double duty = 4107842.0, by_duty = allowed(unit("A"));
+  // The same demand by the outlets, heat capacities being constant: 55 degC - Q/(80 x 4180), 28 degC + Q/(110
+  // x 4180).
+  const service::Demand hot{service::Quantity::shell_side_outlet, false, 328.15 - duty / (80.0 * 4180.0)};
+  const service::Demand cold{service::Quantity::tube_side_outlet, true, 301.15 + duty / (110.0 * 4180.0)};
+  for (const auto& demand : {hot, cold})
+    CHECK(support::relative(*allowed_fouling(plant, demanding({demand})), by_duty) < 1e-5);
+  // The tightest counts; a limit that asks for no heat does not.
+  const service::Demand more{service::Quantity::duty, true, 1.05 * duty},
+      limit{service::Quantity::duty, false, duty};
+  CHECK(*allowed_fouling(plant, demanding({hot, more})) < 0.9 * by_duty);
+  CHECK_FALSE(allowed_fouling(plant, demanding({limit})));
+  CHECK_FALSE(allowed_fouling(plant, {}));
+  // What even the clean unit does not do allows nothing.
+  CHECK(*allowed_fouling(plant, demanding({{service::Quantity::duty, true, 2.0 * duty}})) == 0.0);
+}
+
+TEST_CASE("field: a balance that never closed leaves either side right") {
+  const auto result = unit("A").with([](Day& day) { day.value[index_of(Channel::hot_flow)] *= 1.2; });
+  CHECK(result.closure.verdict == "does not close");
+  REQUIRE(result.outcomes.size() == 2);
+  CHECK(result.outcomes[0].name == "the cold side is right");
+  CHECK(result.outcomes[1].name == "the hot side is right");
+  REQUIRE(result.same_either_way);
+  // The cold side is the true one here: with it the fouling is what it was.
+  CHECK(std::abs(result.outcomes[0].fouling->now - 3.2636e-4) < 1.5e-5);
+  // The other says more duty, so less fouling.
+  CHECK(result.outcomes[1].fouling->now < result.outcomes[0].fouling->now - 5e-5);
+}
+
+TEST_CASE("field: with a flow missing all year the rest still says how dirty it is") {
+  const auto result = unit("A").with([](Day& day) { day.value[index_of(Channel::hot_flow)] = std::nan(""); });
+  CHECK_FALSE(result.closure.median);
+  CHECK(result.closure.verdict == "not tested: a flow is missing");
+  REQUIRE(result.used().fouling);
+  CHECK(std::abs(result.used().fouling->now - 3.2636e-4) < 1.5e-5);
+  CHECK(result.suspects.empty());
 }
