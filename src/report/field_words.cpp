@@ -261,22 +261,20 @@ std::vector<std::string> next_of(const FieldResult& result) {
 
 Rows hypotheses_table(const CaseName& about, const FieldResult& result) {
   if (result.outcomes.size() < 2) return {};
-  Rows rows = {{""}, {"deposit today"}, {"service lost"}, {"advice"}};
+  Rows rows = {{"", "deposit today", "service lost", "advice"}};
   for (const field::Outcome& outcome : result.outcomes) {
     const bool used = &outcome == &result.outcomes.front();
-    rows[0].push_back(fmt::format("if {}", outcome.name));
-    rows[1].push_back(!outcome.fouling
-                          ? std::string("not known")
-                          : fmt::format("{} {}{}", resistance(outcome.fouling->now, about.display),
-                                        resistance_unit(about.display), used ? " (used)" : ""));
     const auto& forecast = outcome.forecast;
-    rows[2].push_back(!forecast               ? "not known"
-                      : forecast->lost.middle ? spoken_date(result.start, *forecast->lost.middle)
-                                              : "not at all");
-    rows[3].push_back(plain_words(name_of(outcome.decision.advice)));
+    rows.push_back({fmt::format("if {}{}", outcome.name, used ? " (used above)" : ""),
+                    outcome.fouling ? fmt::format("{} {}", resistance(outcome.fouling->now, about.display),
+                                                  resistance_unit(about.display))
+                                    : std::string("not known"),
+                    !forecast               ? "not known"
+                    : forecast->lost.middle ? spoken_date(result.start, *forecast->lost.middle)
+                                            : "not at all",
+                    plain_words(name_of(outcome.decision.advice))});
   }
-  rows[3].push_back(result.same_either_way.value_or(false) ? "-> SAME" : "-> NOT THE SAME");
-  for (std::size_t i = 0; i < 3; ++i) rows[i].emplace_back();
+  rows.push_back({result.same_either_way.value_or(false) ? "-> SAME" : "-> NOT THE SAME", "", "", ""});
   return rows;
 }
 
