@@ -82,7 +82,7 @@ units::Read<Variation> read_variation(const Dial& dial, std::string_view text) {
   text = text.substr(0, colon);
   Dial wanted = dial;
   const auto ends = text.starts_with("x") ? read_factors(dial, text) : read_ends(wanted, text);
-  if (const auto* wrong = std::get_if<Misread>(&ends)) return *wrong;
+  if (const auto* wrong = std::get_if<Misread>(&ends)) return misread(dial, wrong->what, wrong->remedy);
   const auto& value = std::get<units::Value>(ends);
   if (!value.low || !value.high || value.standard_deviation)
     return misread(dial, fmt::format("'{}' is no range", text), "write its two ends with .. between them");

@@ -37,7 +37,8 @@ std::string where_it_comes_from(const uncertainty::Result& spread) {
   std::vector<std::string> parts;
   for (const auto& share : spread.shares)
     if (parts.size() < most_sources && share[Output::duty] >= least_share)
-      parts.push_back(fmt::format("{} ({:.0f} %)", share.name, 100.0 * share[Output::duty]));
+      parts.push_back(fmt::format("{} ({:.0f} %)", share.name == share.key ? "the " + plain_words(share.key) : share.name,
+                                  100.0 * share[Output::duty]));
   if (parts.empty()) return "";
   return fmt::format("What is open about the duty comes from {}.", listed(parts));
 }

@@ -2,6 +2,8 @@
 #include <map>
 #include <stdexcept>
 
+#include <tbb/parallel_for.h>
+
 #include "sample.hpp"
 
 namespace dutygauge::uncertainty {
@@ -73,18 +75,20 @@ void fill_first_order(const Asked& asked, Result& result) {
 /// All samples of one question.
 struct Samples {
   std::vector<std::optional<Values>> values;
-  std::vector<bool> meets;
+  std::vector<char> meets;  ///< not bool: samples are written at the same time
 };
 
 Samples samples_of(const Asked& asked, const std::vector<std::vector<double>>& points) {
-  Samples samples;
-  std::vector<double> deviates(asked.inputs.size());
-  for (const std::vector<double>& point : points) {
-    std::ranges::transform(asked.inputs, deviates.begin(), [&](std::size_t input) { return point[input]; });
+  Samples samples{.values = std::vector<std::optional<Values>>(points.size()),
+                  .meets = std::vector<char>(points.size())};
+  tbb::parallel_for(std::size_t{0}, points.size(), [&](std::size_t i) {
+    std::vector<double> deviates(asked.inputs.size());
+    std::ranges::transform(asked.inputs, deviates.begin(),
+                           [&](std::size_t input) { return points[i][input]; });
     const auto outcome = rated(asked, deviates);
-    samples.values.push_back(outcome ? std::optional(values_of(*outcome)) : std::nullopt);
-    samples.meets.push_back(outcome && asked.question->meets && asked.question->meets(*outcome));
-  }
+    if (outcome) samples.values[i] = values_of(*outcome);
+    samples.meets[i] = outcome && asked.question->meets && asked.question->meets(*outcome);
+  });
   return samples;
 }
 
@@ -115,7 +119,7 @@ std::optional<Result> result_of(const Asked& asked, const Samples& samples) {
   result.failed = static_cast<int>(std::ranges::count_if(samples.values, [](const auto& of) { return !of; }));
   result.evaluations = result.samples + 1;  // and the nominal by means
   if (asked.question->meets)
-    result.probability = part(std::ranges::count(samples.meets, true), samples.meets.size());
+    result.probability = part(std::ranges::count(samples.meets, 1), samples.meets.size());
   fill_first_order(asked, result);
   return result;
 }
