@@ -172,6 +172,27 @@ TEST_CASE("field: drops give a by-pass its name") {
   CHECK(field::name_of({}, none) == "none");
 }
 
+TEST_CASE("field: weights by name sum to one, instruments and by-passes together") {
+  const field::Plant plant(plants::problem(plants::water_cooler));
+  field::Observed first = before, after = at_service({42.68, 36.97, 0, 0}, {0.1, 0.1, 0, 0});
+  for (field::Observed* o : {&first, &after})
+    o->value[index_of(Channel::tube_dp)] = o->value[index_of(Channel::shell_dp)] = missing;
+  const auto ranking = field::rank_causes(plant, {&first, 1}, {&after, 1}, fouling_before);
+  REQUIRE(ranking.has_value());
+  double sum = 0.0, last = 1.0;
+  std::vector<std::string> names;
+  for (const auto& [name, weight] : field::weights_of(*ranking, after.value)) {
+    CHECK(std::ranges::find(names, name) == names.end());
+    CHECK(weight <= last);
+    names.push_back(name);
+    sum += weight;
+    last = weight;
+  }
+  CHECK(std::abs(sum - 1.0) < 1e-12);
+  CHECK(std::ranges::find(names, "by-pass") != names.end());
+  CHECK(std::ranges::find(names, "instrument") != names.end());
+}
+
 TEST_CASE("field: without drops, one change of the outlets does not say why") {
   const field::Plant plant(plants::problem(plants::water_cooler));
   field::Observed first = before, after = at_service({42.68, 36.97, 0, 0}, {0.1, 0.1, 0, 0});

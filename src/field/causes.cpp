@@ -5,6 +5,7 @@
 #include <boost/math/distributions/chi_squared.hpp>
 #include <boost/math/tools/minima.hpp>
 #include <cmath>
+#include <functional>
 #include <limits>
 
 #include "ailing.hpp"
@@ -310,6 +311,21 @@ std::string_view name_of(const Part& part, const Channels& seen) {
       return "instrument";
   }
   return "none";
+}
+
+std::vector<NamedWeight> weights_of(const Ranking& ranking, const Channels& seen) {
+  std::vector<NamedWeight> weights;
+  for (const Explanation& e : ranking.pairs.empty() ? ranking.singles : ranking.pairs) {
+    std::string name(e.parts.empty() ? name_of({}, seen) : name_of(e.parts.front(), seen));
+    for (std::size_t i = 1; i < e.parts.size(); ++i) name += " and " + std::string(name_of(e.parts[i], seen));
+    const auto same = std::ranges::find(weights, name, &NamedWeight::name);
+    if (same == weights.end())
+      weights.push_back({std::move(name), e.weight});
+    else
+      same->weight += e.weight;
+  }
+  std::ranges::stable_sort(weights, std::ranges::greater{}, &NamedWeight::weight);
+  return weights;
 }
 
 }  // namespace dutygauge::field

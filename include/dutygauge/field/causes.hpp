@@ -3,6 +3,7 @@
 #include <cstdint>
 #include <optional>
 #include <span>
+#include <string>
 #include <string_view>
 #include <vector>
 
@@ -105,5 +106,12 @@ std::optional<Ranking> rank_over_days(const Plant& plant, const Instruments& ins
 
 /// What a plant would call it. A by-pass has its own name only where that side's drop is read.
 std::string_view name_of(const Part& part, const Channels& observed);
+
+/// The weights of a ranking by name, the greatest first; a pair has both names. `observed` as above.
+struct NamedWeight {
+  std::string name;
+  double weight = 0;  ///< sum 1
+};
+std::vector<NamedWeight> weights_of(const Ranking& ranking, const Channels& observed);
 
 }  // namespace dutygauge::field
