@@ -157,7 +157,7 @@ TEST_CASE("case_io: what this version does not read is refused by name") {
             and_also(std::string(key) + ": {a: 1}"),
             {"x:49:1:", std::string(key) + ": not read yet", "leave the block out"}}});
   check({
-      {"scaled", with("bell_delaware", "scaled"), {"x:48:", "not read yet"}},
+      {"plan", with("methods:", "plan: {next_stop: 2027-03-15}\nmethods:"), {"x:48:", "not read yet"}},
   });
 }
 
@@ -185,4 +185,16 @@ TEST_CASE("case_io: after twenty mistakes the rest are counted") {
   const auto lines = lines_of(text);
   REQUIRE(lines.size() == 21);
   CHECK(lines.back() == "x: and 13 more mistakes");
+}
+
+TEST_CASE("case_io: a misspelt or abbreviated key is one mistake, whatever it was required for") {
+  const std::pair<const char*, const char*> typed[] = {
+      {"    material:", "    mterial:"}, {"    length:", "    len:"},  {"  baffles:", "  baffels:"},
+      {"  baffles:", "  baff:"},         {"  shell_side:", "  shel:"}, {"temperature: 68", "temp: 68"},
+      {"    passes:", "    pases:"},     {"streams:", "stream:"},      {"    material:", "    mate:"}};
+  for (const auto& [right, wrong] : typed) {
+    CAPTURE(wrong);
+    const auto lines = refused::lines_of(good::with(right, wrong));
+    CHECK_MESSAGE(lines.size() == 1, refused::shown(lines));
+  }
 }

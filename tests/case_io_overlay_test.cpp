@@ -121,6 +121,16 @@ TEST_CASE("overlay: the unit as it is lies under every operating case, the case'
   CHECK(case_io::build(new_unit).problem.shell_side.mass_flow == 21.5);
 }
 
+TEST_CASE("overlay: one dotted key is enough for the unit as it is, and as built it still knows its cases") {
+  const auto document = with(
+      "present: {exchanger.tubes.plugged: 12}\n"
+      "operating_cases: {more_oil: {streams.shell_side.flow: x1.1}, design: {}}\n"
+      "claims: {for: design, tube_count: 208}\n");
+  CHECK(case_io::build_all(document).back().problem.exchanger.tubes_open == 208 - 12);
+  for (const char* name : {"more_oil", "design"})
+    CHECK(case_io::build(case_io::as_built(document, name)).claims.operating_case == "design");
+}
+
 TEST_CASE("overlay: a fluid is replaced as a whole, or one property of it by its key") {
   const auto cases = case_io::build_all(
       with("operating_cases:\n"

@@ -100,6 +100,27 @@ TEST_CASE("anchor: one missing flow is found from the balance") {
   CHECK(result.anchored->anchor.closing == uncertainty::Closing::untested);
 }
 
+TEST_CASE("anchor: a fouling found from a record is the unit of today") {
+  const auto result = explore::rate(with_anchor("anchor: {fouling: 0.0004 +- 0.00008 m2.K/W}\n"));
+  REQUIRE(result.anchored.has_value());
+  const auto& one = result.cases.front();
+  CHECK(one.today->assessment.problem.shell_side.fouling_resistance > 0.0);
+  const auto& resistances = one.today->assessment.rating.outcome->local.resistances;
+  CHECK(resistances.tube_fouling + resistances.shell_fouling == doctest::Approx(4e-4).epsilon(0.01));
+  // What is left open is the fouling's own spread: d ln Q = -U sigma E, with E below one.
+  const auto& outcome = *one.today->assessment.rating.outcome;
+  const double most = outcome.local.u_dirty * 8e-5;
+  const auto& spread = (*one.today->spread)[uncertainty::Output::duty];
+  CHECK(spread.sigma / outcome.duty < most);
+  CHECK(spread.sigma / outcome.duty > 0.2 * most);
+  CHECK(report::text(result, {}).find("the fouling that its record has shown") != std::string::npos);
+  CHECK(mistakes_of(with_anchor("anchor: {fouling: 0.0004 m2.K/W, shell_side: {inlet: 164 degF, outlet: 104 "
+                                "degF}}\n"))
+            .find("stands beside anchor.fouling") != std::string::npos);
+  CHECK(mistakes_of(with_anchor("anchor: {taken: 2026-11-29}\n")).find("anchor.shell_side is missing") !=
+        std::string::npos);
+}
+
 TEST_CASE("anchor: a reading that cannot be is refused with its key") {
   struct Row {
     std::string what, by, expected;

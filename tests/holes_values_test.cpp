@@ -132,3 +132,43 @@ TEST_CASE("case_io: a cut by area is the height of the window with that share of
   CHECK(std::abs(built(with("25 %", "14.24 % of area")).problem.exchanger.shell_side.baffle_cut - 0.2) <
         1e-4);
 }
+
+TEST_CASE("case_io: a range in either column of a pair is listed with its ends") {
+  const auto text = [](const char* density) {
+    return with(
+        "{constant: {density: 865 kg/m3, heat_capacity: 2050 J/kg.K, conductivity: 0.13 W/m.K, "
+        "viscosity: 22 mPa.s, phase: liquid}}",
+        std::string("{two_point: {at: 80 -> 30 degC, density: ") + density +
+            " kg/m3, heat_capacity: 2.1 -> 1.9 kJ/kg.K, conductivity: 0.13 -> 0.13 W/m.K, viscosity: "
+            "15 -> 60 cP, phase: liquid}}");
+  };
+  const auto spans = [&](const char* density) {
+    std::vector<std::pair<double, double>> found;
+    for (const auto& one : case_io::build(case_io::read_document(text(density), "x")).assumed)
+      if (one.key.ends_with("two_point.density")) found.emplace_back(*one.low, *one.high);
+    return found;
+  };
+  CHECK(spans("840 -> 870").empty());
+  CHECK(spans("830..850 -> 870") == std::vector{std::pair{830.0, 850.0}});
+  CHECK(spans("840 -> 860..880") == std::vector{std::pair{860.0, 880.0}});
+  CHECK(spans("830..850 -> 860..880").size() == 2);
+}
+
+TEST_CASE("case_io: a flow found from the sheet's duty stays what it is where an operating case differs") {
+  // The sheet's oil and outlet give its water flow; more oil or warmer water does not change that.
+  const auto text = with("flow: 62 m3/h at inlet", "flow: from_duty\n    outlet: {temperature: 36 degC}") +
+                    "claims: {duty: 400..420 kW}\noperating_cases:\n  design: {}\n  warm: "
+                    "{streams.tube_side.inlet.temperature: 33 degC}\n"
+                    "  more: {streams.tube_side.flow: x1.1}\n  other: {streams.tube_side.flow: 20 kg/s}\n"
+                    "  outlet: {streams.tube_side.outlet.temperature: 38 degC}\n";
+  const auto cases = case_io::build_all(case_io::read_document(text, "x"));
+  const auto flow = [&](std::size_t i) { return cases[i].problem.tube_side.mass_flow; };
+  CHECK(flow(0) == doctest::Approx(410e3 / (4178.5 * 7.0)).epsilon(1e-3));
+  CHECK(flow(1) == flow(0));
+  CHECK(flow(2) == doctest::Approx(1.1 * flow(0)).epsilon(1e-12));
+  CHECK(flow(3) == 20.0);
+  CHECK(flow(4) == doctest::Approx(flow(0) * 7.0 / 9.0).epsilon(1e-3));
+  const auto assumed = std::ranges::find(cases[2].assumed, "streams.tube_side.flow", &Assumption::key);
+  REQUIRE(assumed != cases[2].assumed.end());
+  CHECK(*assumed->high / assumed->value == doctest::Approx(420.0 / 410.0).epsilon(1e-12));
+}

@@ -39,6 +39,9 @@ struct Arrangement {
   /// E: the direction of the first pass. F, G, H: against is the first half of the
   /// passes beside the shell stream's way out, with is beside its way in.
   FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
+  /// Such trains side by side, which share the shell stream evenly while the tube stream passes
+  /// them one after another.
+  int trains_in_turn = 1;
   Flow shells_order = Flow::counter;  ///< parallel: both streams enter the same shell first
   Mixing mixing = Mixing::between_passes;
 

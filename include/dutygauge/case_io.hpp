@@ -1,9 +1,11 @@
 #pragma once
 #include <map>
+#include <memory>
 #include <optional>
 #include <stdexcept>
 #include <string>
 #include <string_view>
+#include <variant>
 #include <vector>
 
 #include "dutygauge/bids.hpp"
@@ -11,6 +13,7 @@
 #include "dutygauge/findings.hpp"
 #include "dutygauge/rating.hpp"
 #include "dutygauge/service.hpp"
+#include "dutygauge/service/control.hpp"
 #include "dutygauge/uncertainty/anchor.hpp"
 
 /// Case files: YAML to a Case of the structs below this level. No physics.
@@ -65,6 +68,9 @@ struct Document {
   std::string sha256;                   ///< of the bytes read, hexadecimal
   std::vector<Mistake> mistakes;        ///< that did not stop the reading (doubled keys)
   std::vector<std::string> of_cases;    ///< the file's operating cases, where this is one of them
+  /// Where the shell side is scaled from the sheet, or a flow follows from its duty: the case the sheet
+  /// speaks of, as it was before anything was varied. Null: this document is that case.
+  std::shared_ptr<const Document> sheet{};
 };
 
 /// A finding that somebody has looked at and decided on.
@@ -72,9 +78,15 @@ struct Accepted {
   std::string id, because, by;
 };
 
-/// A reading of the running unit, and the unit it was taken of: as it is, without overlays.
+/// A fouling that a record of readings has shown.
+struct FoundFouling {
+  std::string taken = {};       ///< when, as typed
+  double value = 0, sigma = 0;  ///< on the outside area [m2.K/W]
+};
+
+/// What says how the running unit is, and the unit it was taken of: as it is, without overlays.
 struct AnchorReading {
-  uncertainty::SteadyReading reading;
+  std::variant<uncertainty::SteadyReading, FoundFouling> reading;
   rating::Problem unit;
 };
 
@@ -86,7 +98,8 @@ struct Case {
   units::System display = units::System::metric;
   rating::Problem problem;
   service::Service service;
-  bids::Claims claims;  ///< of the sheet, as built
+  std::optional<service::Control> control;  ///< what holds the unit at its duty
+  bids::Claims claims;                      ///< of the sheet, as built
   std::optional<AnchorReading> anchor;
   Inputs inputs;        ///< as typed, and assumed, in SI
   Assumptions assumed;  ///< made while reading and deriving
@@ -120,9 +133,12 @@ Document overlaid(const Document& document, const std::string& operating_case);
 /// The same as built: without `present`.
 Document as_built(const Document& document, const std::string& operating_case);
 
-/// The document with another text at a key ("x1.15": times what stands there).
-/// Throws InputError where the format has no such key.
+/// The document with another text at a key ("x1.15": times what stands there); what the sheet
+/// speaks of stays as it is. Throws InputError where the format has no such key.
 Document with_value(const Document& document, const std::string& key, const std::string& text);
+
+/// The same where the value itself is in doubt: the sheet's own case had it too.
+Document with_other_reading(const Document& document, const std::string& key, const std::string& text);
 
 /// The document with the value of a key multiplied. Throws InputError where it has none.
 Document with_factor(const Document& document, const std::string& key, double factor);

@@ -32,6 +32,7 @@ struct Description {
   char front_head = 'B', shell_type = 'E', rear_head = 'M';  ///< TEMA letters
   bool vertical = false;
   int shells_in_series = 1, shells_in_parallel = 1;
+  bool tube_side_in_series = false;             ///< the tube stream passes the parallel shells in turn
   std::optional<FlowDirection> flow_direction;  ///< one-pass units
   FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
 
@@ -39,9 +40,11 @@ struct Description {
   std::optional<double> shell_nozzle_in, shell_nozzle_out;  ///< bores [m]
   bool impingement_plate = false;
 
-  int tube_count = 0;                 ///< holes in one tubesheet
-  int plugged = 0;                    ///< holes plugged
-  std::vector<int> plugged_per_pass;  ///< where given by pass (sums to `plugged`)
+  int tube_count = 0;                  ///< holes in one tubesheet
+  int plugged = 0;                     ///< holes plugged in each shell
+  std::vector<int> plugged_per_pass;   ///< where given by pass (sums to `plugged`)
+  std::vector<int> plugged_per_shell;  ///< where given by shell, along the shell stream, bank by bank
+  std::optional<int> plugged_in_unit;  ///< where only the sum of all shells is known
   int tube_passes = 1;
   double tube_outside_diameter = 0, tube_wall = 0, tube_length = 0;  ///< [m]; straight, outer faces
   std::optional<double> tubesheet_thickness;                         ///< [m]
@@ -176,13 +179,17 @@ struct Exchanger {
   double outside_per_inside = 1;  ///< outside area / area of the bore [-]
   std::optional<FinnedSurface> finned;
   int shells_in_series = 1, shells_in_parallel = 1;
+  bool tube_side_in_series = false;  ///< only the shell stream is shared by what is in parallel
   FlowDirection flow_direction = FlowDirection::counter;
   FirstTubePass first_tube_pass = FirstTubePass::against_shell_flow;
   double effective_length = 0;     ///< L_eff [m]
   double tubesheet_thickness = 0;  ///< [m]
-  int tubes_open = 0;              ///< holes open to flow, one shell
+  double tubes_open = 0;           ///< holes open to flow, of the mean shell
   double area_per_shell = 0;       ///< effective outside area, fins and all [m2]
   double area = 0;                 ///< of all shells [m2]
+
+  /// How many ways the tube stream is shared.
+  int tube_banks() const { return tube_side_in_series ? 1 : shells_in_parallel; }
 };
 
 /// What cannot be built or rated, by key of the case file. Empty: `derive` may be called.

@@ -99,7 +99,8 @@ struct ProfilePoint {
 
 /// What leaves one shell of a train.
 struct ShellEnd {
-  int position = 1;                          ///< along the shell stream
+  int bank = 1, position = 1;                ///< position along the shell stream; bank 1 stands for
+                                             ///< all where they share both streams
   double shell_outlet = 0, tube_outlet = 0;  ///< [K]
 };
 

@@ -6,6 +6,7 @@
 #include "dutygauge/bids.hpp"
 #include "dutygauge/findings.hpp"
 #include "dutygauge/service.hpp"
+#include "dutygauge/service/control.hpp"
 #include "dutygauge/uncertainty.hpp"
 
 /// Results to text and JSON. Knows no file format of the input; no physics.
@@ -24,6 +25,7 @@ struct RatedCase {
   service::Assessment design_fouling, clean;
   Findings findings;  ///< of the case as read and as rated at design fouling
   std::optional<uncertainty::Result> spread{}, spread_clean{};  ///< at design fouling, and clean
+  std::optional<service::Holding> held{}, held_clean{};         ///< where a control holds the duty
   std::optional<Today> today{};                                 ///< where an anchor says what that is
 };
 

@@ -78,6 +78,7 @@ enum class Varied {
   read_flow,       ///< of an anchor's reading, and its temperatures, which are moved
   read_inlet,
   read_outlet,
+  found_fouling,  ///< of a record; moved [m2.K/W]
 };
 
 /// One thing that may be wrong.
@@ -86,7 +87,7 @@ struct Source {
   std::string key;   ///< "shell_side.film"; common sources with the same key are wrong together
   Varied varied = Varied::film;
   Side side = Side::shell;
-  double sigma = 0;  ///< one standard deviation: a fraction of the value; [K] for a temperature
+  double sigma = 0;  ///< one standard deviation: a fraction of the value; of what is moved its own unit
   Distribution distribution = Distribution::lognormal;
   bool common = true;  ///< the same error in every case and state of one unit; false: in each anew
   std::string source;  ///< key in sources.hpp
@@ -95,7 +96,7 @@ struct Source {
 /// A deviation in standard deviations, from a standard normal deviate.
 double deviation(Distribution distribution, double deviate);
 
-/// What a source's value is multiplied by, or moved by [K], at a standard normal deviate.
+/// What a source's value is multiplied by, or moved by, at a standard normal deviate.
 double drawn(const Source& source, double deviate);
 
 /// A problem with one of its sources at a deviate.

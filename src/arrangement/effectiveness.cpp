@@ -30,6 +30,9 @@ double effectiveness(const Arrangement& arrangement, double capacity_ratio, doub
   train::require(arrangement, capacity_ratio);
   if (ntu < 0.0) throw std::invalid_argument("arrangement: negative NTU");
   if (std::isnan(ntu) || std::isnan(capacity_ratio)) return capacity_ratio + ntu;
+  if (const int trains = arrangement.trains_in_turn; trains > 1)
+    return train::in_turn(
+        effectiveness(train::one_train_of(arrangement), trains * capacity_ratio, ntu / trains), trains);
   // Infinity, taken at a stand-in whose powers still fit a double.
   constexpr double ample = 1e60;
   const Arrangement same = train::simplest(arrangement);

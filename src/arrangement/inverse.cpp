@@ -112,11 +112,16 @@ std::optional<double> ntu_of_shell(const Arrangement& shell, double r, double p)
 
 double largest_effectiveness(const Arrangement& arrangement, double capacity_ratio) {
   train::require(arrangement, capacity_ratio);
+  if (const int trains = arrangement.trains_in_turn; trains > 1)
+    return train::in_turn(largest_effectiveness(train::one_train_of(arrangement), trains * capacity_ratio),
+                          trains);
   return peak_of(train::simplest(arrangement), capacity_ratio).p;
 }
 
 double ntu_at_largest(const Arrangement& arrangement, double capacity_ratio) {
   train::require(arrangement, capacity_ratio);
+  if (const int trains = arrangement.trains_in_turn; trains > 1)
+    return trains * ntu_at_largest(train::one_train_of(arrangement), trains * capacity_ratio);
   return peak_of(train::simplest(arrangement), capacity_ratio).ntu;
 }
 
@@ -125,6 +130,10 @@ std::optional<double> ntu_for(const Arrangement& arrangement, double capacity_ra
   train::require(arrangement, capacity_ratio);
   const double r = capacity_ratio, p = temperature_effectiveness;
   if (!counterflow_reaches(r, p)) return {};
+  if (const int trains = arrangement.trains_in_turn; trains > 1) {
+    const auto one = ntu_for(train::one_train_of(arrangement), trains * r, train::one_in_turn(p, trains));
+    return one ? std::optional(trains * *one) : std::nullopt;
+  }
   const Arrangement same = train::simplest(arrangement);
   const auto share = ntu_of_shell(train::one_shell_of(same), r, train::share_of(same, r, p));
   if (!share) return {};
@@ -141,15 +150,16 @@ std::optional<double> counterflow_ntu(double capacity_ratio, double temperature_
 std::optional<double> lmtd_correction(const Arrangement& arrangement, double capacity_ratio, double ntu) {
   train::require(arrangement, capacity_ratio);
   if (!(ntu >= 0.0 && capacity_ratio >= 0.0)) return {};
-  Arrangement same = train::simplest(arrangement);
-  const bool counterflow = same.shell_type == 'E' && same.tube_passes == 1 && same.flow == Flow::counter &&
-                           same.shells_in_series == 1;
+  const bool in_turn = arrangement.trains_in_turn > 1;
+  Arrangement same = in_turn ? arrangement : train::simplest(arrangement);
+  const bool counterflow = !in_turn && same.shell_type == 'E' && same.tube_passes == 1 &&
+                           same.flow == Flow::counter && same.shells_in_series == 1;
   // An isothermal shell stream makes every arrangement counterflow.
   if (ntu == 0.0 || capacity_ratio == 0.0 || counterflow) return 1.0;
   // Counterflow NTUs of shells in counterflow add up, so a train has the F of one shell;
   // this keeps digits where the train's P nears its limit.
   double share = ntu;
-  if (same.shells_order == Flow::counter) {
+  if (!in_turn && same.shells_order == Flow::counter) {
     share /= same.shells_in_series;
     same = train::one_shell_of(same);
   }

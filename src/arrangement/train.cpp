@@ -1,5 +1,6 @@
 #include "train.hpp"
 
+#include <cmath>
 #include <stdexcept>
 
 #include "blocks.hpp"
@@ -24,6 +25,20 @@ Arrangement simplest(const Arrangement& arrangement) {
   if (one_way && (same.flow == Flow::parallel || same.shells_order == Flow::counter))
     same.shells_in_series = 1;
   return same;
+}
+
+Arrangement one_train_of(const Arrangement& arrangement) {
+  Arrangement one = arrangement;
+  one.trains_in_turn = 1;
+  return one;
+}
+
+double in_turn(double one_train, int trains) {
+  return -std::expm1(trains * std::log1p(-one_train));
+}
+
+double one_in_turn(double p, int trains) {
+  return -std::expm1(std::log1p(-p) / trains);
 }
 
 Arrangement one_shell_of(const Arrangement& arrangement) {

@@ -11,6 +11,13 @@ void require(const Arrangement& arrangement, double r);
 /// `whole` shells of the result have the NTU of the train.
 Arrangement simplest(const Arrangement& arrangement);
 
+/// One of the trains that the tube stream passes in turn. All P and NTU of the unit and of one of
+/// its N trains: P = 1 - (1 - P1)^N, NTU = N NTU1, at R1 = N R, since each train meets the shell
+/// stream as it enters.
+Arrangement one_train_of(const Arrangement& arrangement);
+double in_turn(double one_train, int trains);
+double one_in_turn(double p, int trains);
+
 Arrangement one_shell_of(const Arrangement& arrangement);
 
 /// P [-] of the train whose shells each have `one_shell`.

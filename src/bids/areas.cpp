@@ -36,7 +36,7 @@ Surfaces surfaces_of(const Exchanger& exchanger) {
           .shells = shells,
           .banks = exchanger.shells_in_parallel,
           .u_tubes = exchanger.tube_side.u_tubes,
-          .open_fraction = static_cast<double>(exchanger.tubes_open) / d.tube_count,
+          .open_fraction = exchanger.tubes_open / d.tube_count,
           .sheet_slack = per_length * uncertain,
           .inside = exchanger.tube_side.inside_diameter / d.tube_outside_diameter};
 }

@@ -34,8 +34,8 @@ void check_count(Sheet& sheet) {
                   },
               .otherwise = "another count than the drawing's",
               .if_empty = ""};
-  if (const int plugged = exchanger.as_described.plugged; plugged > 0)
-    check.causes.push_back({holes - plugged, "plugged tubes are left out"});
+  if (exchanger.tubes_drawn && exchanger.tubes_open < holes)
+    check.causes.push_back({exchanger.tubes_open, "plugged tubes are left out"});
   if (shells > 1) check.causes.push_back({shells * holes, "tubes of all shells, not of one"});
   // A count is exact: 1 % of it would be several tubes.
   if (claim && claim->value != holes && fits(*claim, {holes, 0.0})) {
@@ -82,10 +82,10 @@ void check_velocity(Sheet& sheet) {
   const double outlet =
       sheet.tube_outlet.empty() ? stream.inlet_temperature : sheet.tube_outlet.front().value;
   const double mean = 0.5 * (stream.inlet_temperature + outlet);
-  const Channel channel{stream.mass_flow / exchanger.shells_in_parallel, density(stream, mean),
+  const Channel channel{stream.mass_flow / exchanger.tube_banks(), density(stream, mean),
                         exchanger.tube_side.inside_diameter + 2.0 * d.tube_wall};
   const double all = static_cast<double>(d.tube_count) / d.tube_passes;
-  const double open = static_cast<double>(exchanger.tubes_open) / d.tube_passes;
+  const double open = exchanger.tubes_open / d.tube_passes;
   const double value = channel.velocity(d.tube_wall, all);
   const double ends = std::max(std::abs(channel.density / density(stream, stream.inlet_temperature) - 1.0),
                                std::abs(channel.density / density(stream, outlet) - 1.0));
@@ -101,8 +101,8 @@ void check_velocity(Sheet& sheet) {
       check.causes.push_back({value * passes / d.tube_passes,
                               fmt::format("velocity is that of {} pass{}", passes, passes > 1 ? "es" : "")});
   add_walls(channel, d.tube_wall, all, check.causes);
-  if (exchanger.shells_in_parallel > 1)
-    check.causes.push_back({value * exchanger.shells_in_parallel, "the whole flow through one bank"});
+  if (exchanger.tube_banks() > 1)
+    check.causes.push_back({value * exchanger.tube_banks(), "the whole flow through one bank"});
   judge(sheet, sheet.claims.tube_side_velocity, check);
 }
 
@@ -119,7 +119,9 @@ std::vector<Nozzle> nozzles_of(const Sheet& sheet) {
   const auto add = [&](const char* name, const std::optional<double>& bore, const rating::Stream& stream,
                        double temperature) {
     if (!bore) return;
-    const double flux = stream.mass_flow / problem.exchanger.shells_in_parallel / (0.25 * pi * *bore * *bore);
+    const bool is_tube_side = &stream == &problem.tube_side;
+    const int banks = is_tube_side ? problem.exchanger.tube_banks() : problem.exchanger.shells_in_parallel;
+    const double flux = stream.mass_flow / banks / (0.25 * pi * *bore * *bore);
     nozzles.push_back({name, flux * flux / density(stream, temperature)});
   };
   const auto outlet = [](const Numbers& of, const rating::Stream& stream) {

@@ -1,6 +1,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "dutygauge/rating/scaled.hpp"
 #include "sheet.hpp"
 
 // Claims that another method may give differently: beside ours, within the methods' scatter.
@@ -39,10 +40,22 @@ ClaimVerdict verdict_on(const Beside& one) {
           .source = std::string(one.source)};
 }
 
+/// What a shell side scaled from the sheet was taken from: our rating gives it back.
+bool is_origin(const Sheet& sheet, std::string_view key) {
+  const auto& drop = sheet.problem().shell_side.drop_law;
+  return (key == "u_dirty" && rating::is_scaled(sheet.problem())) ||
+         (key == "shell_side_pressure_drop" && drop && drop->at_state);
+}
+
 /// A verdict of the sheet against itself stands, unless our rating has a question more.
 void put(Sheet& sheet, const Beside& one) {
   if (!one.claim) return;
   const auto found = std::ranges::find(sheet.verdicts, one.key, &ClaimVerdict::key);
+  if (is_origin(sheet, one.key)) {
+    if (found != sheet.verdicts.end() && found->verdict != Agreement::not_checked) return;
+    if (found != sheet.verdicts.end()) sheet.verdicts.erase(found);
+    return leave_unchecked(sheet, one.key, one.claim, "our shell side is scaled from it");
+  }
   if (found == sheet.verdicts.end())
     sheet.verdicts.push_back(verdict_on(one));
   else if (found->verdict == Agreement::not_checked || (found->verdict == Agreement::agrees && !within(one)))

@@ -1,5 +1,7 @@
 #include <fmt/format.h>
 
+#include <algorithm>
+
 #include "parts.hpp"
 #include "wording.hpp"
 
@@ -10,6 +12,9 @@ namespace {
 
 using units::Kind;
 using uncertainty::ReadStream;
+
+constexpr double usual_record = 0.2;  // of a fouling found from a year's readings, without a word on it
+constexpr double least_spread = 1e-5;  // [m2.K/W]
 
 std::string in_words(double temperature) {
   return units::typed(temperature, Kind::temperature);
@@ -85,11 +90,8 @@ double instrument(Reading& reading, const char* key, double usual, Kind kind, co
   return usual;
 }
 
-}  // namespace
-
-std::optional<uncertainty::SteadyReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
-                                                    const rating::Stream& tube_side) {
-  if (!reading.has("anchor")) return {};
+std::optional<uncertainty::SteadyReading> steady_reading(Reading& reading, const rating::Stream& shell_side,
+                                                         const rating::Stream& tube_side) {
   const auto shell = stream_read(reading, "shell_side", shell_side);
   const auto tube = stream_read(reading, "tube_side", tube_side);
   if (!shell || !tube) return {};
@@ -98,13 +100,59 @@ std::optional<uncertainty::SteadyReading> anchor_of(Reading& reading, const rati
                  "read one: temperatures alone say nothing of the duty");
   check_temperatures(reading, *shell, *tube, shell_side.inlet_temperature > tube_side.inlet_temperature);
   uncertainty::SteadyReading result{.shell_side = *shell, .tube_side = *tube};
-  result.taken = std::string(word(reading.entries(), "anchor.taken").value_or(""));
   result.temperature_sigma =
       instrument(reading, "anchor.instruments.temperature", 0.5, Kind::temperature_difference,
                  "a plant thermometer in a well, one standard deviation");
   result.flow_sigma = instrument(reading, "anchor.instruments.flow", 0.03, Kind::ratio,
                                  "a plant flow meter, one standard deviation");
   return result;
+}
+
+/// A fouling that a record has shown, instead of one reading.
+FoundFouling found_fouling(Reading& reading, const Entry& entry) {
+  const std::string key = "anchor.fouling";
+  for (const char* other : {"anchor.shell_side", "anchor.tube_side", "anchor.instruments"})
+    if (reading.has(other))
+      reading.note(other, "stands beside anchor.fouling, which says the same", "one of the two",
+                   "keep the reading, or the fouling that a record has shown");
+  FoundFouling found{.value = entry.value.si};
+  if (const auto deviation = entry.value.standard_deviation) {
+    found.sigma = *deviation;
+    return found;
+  }
+  found.sigma = std::max(usual_record * entry.value.si, least_spread);
+  reading.assume({.key = key,
+                  .value = entry.value.si,
+                  .kind = Kind::fouling_resistance,
+                  .why = fmt::format("given without a spread: one standard deviation of {} is taken; write it "
+                                     "as 0.0003 +- 0.00003 m2.K/W",
+                                     units::typed(found.sigma, Kind::fouling_resistance)),
+                  .look_in = "result of the readings"});
+  return found;
+}
+
+}  // namespace
+
+std::optional<AnchorReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
+                                       const rating::Stream& tube_side) {
+  if (!reading.has("anchor")) return {};
+  const std::string taken(word(reading.entries(), "anchor.taken").value_or(""));
+  if (const auto entry = reading.entries().find("anchor.fouling"); entry != reading.entries().end()) {
+    FoundFouling found = found_fouling(reading, entry->second);
+    found.taken = taken;
+    return AnchorReading{std::move(found), {}};
+  }
+  for (const char* side : {"anchor.shell_side", "anchor.tube_side"})
+    if (!reading.has(side)) {
+      reading.note("anchor", fmt::format("{} is missing", side),
+                   "what was read of both streams, or fouling alone",
+                   "write {inlet: ..., outlet: ..., flow: ...}, or the fouling that a record has shown");
+      return {};
+    }
+  auto read = steady_reading(reading, shell_side, tube_side);
+  if (!read) return {};
+  read->taken = taken;
+  return AnchorReading{std::move(*read), {}};
 }
 
 }  // namespace dutygauge::case_io

@@ -29,6 +29,13 @@ service::Service service_of(const Entries& entries, units::System words) {
   return result;
 }
 
+std::optional<service::Control> control_of(const Entries& entries) {
+  const auto typed = word(entries, "service.control");
+  if (!typed) return {};
+  return *typed == "bypass_shell_side" ? service::Control::bypass_shell_side
+                                       : service::Control::throttle_tube_side;
+}
+
 rating::Methods methods_of(Reading& reading) {
   const auto shell_side = word(reading.entries(), "methods.shell_side");
   const auto tema = word(reading.entries(), "exchanger.tema");
@@ -107,21 +114,20 @@ std::vector<Accepted> accepted_of(const Reading& reading) {
   }
 }
 
-}  // namespace
-
-Case build_plain(const Document& document) {
-  Reading reading(document, case_fields());
+/// The case as the document has it; a shell side to be scaled has no film yet.
+Case read_case(const Document& document, Reading& reading) {
   const auto description = exchanger_of(reading);
   auto shell_side = stream_of(reading, "shell_side"), tube_side = stream_of(reading, "tube_side");
   find_flows(reading, shell_side, tube_side);
   const GivenFilm films[] = {given_film_of(reading, "shell_side"), given_film_of(reading, "tube_side")};
   check_inlets(reading);
   const rating::Methods methods = methods_of(reading);
+  check_scaled(reading);
   bids::Claims claims = claims_of(reading);
   field::Mapping readings = mapping_of(reading);
   field::Planned plan = plan_of(reading, readings.clock.offset);
-  std::optional<uncertainty::SteadyReading> read;
-  if (shell_side && tube_side) read = anchor_of(reading, shell_side->stream, tube_side->stream);
+  std::optional<AnchorReading> anchor;
+  if (shell_side && tube_side) anchor = anchor_of(reading, shell_side->stream, tube_side->stream);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
   if (!description || !shell_side || !tube_side)
     throw std::logic_error("a case without a mistake could not be built");
@@ -141,8 +147,10 @@ Case build_plain(const Document& document) {
                     .methods = methods};
   for (const bool is_shell_side : {true, false})
     put_film(films[is_shell_side ? 0 : 1], is_shell_side, result.problem);
-  if (read) result.anchor = AnchorReading{std::move(*read), result.problem};
+  result.anchor = std::move(anchor);
   result.service = service_of(entries, result.display);
+  result.control = control_of(entries);
+  take_bypasses(reading, result);
   result.claims = std::move(claims);
   result.readings = std::move(readings);
   result.plan = std::move(plan);
@@ -155,7 +163,24 @@ Case build_plain(const Document& document) {
   }
   for (const GivenFilm& film : films) append(result.findings, film.findings);
   show_unknown(reading, result.assumed);
-  result.inputs = inputs_of(entries, result.assumed, result.display);
+  return result;
+}
+
+/// The case the sheet speaks of, where another document holds it.
+Case stated_case_of(const Document& document, const Case& read) {
+  if (!document.sheet) return read;
+  Reading reading(*document.sheet, case_fields());
+  return read_case(*document.sheet, reading);
+}
+
+}  // namespace
+
+Case build_plain(const Document& document) {
+  Reading reading(document, case_fields());
+  Case result = read_case(document, reading);
+  if (is_scaled(reading.entries())) scale_shell_side(document, stated_case_of(document, result), result);
+  if (result.anchor) result.anchor->unit = result.problem;
+  result.inputs = inputs_of(reading.entries(), result.assumed, result.display);
   return result;
 }
 

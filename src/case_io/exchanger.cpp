@@ -2,8 +2,10 @@
 
 #include <algorithm>
 #include <cmath>
+#include <numeric>
 
 #include "dutygauge/arrangement.hpp"
+#include "excuses.hpp"
 #include "parts.hpp"
 #include "wording.hpp"
 
@@ -61,6 +63,7 @@ void describe_letters_and_shells(const Entries& entries, Description& d) {
   d.vertical = word(entries, "exchanger.orientation") == "vertical";
   d.shells_in_series = whole(entries, "exchanger.shells.in_series").value_or(1);
   d.shells_in_parallel = whole(entries, "exchanger.shells.in_parallel").value_or(1);
+  d.tube_side_in_series = word(entries, "exchanger.shells.tube_side") == "in_series";
   if (const auto flow = word(entries, "exchanger.flow_direction"))
     d.flow_direction = *flow == "parallel" ? FlowDirection::parallel : FlowDirection::counter;
   if (word(entries, "exchanger.first_tube_pass") == "with_shell_flow")
@@ -69,14 +72,16 @@ void describe_letters_and_shells(const Entries& entries, Description& d) {
 }
 
 void describe_plugging(const Entries& entries, Description& d) {
-  const std::string key = "exchanger.tubes.plugged";
-  d.plugged = whole(entries, key).value_or(0);
-  for (std::size_t i = 0;; ++i) {
-    const auto of_pass = whole(entries, joined(key, std::to_string(i)));
-    if (!of_pass) return;
-    d.plugged_per_pass.push_back(*of_pass);
-    d.plugged += *of_pass;
-  }
+  const auto list = [&](const std::string& key) {
+    std::vector<int> all;
+    while (const auto next = whole(entries, joined(key, std::to_string(all.size())))) all.push_back(*next);
+    return all;
+  };
+  d.plugged_per_pass = list("exchanger.tubes.plugged");
+  d.plugged = std::accumulate(d.plugged_per_pass.begin(), d.plugged_per_pass.end(),
+                              whole(entries, "exchanger.tubes.plugged").value_or(0));
+  d.plugged_per_shell = list("exchanger.tubes.plugged_per_shell");
+  d.plugged_in_unit = whole(entries, "exchanger.tubes.plugged_in_unit");
 }
 
 void describe_layers_and_fins(const Entries& entries, Description& d) {
@@ -109,6 +114,7 @@ Description description_of(const Entries& entries) {
   describe_plugging(entries, d);
   // A conductivity beside a name is a mistake of its own, noted with the keys.
   d.tube_material = word(entries, "exchanger.tubes.material").value_or("");
+  d.baffles_known = !is_scaled(entries);
   d.baffle_count = whole(entries, "exchanger.baffles.count");
   if (const auto compartments = whole(entries, "exchanger.baffles.compartments"))
     d.baffle_count = *compartments - 1;
@@ -137,10 +143,11 @@ bool has_count(const Entries& entries, std::string_view key) {
          (key == "exchanger.tubes.count" && entries.contains("exchanger.tubes.u_tubes"));
 }
 
-std::vector<std::string> missing_keys(const Entries& entries) {
+std::vector<std::string> missing_keys(const Reading& reading) {
+  const Entries& entries = reading.entries();
   std::vector<std::string> missing;
   for (const Required& value : required_values)
-    if (!entries.contains(value.key)) missing.emplace_back(value.key);
+    if (!entries.contains(value.key) && !is_excused(reading, value.key)) missing.emplace_back(value.key);
   for (const char* key : required_words)
     if (!has_count(entries, key)) missing.emplace_back(key);
   return missing;
@@ -173,6 +180,19 @@ Objections objections_despite(const Reading& reading, const std::vector<std::str
   return second;
 }
 
+/// Three ways to say what is plugged: one of them.
+void check_plugging_doubles(Reading& reading) {
+  const char* first = nullptr;
+  for (const char* key :
+       {"exchanger.tubes.plugged", "exchanger.tubes.plugged_per_shell", "exchanger.tubes.plugged_in_unit"}) {
+    if (!reading.has(key)) continue;
+    if (first != nullptr)
+      reading.note(key, fmt::format("stands beside {}", last_segment(first)), "one of them",
+                   "leave the other out");
+    first = key;
+  }
+}
+
 /// Pairs of keys of which one is enough.
 void check_doubles(Reading& reading) {
   const Entries& entries = reading.entries();
@@ -185,6 +205,7 @@ void check_doubles(Reading& reading) {
     reading.note("exchanger.tubes.u_tubes",
                  fmt::format("{} U-tubes have {} holes, but count is {}", *u_tubes, 2 * *u_tubes, *count),
                  "a count of twice the U-tubes", "correct one, or leave it out");
+  check_plugging_doubles(reading);
   const auto tema = word(entries, "exchanger.tema");
   if (u_tubes && tema && tema->back() != 'U')
     reading.note("exchanger.tubes.u_tubes", fmt::format("rear head {} has no U-tubes", tema->back()),
@@ -223,7 +244,7 @@ std::optional<Description> exchanger_of(Reading& reading) {
                  "a wall resistance only beside an area",
                  "leave it out, or give the area instead of dimensions");
   if (!reading.has("exchanger.tubes") || !reading.has("exchanger.shell")) return {};
-  const auto missing = missing_keys(reading.entries());
+  const auto missing = missing_keys(reading);
   if (!missing.empty()) {
     reading.note_all(objections_despite(reading, missing));
     return {};

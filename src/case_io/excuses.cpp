@@ -1,17 +1,9 @@
 #include "excuses.hpp"
 
+#include "parts.hpp"
 #include "wording.hpp"
 
 namespace dutygauge::case_io {
-namespace {
-
-bool is_scaled(const Reading& reading) {
-  const auto method = word(reading.entries(), "methods.shell_side");
-  return method == "scaled";
-}
-
-}  // namespace
-
 Excuse excuse_of(std::string_view key) {
   const auto last = last_segment(key);
   if (key == "exchanger.baffles" || key == "exchanger.baffles.cut") return Excuse::scaled;
@@ -31,7 +23,7 @@ Excuse excuse_of(std::string_view key) {
 bool is_excused(const Reading& reading, std::string_view key) {
   const Excuse excuse = excuse_of(key);
   const bool by_area = excuse != Excuse::none && reading.has("exchanger.area");
-  return by_area || (excuse == Excuse::scaled && is_scaled(reading));
+  return by_area || (excuse == Excuse::scaled && is_scaled(reading.entries()));
 }
 
 }  // namespace dutygauge::case_io

@@ -191,6 +191,8 @@ std::string kind_in_words(const Field& field) {
       return "a whole number";
     case Form::whole_or_list:
       return "a whole number, or one for each tube pass";
+    case Form::wholes:
+      return "a list of whole numbers, one for each shell,";
     case Form::number:
       return "a plain number";
     case Form::quantity:

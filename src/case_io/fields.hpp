@@ -23,6 +23,7 @@ enum class Form {
   tema,              ///< three TEMA letters
   whole,             ///< a whole number
   whole_or_list,     ///< a whole number, or one for each tube pass
+  wholes,            ///< a list of whole numbers, one for each shell
   number,            ///< a plain number
   quantity,          ///< a number with a unit of `kind`
   either_viscosity,  ///< kinematic or dynamic

@@ -94,7 +94,8 @@ GivenFilm given_film_of(Reading& reading, const std::string& side) {
   take_multiplier(reading, block, given);
   take_film_law(reading, block, given);
   take_drop_law(reading.entries(), block, given);
-  if (reading.has("exchanger.area") && !reading.has(joined(block, "film_law")) &&
+  const bool is_from_sheet = side == "shell_side" && is_scaled(reading.entries());
+  if (reading.has("exchanger.area") && !is_from_sheet && !reading.has(joined(block, "film_law")) &&
       !reading.has(joined(block, "film_coefficient")))
     reading.note(block, "without dimensions of the exchanger its film cannot be computed",
                  "film_law or film_coefficient", "add either, or give tubes, shell and baffles");

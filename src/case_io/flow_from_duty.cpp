@@ -1,6 +1,8 @@
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cmath>
+#include <utility>
 
 #include "parts.hpp"
 
@@ -74,10 +76,38 @@ bool is_reachable(Reading& reading, const std::string& name, const rating::Strea
   return false;
 }
 
+/// What is found [kg/s] in the case the sheet speaks of, where that is another document with the
+/// same outlet: what an operating case changes does not change the sheet's balance.
+std::optional<Assumption> flow_of_sheet(const Reading& reading, const std::string& name) {
+  const auto& sheet = reading.document().sheet;
+  if (!sheet) return {};
+  Reading there(*sheet, case_fields());
+  const std::string key = key_of(name, "flow"), outlet = key_of(name, "outlet.temperature");
+  if (!there.mistakes().empty() || !is_from_duty(there, name)) return {};
+  if (si(there.entries(), outlet) != si(reading.entries(), outlet)) return {};
+  auto shell_side = stream_of(there, "shell_side"), tube_side = stream_of(there, "tube_side");
+  find_flows(there, shell_side, tube_side);
+  const auto found = std::ranges::find(there.assumed(), key, &Assumption::key);
+  if (!there.mistakes().empty() || found == there.assumed().end()) return {};
+  Assumption flow = *found;
+  const double factor = reading.entries().at(key).factor / there.entries().at(key).factor;
+  flow.value *= factor;
+  for (auto* end : {&flow.low, &flow.high})
+    if (*end) **end *= factor;
+  return flow;
+}
+
+void take_flow(Reading& reading, Assumption flow, rating::Stream& stream) {
+  stream.mass_flow = flow.value;
+  reading.settle(flow.key, flow.value);
+  reading.assume(std::move(flow));
+}
+
 void find_flow(Reading& reading, const std::string& name, std::optional<MadeStream>& made,
                const std::string& other, const std::optional<MadeStream>& other_made) {
   if (!made || !other_made || !is_from_duty(reading, name)) return;
   const std::string key = key_of(name, "flow");
+  if (auto flow = flow_of_sheet(reading, name)) return take_flow(reading, std::move(*flow), made->stream);
   if (!reading.has(key_of(name, "outlet.temperature")))
     return reading.note(key, "from_duty needs the outlet temperature of this stream",
                         "outlet: {temperature: ...} beside it", "add the outlet, or give the flow");
@@ -92,19 +122,18 @@ void find_flow(Reading& reading, const std::string& name, std::optional<MadeStre
   if (!is_reachable(reading, name, stream, other_made->stream)) return;
   const double heat = std::abs(*heat_given_off(reading, name, stream));
   const double factor = reading.entries().at(key).factor;
-  stream.mass_flow = factor * duty->value / heat;
-  reading.settle(key, stream.mass_flow);
   const auto flow_at = [&](const std::optional<double>& end) {
     return end ? std::optional(factor * *end / heat) : std::nullopt;
   };
-  reading.assume(
-      {.key = key,
-       .value = stream.mass_flow,
-       .kind = Kind::mass_flow,
-       .why = fmt::format("derived: {} over the enthalpy between inlet and stated outlet", duty->where),
-       .low = flow_at(duty->low),
-       .high = flow_at(duty->high),
-       .look_in = "datasheet"});
+  take_flow(reading,
+            {.key = key,
+             .value = factor * duty->value / heat,
+             .kind = Kind::mass_flow,
+             .why = fmt::format("derived: {} over the enthalpy between inlet and stated outlet", duty->where),
+             .low = flow_at(duty->low),
+             .high = flow_at(duty->high),
+             .look_in = "datasheet"},
+            stream);
 }
 
 /// An outlet that no flow is found from would be passed over in silence otherwise.

@@ -78,6 +78,7 @@ std::string kind_of(const Field& field) {
     case Form::block:
       return "block";
     case Form::list:
+    case Form::wholes:
       return "list";
     case Form::text:
       return "text";

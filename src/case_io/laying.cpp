@@ -221,6 +221,21 @@ Document with_value(const Document& document, const std::string& key, const std:
   laying.put_leaf(key, Leaf{text, false, at, at});
   if (result.mistakes.size() > document.mistakes.size())
     throw InputError(document.file, {result.mistakes.back()});
+  keep_sheet(document, result);
+  return result;
+}
+
+Document with_other_reading(const Document& document, const std::string& key, const std::string& text) {
+  Document result = with_value(document, key, text);
+  if (!result.sheet) return result;
+  const auto typed = [&](const Document& from) {
+    const auto leaf = from.leaves.find(key);
+    return leaf == from.leaves.end() ? std::pair{std::string(), 1.0}
+                                     : std::pair{leaf->second.text, leaf->second.factor};
+  };
+  // An operating case with a value of its own says nothing of the sheet's.
+  if (typed(document) == typed(*result.sheet))
+    result.sheet = std::make_shared<const Document>(with_value(*result.sheet, key, text));
   return result;
 }
 

@@ -190,6 +190,7 @@ Outcome read_pair(Entry entry) {
   units::Pair& pair = std::get<units::Pair>(read);
   entry.value = std::move(pair.first);
   entry.second = pair.second.si;
+  entry.outlet = std::move(pair.second);
   entry = times_factor(std::move(entry));
   for (const double value : {entry.value.si, entry.second})
     if (auto mistake = out_of_bounds(entry, value)) return *mistake;
@@ -199,9 +200,6 @@ Outcome read_pair(Entry entry) {
 Outcome read_word(Entry entry) {
   const Field& field = *entry.field;
   if (is_one_of(entry.text, field.words)) return entry;
-  if (field.key == "methods.shell_side" && entry.text == "scaled")
-    return misread(field, "the shell side scaled from a sheet is not read yet by this version",
-                   "give the baffles and write bell_delaware or kern");
   const auto near = nearest(entry.text, field.words);
   return misread(field, quoted(entry.text) + " is not known here",
                  near.empty() ? "write one of them" : fmt::format("write {}", near));
@@ -281,6 +279,7 @@ Outcome read_by_form(Entry entry) {
     case Form::fluid:
     case Form::block:
     case Form::list:
+    case Form::wholes:
     case Form::overlay:
       return entry;
   }
@@ -347,9 +346,19 @@ void Reading::take(const std::string& key, Entry entry) {
   entries_.emplace(key, std::move(entry));
 }
 
-/// What the text leaves open by a range or a deviation of its own.
+/// What the text leaves open by a range or a deviation of its own; pairs in either column.
 void Reading::assume_spans(const std::string& key, const Entry& entry) {
-  const units::Value& value = entry.value;
+  assume_span(key, entry, entry.value);
+  if (entry.field->form != Form::pair) return;
+  // Both values of a pair are multiplied alike.
+  units::Value outlet = entry.outlet;
+  outlet.si = entry.second;
+  for (auto* part : {&outlet.low, &outlet.high, &outlet.standard_deviation})
+    if (*part) **part *= entry.factor;
+  assume_span(key, entry, outlet);
+}
+
+void Reading::assume_span(const std::string& key, const Entry& entry, const units::Value& value) {
   const bool has_range = value.low && value.high && value.taken_for_granted.empty();
   if (!has_range && !value.standard_deviation) return;
   Assumption assumption{

@@ -44,6 +44,11 @@ std::vector<Child> children_of(const Document& document, const std::string& bloc
   return children;
 }
 
+bool holds_anything(const Document& document, const std::string& block) {
+  const auto is_below = [&](const auto& item) { return item.first.starts_with(block + '.'); };
+  return std::ranges::any_of(document.leaves, is_below) || std::ranges::any_of(document.blocks, is_below);
+}
+
 /// The document without its overlays.
 Document plain(const Document& document) {
   const auto is_overlay = [](const auto& item) {
@@ -71,7 +76,7 @@ std::vector<Mistake> shape_mistakes(const Document& document) {
     if (found == document.blocks.end()) continue;
     if (found->second.is_list)
       refuse(found->second.at, block, "a list stands here", expected);
-    else if (children_of(document, block).empty())
+    else if (!holds_anything(document, block))
       refuse(found->second.at, block, "the block is empty", expected);
   }
   const auto names = children_of(document, cases_block);
@@ -87,16 +92,31 @@ std::vector<Mistake> shape_mistakes(const Document& document) {
   return mistakes;
 }
 
-Document made(const Document& document, const std::string& operating_case, bool as_is) {
+Document laid(const Document& document, const std::string& operating_case, bool as_is) {
   const auto names = operating_cases(document);
   if (std::ranges::find(names, operating_case) == names.end())
     throw std::invalid_argument("case_io: the file has no operating case '" + operating_case + "'");
   Document result = plain(document);
-  result.of_cases = names;
+  if (document.of_cases.empty()) result.of_cases = names;
   for (Mistake& mistake : shape_mistakes(document)) result.mistakes.push_back(std::move(mistake));
   if (as_is) lay(document, present_block, result);
   lay(document, joined(cases_block, operating_case), result);
   return result;
+}
+
+Document made(const Document& document, const std::string& operating_case, bool as_is) {
+  Document result = laid(document, operating_case, as_is);
+  keep_sheet(document, result);
+  return result;
+}
+
+/// The operating case the sheet speaks of; the first where it names none of the file's.
+std::string case_of_sheet(const Document& document) {
+  const auto names = operating_cases(document);
+  const auto named = document.leaves.find("claims.for");
+  const bool is_known =
+      named != document.leaves.end() && std::ranges::find(names, named->second.text) != names.end();
+  return is_known ? named->second.text : names.front();
 }
 
 /// The reading and the unit it was taken of, as they stand without a case's overlay. Where the
@@ -104,7 +124,9 @@ Document made(const Document& document, const std::string& operating_case, bool 
 void share_anchor(const Document& document, std::vector<Case>& cases) {
   if (!document.blocks.contains("anchor") || !document.blocks.contains(cases_block)) return;
   Document base = plain(document);
+  base.of_cases = operating_cases(document);
   if (document.blocks.contains(present_block)) lay(document, present_block, base);
+  keep_sheet(document, base);
   auto anchor = cases.front().anchor;
   try {
     anchor = build_plain(base).anchor;
@@ -136,6 +158,21 @@ std::vector<Mistake> merged(std::vector<CaseMistake> all, std::size_t case_count
 }
 
 }  // namespace
+
+void keep_sheet(const Document& before, Document& after) {
+  const auto is = [&](const char* key, std::string_view word) {
+    const auto leaf = after.leaves.find(key);
+    return leaf != after.leaves.end() && leaf->second.text == word;
+  };
+  constexpr const char* method = "methods.shell_side";
+  const bool is_scaled = is(method, "scaled");
+  const bool needs_sheet =
+      is_scaled || is("streams.shell_side.flow", "from_duty") || is("streams.tube_side.flow", "from_duty");
+  if (after.sheet || !needs_sheet) return;
+  Document sheet = laid(before, case_of_sheet(before), false);
+  if (is_scaled) sheet.leaves.insert_or_assign(method, after.leaves.at(method));
+  after.sheet = std::make_shared<const Document>(std::move(sheet));
+}
 
 std::vector<std::string> operating_cases(const Document& document) {
   const auto block = document.blocks.find(cases_block);

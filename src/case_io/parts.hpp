@@ -48,6 +48,20 @@ bool knows_density(const Reading& reading, const std::string& side);
 /// The stream of "shell_side" or "tube_side"; empty where it cannot be made.
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 
+/// Takes what goes round the exchanger off the flows, and puts limits on the mixed outlets where the
+/// exchanger has them. Throws InputError.
+void take_bypasses(const Reading& reading, Case& result);
+
+/// Whether the shell side is scaled from the sheet's claims.
+bool is_scaled(const Entries& entries);
+
+/// Notes what that needs and is missing, and what contradicts it.
+void check_scaled(Reading& reading);
+
+/// Puts film and drop scaled from the case the sheet speaks of into a case that was read.
+/// Throws InputError.
+void scale_shell_side(const Document& document, const Case& stated_case, Case& result);
+
 /// The density [kg/m3] that turns the volume flow written at `side`.flow into a mass flow; empty
 /// with a mistake noted.
 std::optional<double> flow_density(Reading& reading, const std::string& side, const fluids::Fluid& fluid,
@@ -55,8 +69,8 @@ std::optional<double> flow_density(Reading& reading, const std::string& side, co
 
 /// The reading the unit is to be tied to; empty where there is none or it cannot be one, which
 /// is noted.
-std::optional<uncertainty::SteadyReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
-                                                    const rating::Stream& tube_side);
+std::optional<AnchorReading> anchor_of(Reading& reading, const rating::Stream& shell_side,
+                                       const rating::Stream& tube_side);
 
 /// Builds the case of a document without overlays. Throws InputError.
 Case build_plain(const Document& document);

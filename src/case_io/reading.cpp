@@ -11,18 +11,17 @@
 namespace dutygauge::case_io {
 namespace {
 
-/// Whether values stand under the key as a block or list.
-bool takes_block(Form form) {
-  return form == Form::block || form == Form::list || form == Form::fluid || form == Form::whole_or_list ||
-         form == Form::texts;
+bool takes_list(Form form) {
+  return form == Form::list || form == Form::whole_or_list || form == Form::wholes || form == Form::texts;
 }
 
-bool takes_list(Form form) {
-  return form == Form::list || form == Form::whole_or_list || form == Form::texts;
+/// Whether values stand under the key as a block or list.
+bool takes_block(Form form) {
+  return form == Form::block || form == Form::fluid || takes_list(form);
 }
 
 bool takes_value(Form form) {
-  return form != Form::block && form != Form::list && form != Form::texts;
+  return form != Form::block && form != Form::list && form != Form::wholes && form != Form::texts;
 }
 
 }  // namespace
@@ -109,13 +108,19 @@ bool Reading::is_at_fault_within(std::string_view key) const {
   return is_at_fault(key) || (next != at_fault_.end() && parent_of(*next) == key);
 }
 
+bool Reading::is_misspelt(std::string_view key) const {
+  for (; !key.empty(); key = parent_of(key))
+    if (suggested_.contains(key)) return true;
+  return false;
+}
+
 std::string Reading::expected_in(const Field& field) const {
   return field.form == Form::block ? keys_of(table_, field.key) : expected_of(field);
 }
 
 void Reading::note_all(const Objections& objections) {
   for (const Objection& objection : objections)
-    if (!is_at_fault_within(objection.key))
+    if (!is_at_fault_within(objection.key) && !is_misspelt(objection.key))
       note(objection.key, objection.what, objection.expected, objection.remedy);
 }
 

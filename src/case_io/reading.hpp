@@ -21,6 +21,7 @@ struct Entry {
   double factor = 1.0;     ///< already in `value` and shown in `text`
   units::Value value{};    ///< of numbers; the first of a pair; the amount of a flow
   double second = 0;       ///< of a pair
+  units::Value outlet{};   ///< the same as written, with its range or deviation
   bool from_duty = false;  ///< a flow that a duty and an outlet give
   units::FlowBasis basis = units::FlowBasis::mass;
   double at_temperature = 0;  ///< [K] where a volume flow is measured, or a property holds
@@ -76,6 +77,8 @@ class Reading {
  private:
   /// Whether a mistake of the key, or of an item of its list, is noted.
   bool is_at_fault_within(std::string_view key) const;
+  /// Whether the key, or a block it stands in, is there under a misspelt name.
+  bool is_misspelt(std::string_view key) const;
   std::string expected_in(const Field& field) const;
   void check_keys();
   void check_key(const std::string& key, const Position& at, bool is_block, bool is_list);
@@ -89,6 +92,7 @@ class Reading {
   void read_leaf(const std::string& key, const Leaf& leaf, const Field& field);
   void take(const std::string& key, Entry entry);
   void assume_spans(const std::string& key, const Entry& entry);
+  void assume_span(const std::string& key, const Entry& entry, const units::Value& value);
   void require_all();
   void require(const Field& field, const std::string& parent);
   Position position_of(std::string_view key) const;

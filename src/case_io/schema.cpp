@@ -80,7 +80,7 @@ ordered_json overlay_of(const FieldTable& table) {
                          {"properties", ordered_json::object()},
                          {"patternProperties",
                           {{"^streams\\.(shell|tube)_side\\.fluid\\.", ordered_json::object()},
-                           {"^exchanger\\.tubes\\.plugged\\.", ordered_json::object()}}}};
+                           {"^exchanger\\.tubes\\.plugged(_per_shell)?\\.", ordered_json::object()}}}};
   for (const Field& field : table.all()) {
     const bool may_differ = is_one_of(field.key.substr(0, field.key.find('.')), blocks_that_may_differ);
     const bool is_listed =
@@ -105,6 +105,8 @@ ordered_json schema_of(const FieldTable& table, const Field& field) {
       json["properties"]["since"] = {{"type", "string"}, {"pattern", "^[0-9]{4}-[0-9]{2}-[0-9]{2}$"}};
   } else if (field.form == Form::whole_or_list) {
     json = {{"anyOf", {whole_number(field), {{"type", "array"}, {"items", whole_number(field)}}}}};
+  } else if (field.form == Form::wholes) {
+    json = {{"type", "array"}, {"items", whole_number(*table.find(field.key + ".#"))}};
   } else if (field.form == Form::fluid) {
     ordered_json family = object_of(table, field.key);
     family["minProperties"] = 1;

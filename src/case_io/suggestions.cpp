@@ -49,6 +49,19 @@ const Field* nearest_child(const FieldTable& table, std::string_view block, std:
   return best;
 }
 
+/// The one key of the block that begins with what was typed: len for length.
+const Field* abbreviated(const FieldTable& table, std::string_view block, std::string_view typed) {
+  constexpr std::size_t shortest = 3;
+  if (typed.size() < shortest) return nullptr;
+  const Field* found = nullptr;
+  for (const Field* field : children(table, block)) {
+    if (!last_segment(field->key).starts_with(typed)) continue;
+    if (found != nullptr) return nullptr;
+    found = field;
+  }
+  return found;
+}
+
 /// A key of that name in another block: the one whose block is nearest.
 const Field* elsewhere(const FieldTable& table, std::string_view key) {
   const auto typed = last_segment(key);
@@ -92,7 +105,9 @@ Suggestion suggest(const FieldTable& table, std::string_view key) {
   if (begins_like_a_number(typed))
     return {"", "a word",
             "inside { } a comma separates keys: write a decimal with a point (0.75 in), not a comma"};
-  if (const Field* near = nearest_child(table, block, typed)) {
+  const Field* near = nearest_child(table, block, typed);
+  if (near == nullptr) near = abbreviated(table, block, typed);
+  if (near != nullptr) {
     const auto name = last_segment(near->key);
     return {joined(block, name), std::string(name), fmt::format("write {}", name)};
   }

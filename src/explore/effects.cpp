@@ -95,8 +95,8 @@ std::vector<std::optional<report::Effect>> effects(const case_io::Document& docu
     const Assumption& one = result.assumed[i];
     const auto found = one.low && one.high ? dial(document, one.key) : std::nullopt;
     if (!found) continue;
-    const std::vector<Point> there = {rated(document, {{*found, *one.low}}),
-                                      rated(document, {{*found, *one.high}})};
+    const std::vector<Point> there = {read_as(document, *found, *one.low),
+                                      read_as(document, *found, *one.high)};
     const bool known = std::ranges::any_of(there, [](const Point& p) { return p.assessment.has_value(); });
     if (known) all[i] = effect_of(*here.assessment, there);
   }

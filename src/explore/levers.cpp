@@ -80,10 +80,15 @@ class Puller {
   }
 
   void unplug() {
-    const std::string key = "exchanger.tubes.plugged";
-    const auto given = document_.leaves.lower_bound(key);
-    if (given == document_.leaves.end() || !given->first.starts_with(key)) return;
-    pulls_.push_back({"plugged tubes renewed", key, case_io::with_value(document_, key, "0")});
+    const std::string key = "exchanger.tubes.plugged";  // and _per_shell, _in_unit
+    case_io::Document renewed = document_;
+    bool is_given = false;
+    for (const auto& [given, leaf] : document_.leaves) {
+      if (!given.starts_with(key)) continue;
+      renewed = case_io::with_value(renewed, given, "0");
+      is_given = true;
+    }
+    if (is_given) pulls_.push_back({"plugged tubes renewed", key, std::move(renewed)});
   }
 
   const case_io::Document& document_;

@@ -25,6 +25,12 @@ service::Service service_of(const case_io::Case& a_case) {
   return service;
 }
 
+service::Holding held(const service::Assessment& running_free, service::Control control) {
+  const auto& required = running_free.margins.required_duty;
+  if (!required) return {{}, "no line of the service asks for a duty"};
+  return service::hold(running_free.problem, control, *required);
+}
+
 report::RatedCase rated(const case_io::Case& a_case) {
   const auto service = service_of(a_case);
   report::RatedCase result{.name = a_case.operating_case,
@@ -33,6 +39,10 @@ report::RatedCase rated(const case_io::Case& a_case) {
                            .findings = a_case.findings};
   const auto& judged = result.design_fouling.findings;
   result.findings.insert(result.findings.end(), judged.begin(), judged.end());
+  if (a_case.control) {
+    result.held = held(result.design_fouling, *a_case.control);
+    result.held_clean = held(result.clean, *a_case.control);
+  }
   return result;
 }
 
@@ -42,7 +52,8 @@ std::size_t governing(const std::vector<report::RatedCase>& cases) {
     const auto& margins = one.design_fouling.margins;
     const auto probability = one.spread ? one.spread->probability : std::nullopt;
     return std::tuple(one.design_fouling.rating.outcome.has_value(), probability.value_or(none),
-                      margins.duty.value_or(none), margins.temperature.value_or(none));
+                      one.design_fouling.verdict.met.value_or(true), margins.duty.value_or(none),
+                      margins.temperature.value_or(none));
   };
   return static_cast<std::size_t>(std::ranges::min_element(cases, {}, room) - cases.begin());
 }
@@ -96,7 +107,10 @@ std::vector<report::AcceptedFinding> take_accepted(Findings& findings,
 std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorReading>& read,
                                             Findings& findings) {
   if (!read) return {};
-  auto anchor = uncertainty::anchor_to(read->unit, read->reading);
+  const auto* found = std::get_if<case_io::FoundFouling>(&read->reading);
+  auto anchor = found ? uncertainty::anchor_to_fouling(read->unit, found->value, found->sigma)
+                      : uncertainty::anchor_to(read->unit, std::get<uncertainty::SteadyReading>(read->reading));
+  if (found && anchor.value) anchor.value->reading.taken = found->taken;
   findings.insert(findings.end(), anchor.findings.begin(), anchor.findings.end());
   if (!anchor.value) return {};
   const auto rated = rating::rate(uncertainty::today(*anchor.value, anchor.value->unit));

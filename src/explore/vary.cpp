@@ -60,6 +60,13 @@ std::string stopper_of(const std::string& key) {
   return key.empty() ? "case" : key;
 }
 
+Point refused(const case_io::InputError& error) {
+  const case_io::Mistake& first = error.mistakes().front();
+  return {.assessment = {},
+          .stopper = stopper_of(first.key),
+          .why = fmt::format("{}: {}", first.key, first.what)};
+}
+
 }  // namespace
 
 std::optional<Dial> dial(const case_io::Document& document, std::string_view key) {
@@ -89,15 +96,9 @@ case_io::Document turned(const case_io::Document& document, const Dial& dial, do
 }
 
 Point rated(const case_io::Document& document) {
-  return rated(document, {});
-}
-
-Point rated(const case_io::Document& document, const std::vector<std::pair<Dial, double>>& turns) {
   Point point;
   try {
-    case_io::Document changed = document;
-    for (const auto& [dial, value] : turns) changed = turned(changed, dial, value);
-    const case_io::Case a_case = case_io::build(changed);
+    const case_io::Case a_case = case_io::build(document);
     service::Service service = a_case.service;
     service.words = a_case.display;
     auto assessment = service::judge(a_case.problem, service);
@@ -110,11 +111,27 @@ Point rated(const case_io::Document& document, const std::vector<std::pair<Dial,
     if (!point.unsettled) point.stopper = range_that_ends(rating);
     point.why = rating.no_result;
   } catch (const case_io::InputError& error) {
-    const case_io::Mistake& first = error.mistakes().front();
-    point.stopper = stopper_of(first.key);
-    point.why = fmt::format("{}: {}", first.key, first.what);
+    point = refused(error);
   }
   return point;
+}
+
+Point rated(const case_io::Document& document, const std::vector<std::pair<Dial, double>>& turns) {
+  case_io::Document changed = document;
+  try {
+    for (const auto& [dial, value] : turns) changed = turned(changed, dial, value);
+  } catch (const case_io::InputError& error) {
+    return refused(error);
+  }
+  return rated(changed);
+}
+
+Point read_as(const case_io::Document& document, const Dial& dial, double value) {
+  try {
+    return rated(case_io::with_other_reading(document, dial.key, typed(dial, value)));
+  } catch (const case_io::InputError& error) {
+    return refused(error);
+  }
 }
 
 report::Running running(const service::Assessment& assessment) {

@@ -18,6 +18,9 @@ Point rated(const case_io::Document& document);
 /// The same with dials turned to values.
 Point rated(const case_io::Document& document, const std::vector<std::pair<Dial, double>>& turns);
 
+/// The same where a value of the file may be another one, of the sheet's own case too.
+Point read_as(const case_io::Document& document, const Dial& dial, double value);
+
 report::Running running(const service::Assessment& assessment);
 report::CaseName name_of(const case_io::Case& a_case);
 

@@ -118,6 +118,16 @@ void assume_lengths_and_flow(const Description& d, double thickness, Assumptions
                        .look_in = "piping drawing"});
 }
 
+void report_vertical(const Description& d, Findings& findings) {
+  if (!d.vertical) return;
+  findings.push_back({.id = "geometry.vertical",
+                      .text =
+                          "the unit stands vertical: forced single-phase flow is rated as in a horizontal "
+                          "one. Slow viscous flow feels natural convection, which then helps or hinders "
+                          "and is not counted; see that vents and drains keep both sides full",
+                      .ground = Ground::method});
+}
+
 /// Both bases of the area, since sheets state either.
 void report_fins(const Description& d, const Exchanger& exchanger, Findings& findings) {
   if (!d.fins) return;
@@ -134,38 +144,6 @@ void report_fins(const Description& d, const Exchanger& exchanger, Findings& fin
        .limit = plain,
        .kind = units::Kind::area,
        .source = "taborek_1983"});
-}
-
-void report_plugging(const Description& d, Findings& findings) {
-  if (has_u_tubes(d) && d.plugged % 2 != 0)
-    findings.push_back(
-        {.id = "geometry.plugged_u_tube",
-         .severity = Severity::should,
-         .text = "{value} plugged holes are not whole U-tubes: a plugged U-tube counts as two holes. "
-                 "The rating takes the holes as given; check whether tubes or holes were counted",
-         .ground = Ground::geometry,
-         .value = static_cast<double>(d.plugged),
-         .limit = static_cast<double>(d.plugged + 1),
-         .kind = units::Kind::count});
-  if (d.plugged_per_pass.empty()) return;
-  const auto [fewest, most] = std::ranges::minmax(d.plugged_per_pass);
-  if (fewest == most) return;
-  const double per_pass = static_cast<double>(d.tube_count) / d.tube_passes;
-  const double open_mean = per_pass - static_cast<double>(d.plugged) / d.tube_passes;
-  findings.push_back(
-      {.id = "geometry.unequal_plugging",
-       // Passes alike within 5 % are what Kern (1950) asks of a tube layout.
-       .severity = most - fewest > 0.05 * per_pass ? Severity::should : Severity::note,
-       .text =
-           fmt::format("{{value}} tubes are plugged in one pass and {{limit}} in another, of about {:.0f} in "
-                       "each. The rating shares the open tubes evenly; in the worst pass the velocity is "
-                       "{:.0f} % higher and the pressure drop about {:.0f} %. Judge that pass by itself",
-                       per_pass, 100.0 * (open_mean / (per_pass - most) - 1.0),
-                       100.0 * (std::pow(open_mean / (per_pass - most), 1.8) - 1.0)),
-       .ground = Ground::geometry,
-       .value = static_cast<double>(most),
-       .limit = static_cast<double>(fewest),
-       .kind = units::Kind::count});
 }
 
 }  // namespace
@@ -188,11 +166,12 @@ Checked<Exchanger> build(const Description& d) {
   exchanger.as_described = d;
   exchanger.shells_in_series = d.shells_in_series;
   exchanger.shells_in_parallel = d.shells_in_parallel;
+  exchanger.tube_side_in_series = d.tube_side_in_series;
   exchanger.flow_direction = d.flow_direction.value_or(FlowDirection::counter);
   exchanger.first_tube_pass = d.first_tube_pass;
   exchanger.tubesheet_thickness = tubesheet_thickness(d);
   exchanger.effective_length = effective_length(d);
-  exchanger.tubes_open = d.tube_count - d.plugged;
+  exchanger.tubes_open = d.tube_count - plugged_in_shell(d);
   exchanger.area_per_shell = outside_per_length(d) * exchanger.effective_length * exchanger.tubes_open;
   exchanger.area = exchanger.area_per_shell * d.shells_in_series * d.shells_in_parallel;
 
@@ -208,8 +187,9 @@ Checked<Exchanger> build(const Description& d) {
   exchanger.tube_side = tube_side(d, exchanger, out.assumed);
   set_metal(d, exchanger);
   set_wall_path(d, exchanger);
-  report_plugging(d, out.findings);
+  report_plugging(d, out.findings, out.assumed);
   report_fins(d, exchanger, out.findings);
+  report_vertical(d, out.findings);
   return out;
 }
 

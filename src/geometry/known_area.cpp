@@ -41,6 +41,7 @@ Exchanger build_by_area(const Description& d) {
   exchanger.tubes_drawn = exchanger.shell_drawn = false;
   exchanger.shells_in_series = d.shells_in_series;
   exchanger.shells_in_parallel = d.shells_in_parallel;
+  exchanger.tube_side_in_series = d.tube_side_in_series;
   exchanger.flow_direction = d.flow_direction.value_or(FlowDirection::counter);
   exchanger.first_tube_pass = d.first_tube_pass;
   exchanger.layer_resistance = *d.wall_resistance;

@@ -82,41 +82,11 @@ void check_letters(const Description& d, Objections& out) {
   if (rears.find(d.rear_head) == std::string_view::npos) say("rear head", d.rear_head, rears);
 }
 
-void check_plugging(const Description& d, Objections& out) {
-  if (d.plugged >= d.tube_count) {
-    out.push_back({"exchanger.tubes.plugged",
-                   fmt::format("{} of {} tubes leave none open", d.plugged, d.tube_count),
-                   "fewer than the tube count", "count the holes of one tubesheet that are plugged"});
-    return;
-  }
-  if (d.tube_passes > d.tube_count - d.plugged)
-    out.push_back({"exchanger.tubes.passes",
-                   fmt::format("{} passes need more tubes than the {} that are open", d.tube_passes,
-                               d.tube_count - d.plugged),
-                   "at least one open tube a pass", "mend the passes, the count or the plugging"});
-  if (d.plugged_per_pass.empty()) return;
-  if (static_cast<int>(d.plugged_per_pass.size()) != d.tube_passes) {
-    out.push_back({"exchanger.tubes.plugged",
-                   fmt::format("{} numbers for {} passes", d.plugged_per_pass.size(), d.tube_passes),
-                   "one number for each tube pass",
-                   "list the plugged tubes pass by pass, or give their sum"});
-    return;
-  }
-  long long sum = 0;
-  for (const int plugged : d.plugged_per_pass) {
-    sum += plugged;
-    if (plugged < 0 || plugged >= static_cast<double>(d.tube_count) / d.tube_passes)
-      out.push_back(
-          {"exchanger.tubes.plugged", fmt::format("{} plugged in one pass", plugged),
-           fmt::format("0 or more, and fewer than the {} tubes of a pass", d.tube_count / d.tube_passes),
-           "list the plugged tubes pass by pass"});
-  }
-  if (sum != d.plugged)
-    out.push_back({"exchanger.tubes.plugged", fmt::format("the passes add up to {}, not {}", sum, d.plugged),
-                   "the same number", "give one or the other"});
-}
-
 void check_passes(const Description& d, Objections& out) {
+  if (d.tube_side_in_series && d.shells_in_parallel < 2)
+    out.push_back({"exchanger.shells.tube_side", "in_series, but nothing is in parallel",
+                   "in_parallel of 2 or more, which only the shell stream shares then",
+                   "leave it out where both streams pass the shells in turn: that is in_series"});
   if (has_u_tubes(d) && d.tube_passes % 2 != 0)
     out.push_back({"exchanger.tubes.passes", fmt::format("{} with rear head U", d.tube_passes),
                    "an even number: a U-tube goes there and back", "mend the passes or the rear head"});

@@ -43,6 +43,14 @@ void set_wall_path(const Description& d, Exchanger& exchanger);
 Objections objections_to_area(const Description& d);
 Exchanger build_by_area(const Description& d);
 
+// --- plugging (plugging.cpp)
+
+/// Holes plugged in one shell, the mean of all shells.
+double plugged_in_shell(const Description& d);
+
+void check_plugging(const Description& d, Objections& out);
+void report_plugging(const Description& d, Findings& findings, Assumptions& assumed);
+
 // --- baffles (baffles.cpp)
 
 /// Baffles of one run, on the straight tubes.

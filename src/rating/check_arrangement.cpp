@@ -13,17 +13,20 @@ using arrangement::Arrangement;
 /// What a single shell of the train sees.
 struct OneShell {
   Arrangement arrangement;
-  double ntu, p, largest;
+  double r, ntu, p, largest;
 };
 
 OneShell one_shell(const Unit& unit, const Outcome& outcome) {
-  OneShell one{unit.arrangement, outcome.ntu_tube, outcome.p_tube, 0};
+  OneShell one{unit.arrangement, outcome.r_tube, outcome.ntu_tube, outcome.p_tube, 0};
+  one.r *= one.arrangement.trains_in_turn;
+  one.ntu /= one.arrangement.trains_in_turn;
+  one.arrangement.trains_in_turn = 1;
   if (unit.arrangement.flow == arrangement::Flow::counter) {
     one.arrangement.shells_in_series = 1;
     one.ntu /= unit.arrangement.shells_in_series;
-    one.p = arrangement::effectiveness(one.arrangement, outcome.r_tube, one.ntu);
   }
-  one.largest = arrangement::largest_effectiveness(one.arrangement, outcome.r_tube);
+  one.p = arrangement::effectiveness(one.arrangement, one.r, one.ntu);
+  one.largest = arrangement::largest_effectiveness(one.arrangement, one.r);
   return one;
 }
 
@@ -63,8 +66,8 @@ void check_slope(const OneShell& one, Findings& findings) {
        .source = "ahmad_1988"});
 }
 
-void check_past_largest(const Unit& unit, const OneShell& one, const Outcome& outcome, Findings& findings) {
-  const double ntu_most = arrangement::ntu_at_largest(one.arrangement, outcome.r_tube);
+void check_past_largest(const Unit& unit, const OneShell& one, Findings& findings) {
+  const double ntu_most = arrangement::ntu_at_largest(one.arrangement, one.r);
   if (!(one.ntu > ntu_most)) return;
   findings.push_back(
       {.id = "arrangement.past_largest",
@@ -79,8 +82,8 @@ void check_past_largest(const Unit& unit, const OneShell& one, const Outcome& ou
        .source = "bowman_1940"});
 }
 
-void check_cross(const OneShell& one, const Outcome& outcome, Findings& findings) {
-  const bool crosses = one.p * (1.0 + outcome.r_tube) > 1.0 + 1e-9;
+void check_cross(const OneShell& one, Findings& findings) {
+  const bool crosses = one.p * (1.0 + one.r) > 1.0 + 1e-9;
   const bool made_for_it = one.arrangement.tube_passes == 1 || one.arrangement.shell_type == 'F' ||
                            one.arrangement.shell_type == 'X' || one.arrangement.tube_passes % 2 == 1;
   if (!crosses || made_for_it) return;
@@ -92,19 +95,19 @@ void check_cross(const OneShell& one, const Outcome& outcome, Findings& findings
                "then flows back; two shells in series are the usual answer",
        .ground = Ground::method,
        .value = one.p,
-       .limit = 1.0 / (1.0 + outcome.r_tube),
+       .limit = 1.0 / (1.0 + one.r),
        .source = "common_practice"});
 }
 
 constexpr double worth_saying = 0.01;
 
 /// Heat that takes the short way through the longitudinal baffle of an F shell.
-void check_longitudinal_baffle(const OneShell& one, const Outcome& outcome, Findings& findings) {
+void check_longitudinal_baffle(const OneShell& one, Findings& findings) {
   if (one.arrangement.shell_type != 'F') return;
   constexpr double usual_conductance = 0.05;
   Arrangement leaky = one.arrangement;
   leaky.baffle_conductance = usual_conductance;
-  const double loss = 1.0 - arrangement::effectiveness(leaky, outcome.r_tube, one.ntu) / one.p;
+  const double loss = 1.0 - arrangement::effectiveness(leaky, one.r, one.ntu) / one.p;
   findings.push_back(
       {.id = "arrangement.longitudinal_baffle",
        .severity = loss > 0.05 ? Severity::should : Severity::note,
@@ -120,7 +123,7 @@ void check_longitudinal_baffle(const OneShell& one, const Outcome& outcome, Find
 
 /// Banks side by side never share the flows quite evenly.
 void check_split(const Unit& unit, const Outcome& outcome, Findings& findings) {
-  const int banks = unit.problem->exchanger.shells_in_parallel;
+  const int banks = unit.problem->exchanger.tube_banks();
   if (banks < 2) return;
   std::vector<arrangement::BankShare> shares(static_cast<std::size_t>(banks),
                                              {1.0 / banks, 1.0 / banks, 1.0 / banks});
@@ -150,9 +153,9 @@ void check_arrangement(const Unit& unit, const Outcome& outcome, Findings& findi
   const OneShell one = one_shell(unit, outcome);
   check_correction(outcome, findings);
   check_slope(one, findings);
-  check_past_largest(unit, one, outcome, findings);
-  check_cross(one, outcome, findings);
-  check_longitudinal_baffle(one, outcome, findings);
+  check_past_largest(unit, one, findings);
+  check_cross(one, findings);
+  check_longitudinal_baffle(one, findings);
   check_split(unit, outcome, findings);
 }
 
@@ -162,7 +165,7 @@ void check_few_baffles(const Unit& unit, const Outcome& outcome, Findings& findi
   const OneShell one = one_shell(unit, outcome);
   const int baffles = unit.problem->exchanger.shell_side.baffles;
   if (one.arrangement.shell_type != 'E' || baffles < 1 || baffles > 10) return;
-  const double p = arrangement::effectiveness_with_baffles(one.arrangement, outcome.r_tube, one.ntu, baffles);
+  const double p = arrangement::effectiveness_with_baffles(one.arrangement, one.r, one.ntu, baffles);
   const double loss = 1.0 - p / one.p;
   if (loss <= worth_saying) return;
   findings.push_back(

@@ -57,7 +57,8 @@ shellside::Film shell_film(const Unit& unit, const fluids::State& bulk, const fl
 
 tubeside::PressureDrop tube_drop(const Unit& unit, const Local& at) {
   const Problem& problem = *unit.problem;
-  const int in_series = problem.exchanger.shells_in_series;
+  const geometry::Exchanger& exchanger = problem.exchanger;
+  const int in_series = exchanger.shells_in_series * (exchanger.shells_in_parallel / exchanger.tube_banks());
   if (const auto& law = problem.tube_side.drop_law)
     return {.friction = problem.factors.tube_drop * law->at(whole(unit, unit.tube_flow), at.tube_bulk)};
   if (!problem.exchanger.tubes_drawn) return {};

@@ -145,7 +145,7 @@ bool March::solve_enthalpies(std::vector<double>& solution) const {
 /// Puts minus `factor` times the heat gained at unknown `at` into the equation `row`.
 void March::add_heat(int row, int at, bool tube_side, double factor, Triplets& entries,
                      Eigen::VectorXd& right) const {
-  const double bank_area = unit_.problem->exchanger.area / unit_.problem->exchanger.shells_in_parallel;
+  const double bank_area = unit_.problem->exchanger.area / unit_.problem->exchanger.tube_banks();
   for (int m : meetings_at_[index(at)]) {
     const Meeting& meeting = meetings_[index(m)];
     const fluids::State& t = states_[index(meeting.tube_unknown)];

@@ -88,9 +88,11 @@ void fill_profile(const Unit& unit, const March& march, Outcome& outcome) {
                                .u = at.u_dirty,
                                .flux = at.u_dirty * (at.shell_bulk.temperature - at.tube_bulk.temperature)});
   }
+  const auto in_series = static_cast<std::size_t>(unit.problem->exchanger.shells_in_series);
   for (std::size_t k = 0; k < network.shell_end.size(); ++k)
     outcome.between_shells.push_back(
-        {.position = static_cast<int>(k) + 1,
+        {.bank = static_cast<int>(k / in_series) + 1,
+         .position = static_cast<int>(k % in_series) + 1,
          .shell_outlet = outlet_after(unit.problem->shell_side, march.mixed_enthalpy(network.shell_end[k]) *
                                                                     unit.problem->shell_side.mass_flow),
          .tube_outlet = outlet_after(unit.problem->tube_side, march.mixed_enthalpy(network.tube_end[k]) *

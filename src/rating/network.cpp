@@ -16,31 +16,38 @@ class Builder {
   Builder(const geometry::Exchanger& exchanger, int slices)
       : shell_type_(arrangement_of(exchanger)),
         parallel_(shell_type_.flow == arrangement::Flow::parallel),
-        area_(1.0 / exchanger.shells_in_series) {
-    shell_type_.shells_in_series = 1;
+        in_series_(exchanger.shells_in_series),
+        trains_(shell_type_.trains_in_turn),
+        area_(1.0 / (in_series_ * trains_)) {
+    shell_type_.shells_in_series = shell_type_.trains_in_turn = 1;
     network_.slices = slices;
-    network_.tube_end.resize(static_cast<std::size_t>(exchanger.shells_in_series));
-    network_.shell_end.resize(static_cast<std::size_t>(exchanger.shells_in_series));
+    network_.tube_end.resize(index(in_series_ * trains_));
+    network_.shell_end.resize(index(in_series_ * trains_));
   }
 
-  Network build(int shells) {
-    // Lines first know where they run, then what feeds them: the tube stream meets
-    // the shells in reverse order unless the whole train runs in parallel flow.
-    for (shell_ = 0; shell_ < shells; ++shell_) add_shell();
-    Feeds shell_stream, tube_stream;
-    for (int k = 0; k < shells; ++k) {
-      feed(entries_[index(k)].shell, shell_stream);
-      shell_stream = network_.shell_end[index(k)];
-      const int t = parallel_ ? k : shells - 1 - k;
-      feed(entries_[index(t)].tube, tube_stream);
-      tube_stream = network_.tube_end[index(t)];
-    }
-    network_.shell_outlet = shell_stream;
-    network_.tube_outlet = tube_stream;
+  Network build() {
+    // Lines first know where they run, then what feeds them.
+    for (shell_ = 0; shell_ < in_series_ * trains_; ++shell_) add_shell();
+    for (int train = 0; train < trains_; ++train) join_train(train * in_series_);
     return std::move(network_);
   }
 
  private:
+  /// The tube stream meets the shells of a train in reverse order unless the whole train runs in
+  /// parallel flow; it goes on to the next train, and each train has its share of the shell stream.
+  void join_train(int first) {
+    Feeds shell_stream;
+    for (int k = 0; k < in_series_; ++k) {
+      feed(entries_[index(first + k)].shell, shell_stream);
+      shell_stream = network_.shell_end[index(first + k)];
+      const int t = first + (parallel_ ? k : in_series_ - 1 - k);
+      feed(entries_[index(t)].tube, network_.tube_outlet);
+      network_.tube_outlet = network_.tube_end[index(t)];
+    }
+    for (const Feed& leaving : shell_stream)
+      network_.shell_outlet.push_back({leaving.line, leaving.share / trains_});
+  }
+
   struct Entries {
     std::vector<int> shell, tube;  ///< lines that take what enters the shell
   };
@@ -159,6 +166,7 @@ class Builder {
 
   arrangement::Arrangement shell_type_;  ///< of one shell
   bool parallel_;
+  int in_series_, trains_;
   double area_;  ///< of one shell, share of the bank
   int shell_ = 0;
   std::vector<Entries> entries_;
@@ -173,7 +181,7 @@ double point_weight(int i, int slices) {
 }
 
 Network connect(const geometry::Exchanger& exchanger, int slices) {
-  return Builder(exchanger, slices).build(exchanger.shells_in_series);
+  return Builder(exchanger, slices).build();
 }
 
 }  // namespace dutygauge::rating

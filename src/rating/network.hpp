@@ -18,7 +18,7 @@ struct Line {
   bool tube_side;
   double flow;              ///< share of the bank's flow of that side
   std::vector<Feed> feeds;  ///< empty: the stream's inlet
-  int shell = 0;            ///< of the train, counted along the shell stream
+  int shell = 0;            ///< counted along the shell stream, train by train
   int pass = 0;             ///< tube pass, or run of the shell stream
 };
 
@@ -40,7 +40,7 @@ struct Field {
   double area;                            ///< share of one bank's surface
 };
 
-/// One bank of shells in series.
+/// One bank of shells in series; several, where the tube stream passes them in turn.
 struct Network {
   int slices = 0;  ///< of each line; a line has 2 slices + 1 points
   std::vector<Line> lines;

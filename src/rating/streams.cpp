@@ -40,7 +40,7 @@ Unit prepare(const Problem& problem) {
   if (exchanger.shell_drawn)
     unit.bundle = shellside::prepare(exchanger.shell_side, problem.methods.shell_side);
   unit.arrangement = arrangement_of(exchanger);
-  unit.tube_flow = problem.tube_side.mass_flow / exchanger.shells_in_parallel;
+  unit.tube_flow = problem.tube_side.mass_flow / exchanger.tube_banks();
   unit.shell_flow = problem.shell_side.mass_flow / exchanger.shells_in_parallel;
   unit.tube_wall_range =
       fluids::valid_temperatures(problem.tube_side.fluid, problem.tube_side.inlet_pressure);
@@ -73,7 +73,8 @@ arrangement::Arrangement arrangement_of(const geometry::Exchanger& exchanger) {
                                                                                 : arrangement::Flow::counter,
           .first_tube_pass = exchanger.first_tube_pass == geometry::FirstTubePass::with_shell_flow
                                  ? arrangement::FirstTubePass::with_shell_flow
-                                 : arrangement::FirstTubePass::against_shell_flow};
+                                 : arrangement::FirstTubePass::against_shell_flow,
+          .trains_in_turn = exchanger.shells_in_parallel / exchanger.tube_banks()};
 }
 
 bool shell_side_is_hot(const Problem& problem) {

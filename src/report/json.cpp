@@ -7,27 +7,22 @@
 #include <stdexcept>
 #include <string>
 
+#include "along_json.hpp"
+#include "anchor_json.hpp"
 #include "dutygauge/report.hpp"
 #include "dutygauge/sources.hpp"
-#include "anchor_json.hpp"
 #include "spread_json.hpp"
 #include "words.hpp"
 
 namespace dutygauge::report {
 namespace {
 
-using Json = nlohmann::ordered_json;
 using units::Kind;
 
 constexpr int schema_version = 1;
 
 double celsius(double kelvin) {
   return units::from_si(kelvin, "degC", Kind::temperature);
-}
-
-// SI as the result shows it: temperatures in degC, everything else as it is.
-double in_json_unit(double si, Kind kind) {
-  return kind == Kind::temperature ? celsius(si) : si;
 }
 
 Json or_null(const std::optional<double>& value) {
@@ -171,19 +166,22 @@ Json margins(const service::Margins& margins) {
 }
 
 // What each state and each operating case says.
-Json state(const service::Assessment& assessment, const MaybeSpread& spread) {
+Json state(const service::Assessment& assessment, const MaybeSpread& spread,
+           const std::optional<service::Holding>& held) {
   return {{"verdict", verdict(assessment, spread)}, {"thermal", thermal(assessment)},
           {"tube_side", tube_side(assessment)},     {"shell_side", shell_side(assessment)},
-          {"margins", margins(assessment.margins)}, {"spread", spread_json(spread)}};
+          {"margins", margins(assessment.margins)}, {"spread", spread_json(spread)},
+          {"control", control_json(held)}};
 }
 
 // One case with its states. Results made of a single assessment have no case list.
 Json operating_case(const RatedCase& one) {
-  Json json = state(one.design_fouling, one.spread);
+  Json json = state(one.design_fouling, one.spread, one.held);
   const Json fouled = json;
-  json["states"] = {{"clean", state(one.clean, one.spread_clean)}, {"design_fouling", fouled}};
+  json["states"] = {{"clean", state(one.clean, one.spread_clean, one.held_clean)},
+                    {"design_fouling", fouled}};
   if (one.today) {
-    json["states"]["today"] = state(one.today->assessment, one.today->spread);
+    json["states"]["today"] = state(one.today->assessment, one.today->spread, {});
     json["states"]["today"]["change_since_reading"] = change_json(one.today->change);
   }
   return json;
@@ -192,12 +190,12 @@ Json operating_case(const RatedCase& one) {
 Json operating_cases(const Result& result) {
   Json json = Json::object();
   for (const auto& one : result.cases) json[one.name] = operating_case(one);
-  if (result.cases.empty()) json["base"] = state(result.assessment, result.spread);
+  if (result.cases.empty()) json["base"] = state(result.assessment, result.spread, {});
   return json;
 }
 
 Json states(const Result& result) {
-  if (result.cases.empty()) return {{"design_fouling", state(result.assessment, result.spread)}};
+  if (result.cases.empty()) return {{"design_fouling", state(result.assessment, result.spread, {})}};
   return operating_case(result.cases[result.governing])["states"];
 }
 
@@ -210,32 +208,6 @@ Json solutions(const service::Assessment& assessment) {
     return duty ? Json{{"duty_W", *duty}} : Json(nullptr);
   };
   return {{"mean", one(assessment.rating.mean_duty)}, {"march", one(assessment.rating.march_duty)}};
-}
-
-Json between_shells(const service::Assessment& assessment) {
-  Json list = Json::array();
-  if (!assessment.rating.outcome) return list;
-  for (const auto& shell : assessment.rating.outcome->between_shells)
-    for (int bank = 1; bank <= assessment.problem.exchanger.shells_in_parallel; ++bank)
-      list.push_back({{"shell", fmt::format("{}.{}", bank, shell.position)},
-                      {"shell_side_outlet_degC", in_json_unit(shell.shell_outlet, units::Kind::temperature)},
-                      {"tube_side_outlet_degC", in_json_unit(shell.tube_outlet, units::Kind::temperature)}});
-  return list;
-}
-
-Json profile(const service::Assessment& assessment) {
-  Json list = Json::array();
-  if (!assessment.rating.outcome) return list;
-  for (const auto& at : assessment.rating.outcome->profile)
-    list.push_back({{"shell", at.shell},
-                    {"pass", at.pass},
-                    {"position", at.position},
-                    {"tube_side_degC", in_json_unit(at.tube, units::Kind::temperature)},
-                    {"shell_side_degC", in_json_unit(at.shell_side, units::Kind::temperature)},
-                    {"wall_degC", in_json_unit(at.wall, units::Kind::temperature)},
-                    {"u_W_m2K", at.u},
-                    {"flux_W_m2", at.flux}});
-  return list;
 }
 
 std::string_view margin_word(Effect::Margin margin) {
@@ -366,29 +338,32 @@ std::string one_line(const Json& json) {
 
 std::string json(const Result& result) {
   const auto& assessment = result.assessment;
-  return one_line({{"dutygauge", DUTYGAUGE_VERSION},
-                   {"schema_version", schema_version},
-                   {"input_sha256", result.input_sha256},
-                   {"case", {{"file", result.file}, {"title", result.title}, {"tag", result.tag}}},
-                   {"operating_case", name_of_case(result)},
-                   {"verdict", verdict(assessment, result.spread)},
-                   {"thermal", thermal(assessment)},
-                   {"resistances_m2K_W", resistances(assessment)},
-                   {"tube_side", tube_side(assessment)},
-                   {"shell_side", shell_side(assessment)},
-                   {"margins", margins(assessment.margins)},
-                   {"spread", spread_json(result.spread)},
-                   {"solutions", solutions(assessment)},
-                   {"states", states(result)},
-                   {"operating_cases", operating_cases(result)},
-                   {"anchor", anchor_json(result.anchored)},
-                   {"assumed", assumed(result)},
-                   {"levers", levers(result.levers)},
-                   {"findings", findings(result)},
-                   {"claims", claims(result.claims)},
-                   {"inputs", inputs(result.inputs)},
-                   {"between_shells", between_shells(assessment)},
-                   {"profile", profile(assessment)}});
+  return one_line(
+      {{"dutygauge", DUTYGAUGE_VERSION},
+       {"schema_version", schema_version},
+       {"input_sha256", result.input_sha256},
+       {"case", {{"file", result.file}, {"title", result.title}, {"tag", result.tag}}},
+       {"operating_case", name_of_case(result)},
+       {"present_since", result.present_since.empty() ? Json(nullptr) : Json(result.present_since)},
+       {"verdict", verdict(assessment, result.spread)},
+       {"thermal", thermal(assessment)},
+       {"resistances_m2K_W", resistances(assessment)},
+       {"tube_side", tube_side(assessment)},
+       {"shell_side", shell_side(assessment)},
+       {"margins", margins(assessment.margins)},
+       {"spread", spread_json(result.spread)},
+       {"control", result.cases.empty() ? Json(nullptr) : control_json(result.cases[result.governing].held)},
+       {"solutions", solutions(assessment)},
+       {"states", states(result)},
+       {"operating_cases", operating_cases(result)},
+       {"anchor", anchor_json(result.anchored)},
+       {"assumed", assumed(result)},
+       {"levers", levers(result.levers)},
+       {"findings", findings(result)},
+       {"claims", claims(result.claims)},
+       {"inputs", inputs(result.inputs)},
+       {"between_shells", between_shells_json(assessment)},
+       {"profile", profile_json(assessment)}});
 }
 
 std::string error_json(const std::string& file, const std::vector<std::string>& lines) {

@@ -16,6 +16,8 @@ void answer_of_cases(Page& page, const Result& result);
 void how_much_of_cases(Page& page, const Result& result);
 void how_much(Page& page, const Result& result);
 void how_sure(Page& page, const Result& result);
+/// How a control holds exactly the required duty; nothing without one.
+void control(Page& page, const Result& result);
 void what_limits(Page& page, const Result& result);
 void levers(Page& page, const Result& result);
 /// The assumptions by what they are worth; page one, where effects are known.

@@ -61,6 +61,7 @@ std::string text(const Result& result, const TextOptions& options) {
     page.blank();
     what_limits(page, result);
     levers(page, result);
+    control(page, result);
   }
   claims(page, result, options);
   assumed(page, result, options);

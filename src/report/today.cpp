@@ -72,9 +72,14 @@ std::vector<std::string> today_in_words(const Result& result) {
   const auto& anchored = *result.anchored;
   const Figures figures(result.display);
   const std::string taken = anchored.anchor.reading.taken;
-  std::vector<std::string> said{fmt::format(
-      "Today is the unit of the reading{}: {}; {}.", taken.empty() ? "" : " of " + ascii(taken),
-      in_words(anchored.anchor.closing), explained(anchored, figures))};
+  const std::string when = taken.empty() ? "" : " of " + ascii(taken);
+  std::vector<std::string> said{
+      anchored.anchor.resistance_sigma > 0.0
+          ? fmt::format("Today is the unit with the fouling that its record{} has shown, {} +- {}.", when,
+                        figures.number(anchored.anchor.resistance, Kind::fouling_resistance, 3),
+                        figures.with_unit(anchored.anchor.resistance_sigma, Kind::fouling_resistance))
+          : fmt::format("Today is the unit of the reading{}: {}; {}.", when, in_words(anchored.anchor.closing),
+                        explained(anchored, figures))};
   const Side side = followed(result);
   const bool shell = side == Side::shell;
   std::vector<std::string> changes;

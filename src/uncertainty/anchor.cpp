@@ -201,6 +201,33 @@ Checked<std::optional<Anchor>> anchor_to(const rating::Problem& unit, const Stea
   return {anchor, std::move(findings), {}};
 }
 
+Checked<std::optional<Anchor>> anchor_to_fouling(const rating::Problem& unit, double fouling, double sigma) {
+  const auto rated = rating::rate(with_resistance(unit, unit, fouling));
+  if (!rated.outcome)
+    return {{},
+            {{.id = "anchor.no_result",
+              .severity = Severity::must,
+              .text = "with the fouling given for today, {value}, the unit has no result: " + rated.no_result +
+                      "; check the fouling, and the flows and inlets of the case",
+              .ground = Ground::arithmetic,
+              .value = fouling,
+              .kind = units::Kind::fouling_resistance}},
+            {}};
+  const auto& outcome = *rated.outcome;
+  Anchor anchor{.reading = {.shell_side = {unit.shell_side.mass_flow, unit.shell_side.inlet_temperature,
+                                           outcome.shell_outlet},
+                            .tube_side = {unit.tube_side.mass_flow, unit.tube_side.inlet_temperature,
+                                          outcome.tube_outlet},
+                            .temperature_sigma = 0.0,
+                            .flow_sigma = 0.0},
+                .unit = unit,
+                .at_reading = with_resistance(unit, unit, 0.0),
+                .duty = outcome.duty,
+                .resistance = fouling,
+                .resistance_sigma = sigma};
+  return {anchor, {}, {}};
+}
+
 rating::Problem today(const Anchor& anchor, rating::Problem problem) {
   const rating::Problem like = problem;
   factor_of(problem, anchor.film_side) *= anchor.film_factor;

@@ -15,23 +15,28 @@ double triangular(double p) {
   return p < 0.5 ? half_width * (std::sqrt(2.0 * p) - 1.0) : half_width * (1.0 - std::sqrt(2.0 * (1.0 - p)));
 }
 
+/// A property that is wrong is so too where the films and drops scaled from it hold.
+void scale_property(rating::Stream& stream, double fluids::Scale::*of_fluid, double fluids::State::*of_state,
+                    double value) {
+  stream.fluid.scale.*of_fluid *= value;
+  if (stream.film_law && stream.film_law->at_state) (*stream.film_law->at_state).*of_state *= value;
+  if (stream.drop_law && stream.drop_law->at_state) (*stream.drop_law->at_state).*of_state *= value;
+}
+
 void apply_to_stream(Varied varied, double value, rating::Stream& stream) {
+  using fluids::Scale, fluids::State;
   switch (varied) {
     case Varied::fouling:
       stream.fouling_resistance *= value;
       return;
     case Varied::density:
-      stream.fluid.scale.density *= value;
-      return;
+      return scale_property(stream, &Scale::density, &State::density, value);
     case Varied::heat_capacity:
-      stream.fluid.scale.heat_capacity *= value;
-      return;
+      return scale_property(stream, &Scale::heat_capacity, &State::heat_capacity, value);
     case Varied::conductivity:
-      stream.fluid.scale.conductivity *= value;
-      return;
+      return scale_property(stream, &Scale::conductivity, &State::conductivity, value);
     case Varied::viscosity:
-      stream.fluid.scale.viscosity *= value;
-      return;
+      return scale_property(stream, &Scale::viscosity, &State::viscosity, value);
     case Varied::flow:
       stream.mass_flow *= value;
       return;
@@ -60,10 +65,10 @@ double deviation(Distribution distribution, double deviate) {
 
 double drawn(const Source& source, double deviate) {
   const bool moved = source.varied == Varied::inlet_temperature || source.varied == Varied::read_inlet ||
-                     source.varied == Varied::read_outlet;
+                     source.varied == Varied::read_outlet || source.varied == Varied::found_fouling;
   if (source.distribution != Distribution::lognormal)
     return (moved ? 0.0 : 1.0) + source.sigma * deviation(source.distribution, deviate);
-  if (moved) throw std::invalid_argument("uncertainty::drawn: a temperature has no lognormal error");
+  if (moved) throw std::invalid_argument("uncertainty::drawn: what is moved has no lognormal error");
   return std::exp(deviate * std::sqrt(std::log1p(source.sigma * source.sigma)));
 }
 

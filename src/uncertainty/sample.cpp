@@ -42,8 +42,13 @@ std::optional<rating::Problem> tied(const Question& question, std::span<const do
   rating::Problem problem = question.problem;
   rating::Problem there = question.anchor->at_reading;
   SteadyReading reading = question.anchor->reading;
+  double more = 0.0;  // of a fouling that was given
   for (std::size_t i = 0; i < deviates.size(); ++i) {
     const Source& source = question.sources[i];
+    if (source.varied == Varied::found_fouling) {
+      more += drawn(source, deviates[i]);
+      continue;
+    }
     if (is_of_reading(source)) {
       apply(source, deviates[i], reading);
       continue;
@@ -56,7 +61,7 @@ std::optional<rating::Problem> tied(const Question& question, std::span<const do
   there.methods.solution = rating::Solution::mean;
   const auto needed = rating::needed_for(there, duties.weighted).value;
   if (!needed) return {};
-  return with_resistance(std::move(problem), question.problem, needed->fouling_spare);
+  return with_resistance(std::move(problem), question.problem, needed->fouling_spare + more);
 }
 
 std::optional<Sample> sample_of(const Question& question, std::span<const double> deviates) {

@@ -1,5 +1,6 @@
 #include <cmath>
 
+#include "dutygauge/rating/scaled.hpp"
 #include "dutygauge/uncertainty.hpp"
 
 namespace dutygauge::uncertainty {
@@ -31,6 +32,12 @@ constexpr Scatter shell_drop{0.30, "palen_taborek_1969"};             // Re > 10
 constexpr Scatter shell_drop_less_known{0.40, "palen_taborek_1969"};  // slower, F shell, gaps assumed
 constexpr Scatter shell_drop_kern{0.50, "kern_1950"};
 
+// Backed out of a sheet's U and drop: another's methods for gaps we do not know, less our own tube
+// film, and the exponents of the flow, each unknown by some 0.1 and 0.2. Our own choice.
+constexpr Scatter shell_film_scaled{0.30, "common_practice"};
+constexpr Scatter shell_drop_scaled{0.45, "common_practice"};
+constexpr double film_exponent_doubt = 0.10, drop_exponent_doubt = 0.20;
+
 constexpr Scatter wall{0.05, "common_practice"};     // alloys
 constexpr Scatter fouling{0.40, "common_practice"};  // chosen from a table: 0.35 to 0.5
 
@@ -52,13 +59,23 @@ Scatter of_tube_film(double reynolds) {
   return reynolds > 2300.0 ? tube_film_transition : tube_film_laminar;
 }
 
+/// Grown with the distance in flow from where the sheet's numbers hold.
+Scatter farther(const Scatter& there, double exponent_doubt, double flow_ratio) {
+  return {std::hypot(there.sigma, exponent_doubt * std::log(flow_ratio)), there.source};
+}
+
 Scatter of_shell_film(const rating::Problem& problem, double reynolds) {
+  if (rating::is_scaled(problem))
+    return farther(shell_film_scaled, film_exponent_doubt,
+                   problem.shell_side.mass_flow / problem.shell_side.film_law->at_flow);
   if (problem.methods.shell_side == shellside::Method::kern) return shell_film_kern;
   if (reynolds < 100.0) return shell_film_slow;
   return gaps_are_known(problem.exchanger.as_described) ? shell_film : shell_film_assumed_gaps;
 }
 
 Scatter of_shell_drop(const rating::Problem& problem, double reynolds) {
+  if (const auto& law = problem.shell_side.drop_law; law && law->at_state)
+    return farther(shell_drop_scaled, drop_exponent_doubt, problem.shell_side.mass_flow / law->at_flow);
   if (problem.methods.shell_side == shellside::Method::kern) return shell_drop_kern;
   const bool known = reynolds > 1000.0 && problem.exchanger.shell_side.shell_type != 'F' &&
                      gaps_are_known(problem.exchanger.as_described);
@@ -161,11 +178,19 @@ std::vector<Source> sources_of_today(const Anchor& anchor, const rating::Problem
       made.distribution = Distribution::normal;
       sources.push_back(std::move(made));
     };
+    if (anchor.resistance_sigma > 0.0) continue;
     if ((shell ? reading.shell_side : reading.tube_side).mass_flow)
       of_reading(Varied::read_flow, "flow as read", reading.flow_sigma);
     of_reading(Varied::read_inlet, "inlet as read", reading.temperature_sigma);
     of_reading(Varied::read_outlet, "outlet as read", reading.temperature_sigma);
   }
+  if (anchor.resistance_sigma > 0.0)
+    sources.push_back({.name = "the fouling found",
+                       .key = "found_fouling",
+                       .varied = Varied::found_fouling,
+                       .sigma = anchor.resistance_sigma,
+                       .distribution = Distribution::normal,
+                       .source = "common_practice"});
   return sources;
 }
 

@@ -40,6 +40,7 @@ struct Anchor {
   double closure = 0, closure_sigma = 0;          ///< hot/cold - 1, and what it may be
   Closing closing = Closing::untested;
   double resistance = 0;   ///< that explains the duty beside clean films, outside area [m2.K/W]
+  double resistance_sigma = 0;  ///< of a fouling that was given, beside what the reading leaves [m2.K/W]
   double film_factor = 1;  ///< above 1: the clean unit does less than was read; films are better
   Side film_side = Side::shell;  ///< whose film it multiplies: the one that is known less well
 };
@@ -51,6 +52,12 @@ struct Anchor {
 /// further apart than three standard deviations, or where nothing explains the duty.
 /// Needs: at least one flow; each stream's temperatures inside its fluid's range.
 Checked<std::optional<Anchor>> anchor_to(const rating::Problem& unit, const SteadyReading& reading);
+
+/// Ties a unit to a fouling that its record has shown (outside area, [m2.K/W]) and one standard
+/// deviation of it: as if read, without error, at the unit's own flows and inlets. The films'
+/// own errors are in the fouling found with them and drop out there. Empty with a `must`
+/// finding where the unit has no result with it.
+Checked<std::optional<Anchor>> anchor_to_fouling(const rating::Problem& unit, double fouling, double sigma);
 
 /// A problem of the same unit as it is today: clean films with the factor found, the
 /// resistance found in the place of its foulings and divided between the sides as they are.
