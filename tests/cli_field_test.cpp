@@ -37,7 +37,7 @@ bool contains(const std::string& text, const std::string& part) {
 TEST_CASE("cli: field says what was read, used and dropped") {
   const auto ran = field_of({"--json", data + "A.yaml", data + "A-readings.csv"});
   CHECK(ran.err.empty());
-  CHECK(ran.status == Status::done);
+  CHECK(ran.status == Status::not_met);  // its service is lost since September
   const auto json = nlohmann::json::parse(ran.out);
   CHECK(json.at("rows").at("read") == 8760);
   CHECK(json.at("rows").at("dropped").at("off_line") == 96);
@@ -66,7 +66,7 @@ TEST_CASE("cli: field on a page fits it and says how the files were understood")
 TEST_CASE("cli: field writes every row of the series, used or not") {
   const Written target("");
   const auto ran = field_of({data + "A.yaml", data + "A-readings.csv", "--csv", target.path, "--force"});
-  CHECK(ran.status == Status::done);
+  CHECK(ran.status == Status::not_met);
   const auto rows = support::read_csv(target.path);
   REQUIRE(rows.size() == 8760);
   CHECK(rows[0].at("time") == "2021-01-01T00:00:00Z");
@@ -78,6 +78,24 @@ TEST_CASE("cli: field writes every row of the series, used or not") {
   }
   CHECK(field_of({data + "A.yaml", data + "A-readings.csv", "--csv", target.path}).status ==
         Status::input_at_fault);
+}
+
+TEST_CASE("cli: field writes a page for a browser beside its page, or instead of it") {
+  const Written target("");
+  const std::vector<std::string> words = {data + "B.yaml", data + "B-readings.csv"};
+  auto to_file = words;
+  to_file.insert(to_file.end(), {"--html", target.path, "--force"});
+  const auto ran = field_of(to_file);
+  CHECK(ran.status == Status::done);  // B still does its duty
+  CHECK(contains(ran.out, "ANSWER"));
+  const std::string html = support::read_text(target.path);
+  CHECK(html.starts_with("<!doctype html>"));
+  CHECK(contains(html, "Never open or isolate on this result alone."));
+  to_file.pop_back();
+  CHECK(field_of(to_file).status == Status::input_at_fault);  // it exists
+  auto to_out = words;
+  to_out.insert(to_out.end(), {"--html", "-"});
+  CHECK(field_of(to_out).out == html);
 }
 
 TEST_CASE("cli: a file of readings at fault is status 2 with its place") {

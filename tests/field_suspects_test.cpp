@@ -119,6 +119,23 @@ TEST_CASE("field: the two bad instruments of a simulated year are found, and its
   }
 }
 
+TEST_CASE("field: all faults of a record come in one go, each once") {
+  const field::Plant plant(plants::problem(plants::oil_preheater));
+  const auto days = simulated::daily(plant, oil_instruments, simulated::running_hours("B"));
+  // Where the closure was seen to step, the cleaning and a load change among them.
+  const double steps[] = {240.0, 119.0, 58.0, 122.0};
+  const auto accusations = field::accuse(plant, oil_instruments, days, steps);
+  REQUIRE(accusations.size() == 2);
+  CHECK_FALSE(accusations[0].drifts);
+  CHECK(accusations[1].drifts);
+  const auto faults = field::faults_of(accusations);
+  REQUIRE(faults.size() == 2);
+  CHECK(faults[0].channel == Channel::cold_out);
+  CHECK(faults[1].channel == Channel::hot_flow);
+  // No step seen, none accused: the shift then only spoils the drift.
+  for (const field::Accusation& a : field::accuse(plant, oil_instruments, days, {})) CHECK(a.drifts);
+}
+
 TEST_CASE("field: honest instruments are not accused") {
   for (const char* unit : {"A", "G"}) {
     CAPTURE(unit);

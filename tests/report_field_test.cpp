@@ -143,6 +143,7 @@ TEST_CASE("report: two readings of one record stand side by side") {
   const std::string page = report::text(about, result);
   CHECK(has(page, "SAME EITHER WAY?"));
   CHECK(has(page, "if the hot meter is right"));
+  CHECK(has(page, "if the cold meter is right (used above)"));
   CHECK(has(page, "-> NOT THE SAME"));
   CHECK(has(page, "Settle first: the advice depends on which instrument is right"));
   // Nearly alike: the same advice.
@@ -151,6 +152,20 @@ TEST_CASE("report: two readings of one record stand side by side") {
   CHECK(alike.same_either_way == true);
   CHECK(alike.advice == field::Advice::next_stop);
   CHECK(has(report::text(about, alike), "-> SAME"));
+}
+
+TEST_CASE("report: three long hypotheses keep within the page") {
+  auto evidence = full();
+  for (const char* name :
+       {"cold_out and hot_flow and hot_in are wrong", "cold_out and cold_flow and hot_in are wrong"})
+    evidence.hypotheses.push_back({name, evidence.hypotheses[0].days});
+  std::istringstream lines(report::text(about, field::analyse(evidence)));
+  bool whole = false;
+  for (std::string line; std::getline(lines, line);) {
+    CHECK(line.size() <= 100);
+    whole = whole || (has(line, "if cold_out and cold_flow and hot_in are wrong") && has(line, "next stop"));
+  }
+  CHECK(whole);
 }
 
 TEST_CASE("report: a heat balance that does not close is settled first") {

@@ -59,6 +59,7 @@ constexpr std::string_view field_examples[] = {
 constexpr Option field_options[] = {
     one_json_option,
     {"csv", "", "FILE", "what every row says as CSV in SI; - is standard output, instead of the page"},
+    {"html", "", "FILE", "a page with the trend for a browser, too; - is standard output, instead"},
     case_option,
     units_option,
     out_option,

@@ -17,7 +17,7 @@ std::optional<std::string> target(const Call& call, std::string_view option) {
 }  // namespace
 
 void check_target(const Call& call) {
-  for (const std::string_view option : {"out", "csv"}) {
+  for (const std::string_view option : {"out", "csv", "html"}) {
     const auto file = target(call, option);
     if (file && file->empty())
       throw CallError(fmt::format("--{}: the file has no name; give one, or - for standard output", option));

@@ -147,6 +147,12 @@ field::Evidence evidence_of(const case_io::Case& a_case, const field::History& h
   return evidence;
 }
 
+int status_of(const field::FieldResult& result) {
+  if (result.days.empty()) return no_result;
+  const auto& forecast = result.used().forecast;
+  return forecast && forecast->lost_already ? not_met : done;
+}
+
 report::CaseName name_of(const case_io::Case& a_case) {
   return {.file = std::filesystem::path(a_case.file).filename().string(),
           .title = a_case.title,
@@ -170,11 +176,13 @@ int run_field(const Call& call, Streams streams) {
     if (call.value("csv") == "-") return history.days.empty() ? no_result : done;
     const auto result = field::analyse(evidence_of(a_case, history));
     const auto about = name_of(a_case);
-    deliver(call,
-            call.has("json") ? report::json(about, result, &history) + "\n"
-                             : report::text(about, result, &history),
-            streams.out);
-    return history.days.empty() ? no_result : done;
+    if (call.has("html")) deliver_to("html", call, report::html(about, result), streams.out);
+    if (call.value("html") != "-")
+      deliver(call,
+              call.has("json") ? report::json(about, result, &history) + "\n"
+                               : report::text(about, result, &history),
+              streams.out);
+    return status_of(result);
   } catch (const field::Interrupted&) {
     streams.err << "dutygauge: interrupted; nothing was written\n";
     return interrupted;

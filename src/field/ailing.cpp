@@ -133,7 +133,7 @@ std::optional<Channels> predict(const Plant& plant, const Channels& reading, dou
 /// Misses made independent and of unit variance: the square root of the inverse of the
 /// covariance I + qq', q the shared error over the scatter.
 template <class Misses>
-void add_independent(const Misses& misses, std::vector<double>& result) {
+void add_independent(const Misses& misses, Residuals& residuals) {
   double square = 0.0, along = 0.0;
   for (const auto& miss : misses) {
     const double q = miss.shared / miss.scatter;
@@ -142,7 +142,14 @@ void add_independent(const Misses& misses, std::vector<double>& result) {
   }
   const double share = square > 0.0 ? (1.0 - 1.0 / std::sqrt(1.0 + square)) * along / square : 0.0;
   for (const auto& miss : misses)
-    result.push_back(miss.value / miss.scatter - share * miss.shared / miss.scatter);
+    residuals.values.push_back(miss.value / miss.scatter - share * miss.shared / miss.scatter);
+  residuals.log_determinant += std::log1p(square);
+}
+
+double Residuals::chi_square() const {
+  double sum = 0.0;
+  for (const double r : values) sum += r * r;
+  return sum;
 }
 
 Comparison::Comparison(const Plant& plant, std::span<const Observed> before, std::span<const Observed> after,
@@ -174,7 +181,7 @@ Comparison::Comparison(const Plant& plant, std::span<const Observed> before, std
     scatter_[i] = sample.variance;
     variance_[i] = std::max(variance[i] / days, sample.variance) / days;
   }
-  if (const auto all = residuals({})) count_ = static_cast<int>(all->size());
+  if (const auto all = residuals({})) count_ = static_cast<int>(all->values.size());
 }
 
 Channels Comparison::carried_over(const Channels& predicted) const {
@@ -192,6 +199,10 @@ bool Comparison::is_observed(Channel channel) const {
          std::ranges::any_of(after_, [i](const Observed& day) { return std::isfinite(day.value[i]); });
 }
 
+bool Comparison::is_inferred(Channel channel) const {
+  return std::ranges::any_of(after_, [channel](const Observed& day) { return day.inferred == channel; });
+}
+
 /// Standard uncertainty of a prediction that is alike on all days of the same flow.
 double Comparison::model_spread(const Observed& day, Channel channel) const {
   const std::size_t i = index_of(channel);
@@ -201,6 +212,22 @@ double Comparison::model_spread(const Observed& day, Channel channel) const {
     exponent =
         ModelError{}.drop_exponent * (std::log(day.value[index_of(flow_of(*plant_, channel))]) - flow_[i]);
   return std::sqrt(std::pow(day.shared[i], 2) + (variance_[i] + exponent * exponent) * scale * scale);
+}
+
+/// Standard uncertainty, relative, of what the parts' deposit does to a drop.
+double Comparison::deposit_spread(std::span<const Part> parts, Channel channel) const {
+  const DepositOnDrops& rule = plant_->deposit_on_drops;
+  double change = 0.0;
+  for (const Part& part : parts) {
+    if (part.cause == Cause::shell_deposit && channel == Channel::shell_dp)
+      change += std::log1p(rule.shell_rise * part.magnitude);
+    if (part.cause == Cause::tube_deposit && channel == Channel::tube_dp) {
+      const geometry::Exchanger& exchanger = plant_->prepared.problem().exchanger;
+      change += std::log(deposit_on_tube_drop(rule, exchanger, fouling_before_ + part.magnitude) /
+                         deposit_on_tube_drop(rule, exchanger, fouling_before_));
+    }
+  }
+  return rule.spread * std::abs(change);
 }
 
 std::optional<Comparison::Misses> Comparison::misses(std::span<const Part> parts) const {
@@ -213,18 +240,19 @@ std::optional<Comparison::Misses> Comparison::misses(std::span<const Part> parts
       const std::size_t i = index_of(observables[k]);
       if (!std::isfinite(day.value[i]) || !std::isfinite(expected[i])) continue;
       const double scale = is_drop(observables[k]) ? day.value[i] : 1.0;
-      result[k].push_back({day.value[i] - expected[i],
-                           std::max(day.scatter[i], std::sqrt(scatter_[i]) * scale),
-                           model_spread(day, observables[k])});
+      const double shared =
+          std::hypot(model_spread(day, observables[k]), deposit_spread(parts, observables[k]) * scale);
+      result[k].push_back(
+          {day.value[i] - expected[i], std::max(day.scatter[i], std::sqrt(scatter_[i]) * scale), shared});
     }
   }
   return result;
 }
 
-std::optional<std::vector<double>> Comparison::residuals(std::span<const Part> parts) const {
+std::optional<Residuals> Comparison::residuals(std::span<const Part> parts) const {
   const auto all = misses(parts);
   if (!all) return {};
-  std::vector<double> result;
+  Residuals result;
   for (const auto& of_channel : *all) add_independent(of_channel, result);
   return result;
 }

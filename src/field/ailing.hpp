@@ -21,6 +21,14 @@ Limits limits_of(const Part& part, double fouling_before);
 std::optional<Channels> predict(const Plant& plant, const Channels& reading, double fouling_before,
                                 std::span<const Part> parts);
 
+/// How far days lie from a prediction.
+struct Residuals {
+  std::vector<double> values;  ///< independent and of unit variance where the prediction is right
+  double log_determinant = 0;  ///< of the covariance: what a vaguer prediction owes
+  double chi_square() const;
+  double objective() const { return chi_square() + log_determinant; }
+};
+
 /// The days after a change against predictions that agree with the days before.
 class Comparison {
  public:
@@ -30,14 +38,14 @@ class Comparison {
   int count() const { return count_; }  ///< observables of all days after
   double fouling_before() const { return fouling_before_; }
   bool is_observed(Channel channel) const;
+  bool is_inferred(Channel channel) const;  ///< on some day after
 
   /// Takes the days after for as scattered as they are about this explanation, each channel
   /// about its own mean: a mean that is off stays a reason against it.
   void widen(std::span<const Part> parts);
 
-  /// Residuals that are independent and of unit variance where the parts are right; empty where
-  /// they cannot be.
-  std::optional<std::vector<double>> residuals(std::span<const Part> parts) const;
+  /// Empty where the parts cannot be.
+  std::optional<Residuals> residuals(std::span<const Part> parts) const;
 
   /// Predicted observables of the last day, and what they are uncertain by (2 % or 0.1 K where not read).
   std::optional<Channels> last_day(std::span<const Part> parts) const;
@@ -51,6 +59,7 @@ class Comparison {
   std::optional<Misses> misses(std::span<const Part> parts) const;
   Channels carried_over(const Channels& predicted) const;
   double model_spread(const Observed& day, Channel channel) const;
+  double deposit_spread(std::span<const Part> parts, Channel channel) const;
 
   const Plant* plant_;
   std::vector<Observed> after_;

@@ -174,15 +174,15 @@ Events all_events(const Events& used, const Evidence& evidence) {
 }
 
 /// The advice of all hypotheses, where they agree; of the used one, where nothing is in doubt.
-void conclude(FieldResult& result) {
+void conclude(FieldResult& result, bool faults_left_out) {
   const Decision& used = result.used().decision;
   result.advice = used.advice;
   result.why = used.why;
   const auto same = [&used](const Outcome& outcome) { return outcome.decision.advice == used.advice; };
   if (result.outcomes.size() > 1) result.same_either_way = std::ranges::all_of(result.outcomes, same);
   // Where the instruments at fault are named and left out the rest may be believed.
-  const bool named = !result.suspects.empty() && result.outcomes.size() == 1;
-  const bool doubt = (result.closure.verdict == "does not close" && !named) || result.outcomes.size() > 1;
+  const bool doubt =
+      (result.closure.verdict == "does not close" && !faults_left_out) || result.outcomes.size() > 1;
   if (!doubt || result.same_either_way.value_or(false)) return;
   result.advice = Advice::settle_first;
   result.why = result.outcomes.size() > 1 ? "the advice depends on which instrument is right"
@@ -235,7 +235,7 @@ FieldResult analyse(const Evidence& evidence) {
     if (result.outcomes.empty()) result.events = all_events(events, evidence);
     result.outcomes.push_back(outcome_of(hypothesis, evidence, events, result.causes));
   }
-  conclude(result);
+  conclude(result, !evidence.as_read.empty());
   return result;
 }
 

@@ -5,6 +5,7 @@
 #include <boost/math/distributions/chi_squared.hpp>
 #include <boost/math/tools/minima.hpp>
 #include <cmath>
+#include <functional>
 #include <limits>
 
 #include "ailing.hpp"
@@ -15,15 +16,10 @@ namespace {
 
 constexpr double likely = 0.9, together = 0.95, acceptable = 0.01;
 
-double sum_of_squares(const std::optional<std::vector<double>>& residuals) {
-  if (!residuals) return HUGE_VAL;
-  double sum = 0.0;
-  for (const double r : *residuals) sum += r * r;
-  return sum;
-}
-
-double chi_square(const Comparison& days, std::span<const Part> parts) {
-  return sum_of_squares(days.residuals(parts));
+/// What a fit makes least.
+double objective(const Comparison& days, std::span<const Part> parts) {
+  const auto residuals = days.residuals(parts);
+  return residuals ? residuals->objective() : HUGE_VAL;
 }
 
 double upper_tail(double chi_squared, int degrees_of_freedom) {
@@ -33,15 +29,17 @@ double upper_tail(double chi_squared, int degrees_of_freedom) {
   return boost::math::cdf(boost::math::complement(distribution, chi_squared));
 }
 
-std::vector<Part> single_causes(const Comparison& days) {
+std::vector<Part> single_causes(const Comparison& days, Onset onset) {
   std::vector<Part> parts;
-  for (const Cause cause : {Cause::tube_deposit, Cause::shell_deposit, Cause::plugging, Cause::tube_bypass,
-                            Cause::shell_bypass, Cause::area_lost})
+  for (const Cause cause : {Cause::tube_deposit, Cause::shell_deposit, Cause::tube_bypass})
     parts.push_back({.cause = cause});
+  if (onset == Onset::sudden)
+    for (const Cause cause : {Cause::plugging, Cause::shell_bypass, Cause::area_lost})
+      parts.push_back({.cause = cause});
   for (std::size_t i = 0; i <= index_of(Channel::shell_dp); ++i) {
     const auto channel = static_cast<Channel>(i);
     const bool is_output = std::ranges::find(observables, channel) != observables.end();
-    if (!is_output || days.is_observed(channel))
+    if (is_output ? days.is_observed(channel) : !days.is_inferred(channel))
       parts.push_back({.cause = Cause::instrument, .channel = channel});
   }
   return parts;
@@ -59,9 +57,9 @@ std::optional<Eigen::VectorXd> slope(const Comparison& days, std::vector<Part> p
   part.magnitude = std::max(up - 2.0 * step, limits.low);
   const auto less = days.residuals(parts);
   if (!more || !less) return {};
-  const auto size = static_cast<Eigen::Index>(more->size());
-  return (Eigen::Map<const Eigen::VectorXd>(more->data(), size) -
-          Eigen::Map<const Eigen::VectorXd>(less->data(), size)) /
+  const auto size = static_cast<Eigen::Index>(more->values.size());
+  return (Eigen::Map<const Eigen::VectorXd>(more->values.data(), size) -
+          Eigen::Map<const Eigen::VectorXd>(less->values.data(), size)) /
          (up - part.magnitude);
 }
 
@@ -72,7 +70,7 @@ Part fitted(const Comparison& days, Part part) {
   constexpr int steps = 14;
   const auto at = [&](double t) {
     part.magnitude = t < 0.0 ? -limits.low * t * t * t : limits.high * t * t * t;
-    return chi_square(days, {&part, 1});
+    return objective(days, {&part, 1});
   };
   const double first = limits.low < 0.0 ? -1.0 : 0.0, width = (1.0 - first) / steps;
   double best = first, least = HUGE_VAL;
@@ -91,10 +89,12 @@ Part fitted(const Comparison& days, Part part) {
 
 Explanation explained(const Comparison& days, std::vector<Part> parts) {
   Explanation e;
-  e.chi_square = chi_square(days, parts);
+  const auto residuals = days.residuals(parts), unchanged = days.residuals({});
+  e.chi_square = residuals ? residuals->chi_square() : HUGE_VAL;
   const int magnitudes = static_cast<int>(parts.size());
   e.p_value = upper_tail(e.chi_square, days.count() - magnitudes);
   e.bic = e.chi_square + magnitudes * std::log(static_cast<double>(days.count()));
+  if (residuals && unchanged) e.bic += residuals->log_determinant - unchanged->log_determinant;
   if (const auto shown = days.last_day(parts)) e.predicted = *shown;
   e.parts = std::move(parts);
   return e;
@@ -111,9 +111,9 @@ void weigh(std::vector<Explanation>& list, double best) {
   for (Explanation& e : list) e.weight /= sum;
 }
 
-std::vector<Explanation> ranked_singles(const Comparison& days) {
+std::vector<Explanation> ranked_singles(const Comparison& days, Onset onset) {
   std::vector<Explanation> singles = {explained(days, {})};
-  for (const Part& part : single_causes(days)) {
+  for (const Part& part : single_causes(days, onset)) {
     Explanation e = explained(days, {fitted(days, part)});
     if (std::isfinite(e.chi_square)) singles.push_back(std::move(e));
   }
@@ -125,11 +125,11 @@ std::vector<Explanation> ranked_singles(const Comparison& days) {
 /// Gauss-Newton with damping inside the limits, from the magnitudes given.
 std::vector<Part> fitted_together(const Comparison& days, std::vector<Part> parts) {
   const auto count = static_cast<Eigen::Index>(parts.size());
-  double damping = 1e-3, value = chi_square(days, parts);
+  double damping = 1e-3, value = objective(days, parts);
   for (int pass = 0; pass < 25 && damping < 1e6; ++pass) {
     const auto here = days.residuals(parts);
     if (!here) return parts;
-    const auto size = static_cast<Eigen::Index>(here->size());
+    const auto size = static_cast<Eigen::Index>(here->values.size());
     Eigen::MatrixXd slopes(size, count);
     for (Eigen::Index i = 0; i < count; ++i) {
       const auto column = slope(days, parts, static_cast<std::size_t>(i));
@@ -137,7 +137,8 @@ std::vector<Part> fitted_together(const Comparison& days, std::vector<Part> part
       slopes.col(i) = *column;
     }
     Eigen::MatrixXd normal = slopes.transpose() * slopes;
-    const Eigen::VectorXd down = -slopes.transpose() * Eigen::Map<const Eigen::VectorXd>(here->data(), size);
+    const Eigen::VectorXd down =
+        -slopes.transpose() * Eigen::Map<const Eigen::VectorXd>(here->values.data(), size);
     normal.diagonal() *= 1.0 + damping;
     const Eigen::VectorXd step = normal.fullPivLu().solve(down);
     std::vector<Part> next = parts;
@@ -146,7 +147,7 @@ std::vector<Part> fitted_together(const Comparison& days, std::vector<Part> part
       next[i].magnitude =
           std::clamp(next[i].magnitude + step[static_cast<Eigen::Index>(i)], limits.low, limits.high);
     }
-    const double tried = chi_square(days, next);
+    const double tried = objective(days, next);
     damping *= tried < value ? 0.2 : 5.0;
     if (!(tried < value)) continue;
     const bool stands = value - tried < 1e-7 * value;
@@ -211,30 +212,33 @@ std::optional<Separator> separator_of(const Comparison& days, const Explanation&
   return best;
 }
 
-/// A flow or inlet that is missing from the balance; that side's outlet has then been used up.
-Day filled(const Plant& plant, const Instruments& instruments, Day day) {
+/// A day with a flow or inlet that is missing taken from the balance; that side's outlet has
+/// then been used up.
+Observed filled(const Plant& plant, const Instruments& instruments, Day day) {
   for (const Channel channel : {Channel::hot_flow, Channel::cold_flow, Channel::hot_in, Channel::cold_in}) {
     if (!std::isnan(day.value[index_of(channel)])) continue;
     const auto value = inferred(plant, instruments, day.value, channel);
-    if (!value) return day;
+    if (!value) break;
     day.value[index_of(channel)] = value->value;
     day.value[index_of(is_hot(channel) ? Channel::hot_out : Channel::cold_out)] =
         std::numeric_limits<double>::quiet_NaN();
-    return day;
+    Observed result = observed(day, instruments);
+    result.inferred = channel;
+    return result;
   }
-  return day;
+  return observed(day, instruments);
 }
 
 }  // namespace
 
 std::optional<Ranking> rank_causes(const Plant& plant, std::span<const Observed> before,
-                                   std::span<const Observed> after, double fouling_before) {
+                                   std::span<const Observed> after, double fouling_before, Onset onset) {
   Comparison days(plant, before, after, fouling_before);
   if (days.count() == 0) return {};
   // What is left about the best explanation tells how much days differ by themselves.
-  days.widen(ranked_singles(days).front().parts);
+  days.widen(ranked_singles(days, onset).front().parts);
   Ranking ranking;
-  ranking.singles = ranked_singles(days);
+  ranking.singles = ranked_singles(days, onset);
   const std::vector<Explanation>* ranked = &ranking.singles;
   const bool explains =
       std::ranges::any_of(ranking.singles, [](const Explanation& e) { return e.p_value > acceptable; });
@@ -253,7 +257,8 @@ std::optional<Ranking> rank_causes(const Plant& plant, std::span<const Observed>
 }
 
 Observed observed(const Day& day, const Instruments& instruments, const ModelError& error) {
-  Observed result{day.value, {}, {}};
+  Observed result;
+  result.value = day.value;
   // A median scatters by a quarter more than a mean.
   const double fewer = std::sqrt(1.57 / std::max(1, day.count));
   for (std::size_t i = 0; i < channel_count; ++i) {
@@ -269,19 +274,19 @@ Observed observed(const Day& day, const Instruments& instruments, const ModelErr
 }
 
 std::optional<Ranking> rank_over_days(const Plant& plant, const Instruments& instruments,
-                                      std::span<const Day> before, std::span<const Day> after) {
+                                      std::span<const Day> before, std::span<const Day> after, Onset onset) {
   std::vector<double> fouling;
   std::vector<Observed> first, second;
   for (const Day& day : before) {
-    first.push_back(observed(filled(plant, instruments, day), instruments));
+    first.push_back(filled(plant, instruments, day));
     fouling.push_back(day.apparent.fouling);
   }
-  for (const Day& day : after) second.push_back(observed(filled(plant, instruments, day), instruments));
+  for (const Day& day : after) second.push_back(filled(plant, instruments, day));
   std::erase_if(fouling, [](double f) { return !std::isfinite(f); });
   if (fouling.empty()) return {};
   const auto middle = fouling.begin() + static_cast<std::ptrdiff_t>(fouling.size() / 2);
   std::ranges::nth_element(fouling, middle);
-  return rank_causes(plant, first, second, *middle);
+  return rank_causes(plant, first, second, *middle, onset);
 }
 
 std::string_view name_of(const Part& part, const Channels& seen) {
@@ -306,6 +311,21 @@ std::string_view name_of(const Part& part, const Channels& seen) {
       return "instrument";
   }
   return "none";
+}
+
+std::vector<NamedWeight> weights_of(const Ranking& ranking, const Channels& seen) {
+  std::vector<NamedWeight> weights;
+  for (const Explanation& e : ranking.pairs.empty() ? ranking.singles : ranking.pairs) {
+    std::string name(e.parts.empty() ? name_of({}, seen) : name_of(e.parts.front(), seen));
+    for (std::size_t i = 1; i < e.parts.size(); ++i) name += " and " + std::string(name_of(e.parts[i], seen));
+    const auto same = std::ranges::find(weights, name, &NamedWeight::name);
+    if (same == weights.end())
+      weights.push_back({std::move(name), e.weight});
+    else
+      same->weight += e.weight;
+  }
+  std::ranges::stable_sort(weights, std::ranges::greater{}, &NamedWeight::weight);
+  return weights;
 }
 
 }  // namespace dutygauge::field

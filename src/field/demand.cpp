@@ -14,6 +14,9 @@ constexpr double seconds_per_day = 86400.0;
 constexpr double most_fouling = 0.05;  // [m2.K/W]: beyond it nothing is left to lose
 constexpr std::size_t table_points = 60;
 constexpr std::size_t latest_days = 7;
+// Of the change of calibrated films with flow and temperature: what an overall U with all geometry known
+// is usually wrong by [judgement].
+constexpr double calibrated_share = 0.1;
 
 const rating::Problem& problem_of(const Plant& plant) {
   return plant.prepared.problem();
@@ -50,13 +53,42 @@ std::optional<double> margin_at(const Plant& plant, const service::Service& serv
   return least;
 }
 
-/// Median of the last week under the hypothesis used.
+/// Medians of the last week of what the readings say.
+std::optional<double> latest(const Days& days, double Apparent::*what) {
+  std::vector<double> values;
+  for (std::size_t i = days.size(); i > 0 && values.size() < latest_days; --i)
+    if (const double value = days[i - 1].apparent.*what; std::isfinite(value) && value > 0.0)
+      values.push_back(value);
+  return values.empty() ? std::nullopt : std::optional(median_of(values));
+}
+
+/// Under the hypothesis used; a fouling below zero is none.
 std::optional<double> fouling_today(const Days& days) {
   std::vector<double> values;
   for (std::size_t i = days.size(); i > 0 && values.size() < latest_days; --i)
     if (std::isfinite(days[i - 1].apparent.fouling)) values.push_back(days[i - 1].apparent.fouling);
   if (values.empty()) return {};
   return std::max(median_of(values), 0.0);
+}
+
+/// What the films' error leaves between the service's conditions and those of the last week: its share of the
+/// change of 1/u_clean. The error that is alike at both is in the level and in what is allowed, and cancels.
+double uncertainty_of_allowed(const Evidence& evidence, const Plant& plant) {
+  const Days& days = evidence.hypotheses.front().days;
+  const auto u_clean = latest(days, &Apparent::u_clean), u = latest(days, &Apparent::u);
+  const auto clean = at_service(plant, 0.0);
+  if (!u_clean || !u || !clean) return 0.0;
+  const bool hot_in_shell = plant.prepared.shell_side_is_hot();
+  const auto &hot = hot_stream(plant), &cold = cold_stream(plant);
+  const double hot_mean = 0.5 * (hot.inlet_temperature + clean->hot_out);
+  const double cold_mean = 0.5 * (cold.inlet_temperature + clean->cold_out);
+  const auto films = plant.prepared.films({.tube_flow = hot_in_shell ? cold.mass_flow : hot.mass_flow,
+                                           .shell_flow = hot_in_shell ? hot.mass_flow : cold.mass_flow,
+                                           .tube_mean = hot_in_shell ? cold_mean : hot_mean,
+                                           .shell_mean = hot_in_shell ? hot_mean : cold_mean,
+                                           .u = *u});
+  const double share = evidence.calibrated ? calibrated_share : evidence.film_uncertainty * *u_clean;
+  return share * std::abs(plant.calibration.factor * films.sum() - 1.0 / *u_clean);
 }
 
 /// Duty lost by fouling, from a table: it is asked for a million times.
@@ -104,7 +136,7 @@ std::optional<double> allowed_fouling(const Plant& plant, const service::Service
 void ask(Evidence& evidence, const Plant& plant, const service::Service& service, const Planned& planned) {
   const auto today = fouling_today(evidence.hypotheses.front().days);
   if (const auto allowed = allowed_fouling(plant, service)) {
-    evidence.allowed = Allowed{.fouling = *allowed};
+    evidence.allowed = Allowed{*allowed, uncertainty_of_allowed(evidence, plant)};
     const auto margin = today ? margin_at(plant, service, *today) : std::nullopt;
     if (margin) evidence.margins.push_back({"at the service's conditions, as dirty as today", *margin});
   }

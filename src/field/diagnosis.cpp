@@ -14,8 +14,7 @@ namespace dutygauge::field {
 namespace {
 
 constexpr std::size_t most_hypotheses = 3;
-constexpr std::size_t week = 7;    // days that are compared
-constexpr double same_step = 5.0;  // days within which two accusations are one
+constexpr std::size_t week = 7;  // days that are compared
 
 std::string said_of(const Fault& fault) {
   const auto name_of_channel = name(fault.channel);
@@ -42,21 +41,11 @@ Doubt doubt_of(const Accusation& accusation) {
 std::vector<Accusation> accusations_of(const Evidence& evidence, const Plant& plant,
                                        const Instruments& instruments) {
   const Days& days = evidence.hypotheses.front().days;
-  std::vector<Accusation> found;
-  std::vector<Fault> known;
-  for (const Event& event : events_of(days, evidence.drop_laws, evidence.logged, {})) {
-    if (!event.closure || event.what == What::sensor_drift) continue;
-    auto accusation = accuse_step(plant, instruments, days, event.at);
-    if (!accusation || accusation->suspects.empty()) continue;
-    const auto same = [&](const Accusation& other) {
-      return std::abs(other.since - accusation->since) < same_step;
-    };
-    if (std::ranges::any_of(found, same)) continue;
-    known.push_back(accusation->suspects.front().fault);
-    found.push_back(std::move(*accusation));
-  }
-  if (auto drift = accuse_drift(plant, instruments, days, known); drift && !drift->suspects.empty())
-    found.push_back(std::move(*drift));
+  std::vector<double> closure_steps;
+  for (const Event& event : events_of(days, evidence.drop_laws, evidence.logged, {}))
+    if (event.closure && event.what != What::sensor_drift) closure_steps.push_back(event.at);
+  auto found = accuse(plant, instruments, days, closure_steps);
+  std::erase_if(found, [](const Accusation& accusation) { return accusation.suspects.empty(); });
   return found;
 }
 
@@ -111,30 +100,6 @@ std::vector<Hypothesis> either_side(const Evidence& evidence, const Plant& plant
   return hypotheses;
 }
 
-void add_weight(std::vector<WeighedCause>& causes, std::string_view name, double weight) {
-  const auto found = std::ranges::find(causes, name, &WeighedCause::name);
-  if (found != causes.end())
-    found->weight += weight;
-  else
-    causes.push_back({std::string(name), weight});
-}
-
-/// Weights by name; of a pair each part bears half.
-std::vector<WeighedCause> causes_of(const Ranking& ranking, const Channels& seen) {
-  const auto& explanations = ranking.pairs.empty() ? ranking.singles : ranking.pairs;
-  double sum = 0.0;
-  for (const Explanation& explanation : explanations) sum += explanation.weight;
-  std::vector<WeighedCause> causes;
-  if (!(sum > 0.0)) return causes;
-  for (const Explanation& explanation : explanations) {
-    if (explanation.parts.empty()) add_weight(causes, "none", explanation.weight / sum);
-    for (const Part& part : explanation.parts)
-      add_weight(causes, field::name_of(part, seen),
-                 explanation.weight / sum / static_cast<double>(explanation.parts.size()));
-  }
-  return causes;
-}
-
 /// The days as read, with what is known to be wrong taken off by its magnitude: an outlet that is left out
 /// and inferred would hide what it shows. The fouling is that of the hypothesis used.
 Days to_rank(const Evidence& evidence, const std::vector<Fault>& faults) {
@@ -151,19 +116,31 @@ Days to_rank(const Evidence& evidence, const std::vector<Fault>& faults) {
   return days;
 }
 
-/// From the first week since the last cleaning to the last week.
+/// From the first week since the last cleaning to the last week. Where the fouling stepped up in between what
+/// comes at once may be the cause, too.
 std::vector<WeighedCause> rank(const Evidence& evidence, const Plant& plant, const Instruments& instruments,
                                const std::vector<Fault>& faults) {
   const Days days = to_rank(evidence, faults);
   double since = 0.0;
+  Onset onset = Onset::gradual;
   for (const Event& event :
-       events_of(evidence.hypotheses.front().days, evidence.drop_laws, evidence.logged, {}))
-    if (event.what == What::cleaning) since = event.at;
+       events_of(evidence.hypotheses.front().days, evidence.drop_laws, evidence.logged, {})) {
+    if (event.what == What::cleaning) {
+      since = event.at;
+      onset = Onset::gradual;
+    } else if (event.fouling.value_or(0.0) > 0.0 && event.what != What::sensor_shift) {
+      onset = Onset::sudden;
+    }
+  }
   const auto begin = std::ranges::find_if(days, [since](const Day& day) { return day.day > since; });
   const std::span<const Day> cycle(begin, days.end());
   if (cycle.size() < 3 * week) return {};
-  const auto ranking = rank_over_days(plant, instruments, cycle.first(week), cycle.last(week));
-  return ranking ? causes_of(*ranking, cycle.back().value) : std::vector<WeighedCause>{};
+  const auto ranking = rank_over_days(plant, instruments, cycle.first(week), cycle.last(week), onset);
+  std::vector<WeighedCause> causes;
+  if (ranking)
+    for (const NamedWeight& named : weights_of(*ranking, cycle.back().value))
+      causes.push_back({named.name, named.weight});
+  return causes;
 }
 
 }  // namespace
@@ -181,9 +158,7 @@ void diagnose(Evidence& evidence, const Plant& plant, const Instruments& instrum
     evidence.as_read = std::move(evidence.hypotheses.front().days);
     evidence.hypotheses = std::move(hypotheses);
   }
-  std::vector<Fault> faults;
-  if (!accusations.empty()) faults = faults_of(accusations, 0, 0);
-  evidence.causes = rank(evidence, plant, instruments, faults);
+  evidence.causes = rank(evidence, plant, instruments, faults_of(accusations));
 }
 
 }  // namespace dutygauge::field

@@ -63,9 +63,11 @@ class Ailing {
     r.hot_out = outlet(hot_stream(plant_), c_.hot_in, -duty / c_.hot_flow);
     r.cold_out = outlet(cold_stream(plant_), c_.cold_in, duty / c_.cold_flow);
     const rating::PlaceDrops drops = plant_.prepared.drops(at_);
+    const double narrowing =
+        deposit_on_tube_drop(plant_.deposit_on_drops, plant_.prepared.problem().exchanger, a_.tube_deposit);
     const double tube_nozzles = square(1.0 - a_.plugged) / square(1.0 - a_.tube_bypass);
     const double shell_nozzles = 1.0 / square(1.0 - a_.shell_bypass);
-    r.tube_dp = drops.tube_bundle * narrowing() + drops.tube_nozzles * tube_nozzles;
+    r.tube_dp = drops.tube_bundle * narrowing + drops.tube_nozzles * tube_nozzles;
     r.shell_dp = drops.shell_bundle * (1.0 + plant_.deposit_on_drops.shell_rise * a_.shell_deposit) +
                  drops.shell_nozzles * shell_nozzles;
     return r;
@@ -115,17 +117,6 @@ class Ailing {
       stands = std::abs(u_ - at_.u) < 1e-11 * u_;
     }
     settled_ = settled_ && stands;
-  }
-
-  /// What a deposit in the bore does to the drop; endless where it fills the bore.
-  double narrowing() const {
-    const DepositOnDrops& rule = plant_.deposit_on_drops;
-    const geometry::Exchanger& exchanger = plant_.prepared.problem().exchanger;
-    const bool drawn = exchanger.tubes_drawn;
-    const double bore = drawn ? exchanger.tube_side.inside_diameter : rule.bore;
-    const double thickness = rule.conductivity * a_.tube_deposit / exchanger.outside_per_inside;
-    const double left = std::max(bore - 2.0 * thickness, 0.01 * bore);
-    return std::pow(bore / left, rule.narrowing_exponent);
   }
 
   const Plant& plant_;

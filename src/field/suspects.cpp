@@ -347,6 +347,27 @@ std::optional<Accusation> accuse_drift(const Plant& plant, const Instruments& in
   return accusation;
 }
 
+std::vector<Accusation> accuse(const Plant& plant, const Instruments& instruments, const Days& days,
+                               std::span<const double> closure_steps) {
+  std::vector<double> dates(closure_steps.begin(), closure_steps.end());
+  std::ranges::sort(dates);
+  std::vector<Accusation> accusations;
+  for (const double near : dates) {
+    auto step = accuse_step(plant, instruments, days, near);
+    const bool again = step && !accusations.empty() && step->since - accusations.back().since < refined;
+    if (step && !again) accusations.push_back(std::move(*step));
+  }
+  const std::vector<Fault> known = faults_of(accusations);
+  if (auto drift = accuse_drift(plant, instruments, days, known)) accusations.push_back(std::move(*drift));
+  return accusations;
+}
+
+std::vector<Fault> faults_of(std::span<const Accusation> accusations) {
+  std::vector<Fault> faults;
+  for (const Accusation& accusation : accusations) faults.push_back(accusation.suspects.front().fault);
+  return faults;
+}
+
 Channels without_faults(const Channels& reading, double day, std::span<const Fault> faults) {
   Channels result = reading;
   for (const Fault& fault : faults) {

@@ -31,7 +31,7 @@ void fact(Page& page, const Fact& said) {
   if (said.name == "EVENTS" && lines.size() > most_events) {
     const std::size_t more = lines.size() - most_events;
     lines.erase(lines.begin(), lines.begin() + static_cast<std::ptrdiff_t>(more));
-    lines.insert(lines.begin(), fmt::format("{} earlier ones: --json", more));
+    lines.insert(lines.begin(), fmt::format("{} earlier: --json", more));
   }
   if (said.name.size() >= 13) {
     page.paragraph(said.name + "   ", lines.front());

@@ -167,6 +167,14 @@ std::vector<std::string> data(const FieldResult& result) {
   return {line};
 }
 
+bool reads_drops(const FieldResult& result) {
+  const auto read = [](const field::Day& day) {
+    return std::isfinite(day.value[field::index_of(field::Channel::tube_dp)]) &&
+           std::isfinite(day.value[field::index_of(field::Channel::shell_dp)]);
+  };
+  return std::ranges::any_of(result.days, read);
+}
+
 void add(std::vector<Fact>& facts, std::string name, std::vector<std::string> lines) {
   if (!lines.empty()) facts.push_back({std::move(name), std::move(lines)});
 }
@@ -239,7 +247,9 @@ std::vector<std::string> next_of(const FieldResult& result) {
   const auto& closure = result.closure;
   if (!closure.median) tasks.emplace_back("read the missing flow for a day: it tests the heat balance");
   if (!result.causes.empty() && result.causes.front().weight <= 0.9)
-    tasks.emplace_back("read both pressure drops: they part the causes");
+    tasks.emplace_back(reads_drops(result)
+                           ? "look inside at the next stop: the readings do not part the causes"
+                           : "read both pressure drops: they part the causes");
   if (!result.allowed) tasks.emplace_back("state the service, for a date by which it is lost");
   const auto& forecast = result.used().forecast;
   if (!forecast || forecast->lost_already || result.days.empty()) return tasks;
@@ -251,22 +261,20 @@ std::vector<std::string> next_of(const FieldResult& result) {
 
 Rows hypotheses_table(const CaseName& about, const FieldResult& result) {
   if (result.outcomes.size() < 2) return {};
-  Rows rows = {{""}, {"deposit today"}, {"service lost"}, {"advice"}};
+  Rows rows = {{"", "deposit today", "service lost", "advice"}};
   for (const field::Outcome& outcome : result.outcomes) {
     const bool used = &outcome == &result.outcomes.front();
-    rows[0].push_back(fmt::format("if {}", outcome.name));
-    rows[1].push_back(!outcome.fouling
-                          ? std::string("not known")
-                          : fmt::format("{} {}{}", resistance(outcome.fouling->now, about.display),
-                                        resistance_unit(about.display), used ? " (used)" : ""));
     const auto& forecast = outcome.forecast;
-    rows[2].push_back(!forecast               ? "not known"
-                      : forecast->lost.middle ? spoken_date(result.start, *forecast->lost.middle)
-                                              : "not at all");
-    rows[3].push_back(plain_words(name_of(outcome.decision.advice)));
+    rows.push_back({fmt::format("if {}{}", outcome.name, used ? " (used above)" : ""),
+                    outcome.fouling ? fmt::format("{} {}", resistance(outcome.fouling->now, about.display),
+                                                  resistance_unit(about.display))
+                                    : std::string("not known"),
+                    !forecast               ? "not known"
+                    : forecast->lost.middle ? spoken_date(result.start, *forecast->lost.middle)
+                                            : "not at all",
+                    plain_words(name_of(outcome.decision.advice))});
   }
-  rows[3].push_back(result.same_either_way.value_or(false) ? "-> SAME" : "-> NOT THE SAME");
-  for (std::size_t i = 0; i < 3; ++i) rows[i].emplace_back();
+  rows.push_back({result.same_either_way.value_or(false) ? "-> SAME" : "-> NOT THE SAME", "", "", ""});
   return rows;
 }
 

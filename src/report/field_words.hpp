@@ -31,7 +31,7 @@ std::vector<Fact> facts_of(const CaseName& about, const field::FieldResult& resu
 /// What to do next, each a task.
 std::vector<std::string> next_of(const field::FieldResult& result);
 
-/// The hypotheses side by side, and the ways to go on with their cost; no rows where there is nothing to say.
+/// The hypotheses one below the other, and the ways to go on with their cost; no rows where there is nothing to say.
 using Rows = std::vector<std::vector<std::string>>;
 Rows hypotheses_table(const CaseName& about, const field::FieldResult& result);
 Rows options_table(const field::FieldResult& result);

@@ -3,6 +3,7 @@
 #include <cstdint>
 #include <optional>
 #include <span>
+#include <string>
 #include <string_view>
 #include <vector>
 
@@ -22,6 +23,10 @@ enum class Cause : std::uint8_t {
   instrument,     ///< reading - truth [K]; of flows and drops reading/truth - 1 [-]
 };
 
+/// How the change came. A deposit, a leaking partition and an instrument may come gradually;
+/// tubes are plugged, strips lost and gas gathers at once.
+enum class Onset : std::uint8_t { sudden, gradual };
+
 /// One cause with its magnitude.
 struct Part {
   Cause cause = Cause::none;
@@ -35,7 +40,7 @@ struct Explanation {
   std::vector<Part> parts;  ///< none: nothing changed
   double chi_square = 0;    ///< of the observables' changes
   double p_value = 0;       ///< of a chi-square as large by chance
-  double bic = 0;           ///< chi_square + parts ln(observables)
+  double bic = 0;           ///< chi_square + parts ln(observables), and what a vaguer prediction owes
   double weight = 0;        ///< exp(-bic/2), normalised among explanations of as many parts or fewer
   Channels predicted{};     ///< what the last day would then show; NaN where the unit has no drop
 };
@@ -68,6 +73,7 @@ struct Ranking {
 /// Flows and inlets are taken as they read.
 struct Observed {
   Channels value{}, scatter{}, shared{};
+  std::optional<Channel> inferred{};  ///< came from the balance: no instrument to blame
 };
 
 /// Error of a model's changes: of outlets, of a drop, and of a drop's exponent on the flow,
@@ -89,14 +95,23 @@ Observed observed(const Day& day, const Instruments& instruments, const ModelErr
 /// several days at several flows a deposit, the same for all, parts from a by-pass. Empty where `before` or
 /// `after` hold no day that can be predicted.
 std::optional<Ranking> rank_causes(const Plant& plant, std::span<const Observed> before,
-                                   std::span<const Observed> after, double fouling_before);
+                                   std::span<const Observed> after, double fouling_before,
+                                   Onset onset = Onset::sudden);
 
 /// The same over days, with the median apparent fouling of the days before. A missing flow or
 /// inlet comes from the balance, and that side's outlet then says nothing more.
 std::optional<Ranking> rank_over_days(const Plant& plant, const Instruments& instruments,
-                                      std::span<const Day> before, std::span<const Day> after);
+                                      std::span<const Day> before, std::span<const Day> after,
+                                      Onset onset = Onset::sudden);
 
 /// What a plant would call it. A by-pass has its own name only where that side's drop is read.
 std::string_view name_of(const Part& part, const Channels& observed);
+
+/// The weights of a ranking by name, the greatest first; a pair has both names. `observed` as above.
+struct NamedWeight {
+  std::string name;
+  double weight = 0;  ///< sum 1
+};
+std::vector<NamedWeight> weights_of(const Ranking& ranking, const Channels& observed);
 
 }  // namespace dutygauge::field

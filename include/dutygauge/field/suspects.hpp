@@ -66,6 +66,13 @@ std::optional<Accusation> accuse_step(const Plant& plant, const Instruments& ins
 std::optional<Accusation> accuse_drift(const Plant& plant, const Instruments& instruments, const Days& days,
                                        std::span<const Fault> known);
 
+/// Everything that is at fault in a record, by date: a step of the closure near each of the
+/// days given, in the order of time, then a drift beside the steps' best suspects. The first
+/// suspect of each, `faults_of`, is what `without_faults` would take.
+std::vector<Accusation> accuse(const Plant& plant, const Instruments& instruments, const Days& days,
+                               std::span<const double> closure_steps);
+std::vector<Fault> faults_of(std::span<const Accusation> accusations);
+
 /// A reading on a day with its faulty channels left out, for the balance to infer. Where that
 /// would leave two missing, a fault is taken off the reading by its magnitude instead, the
 /// later ones of the list first.
