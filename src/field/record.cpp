@@ -62,7 +62,6 @@ class File {
         show(line, number, reading);
         return true;
       }
-      if (drop == Drop::repeated_header) --tally_.rows;
       ++tally_[drop];
     }
     if (first_time_line_ == 0)

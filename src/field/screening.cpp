@@ -11,24 +11,13 @@ constexpr double missing = std::numeric_limits<double>::quiet_NaN();
 constexpr std::int64_t long_ago = std::numeric_limits<std::int64_t>::min() / 4;
 constexpr std::size_t measured = index_of(Channel::valve);   ///< a valve may stand still
 constexpr std::size_t balance = index_of(Channel::tube_dp);  ///< flows and temperatures come first
-constexpr std::size_t least_of_window = 7;
-constexpr int least_on_a_line = 3;    ///< channels
-constexpr double longest_step = 2.5;  ///< intervals between neighbours in time
+constexpr std::size_t enough = 7;                            ///< of 13
+constexpr int least_on_a_line = 3;                           ///< channels
+constexpr double longest_step = 2.5;                         ///< intervals between neighbours in time
 
 double median_of(double* begin, std::size_t count) {
   std::nth_element(begin, begin + count / 2, begin + count);
   return begin[count / 2];
-}
-
-/// Whether the median of the values is within a distance of one: more than half of them lie on
-/// either side of it then. Cheaper than the median, and nearly every reading is.
-bool is_near_median(double value, double distance, const double* values, std::size_t count) {
-  std::size_t below = 0, above = 0;
-  for (std::size_t i = 0; i < count; ++i) {
-    below += values[i] <= value + distance ? 1 : 0;
-    above += values[i] >= value - distance ? 1 : 0;
-  }
-  return 2 * below > count && 2 * above > count;
 }
 
 }  // namespace
@@ -115,19 +104,30 @@ void Screen::find_straight(std::int64_t row) {
   for (std::int64_t i = std::max(first, out_); i <= row; ++i) slot(i).filled = true;
 }
 
+/// Whether the median of 13 is near for certain: seven of them lie on either side of a value no
+/// further away than half of what a spike is. Cheaper than the median, and nearly always so.
+bool Screen::is_near_median(std::size_t channel, std::int64_t row, const Window& window) {
+  const double value = slot(row).value[channel], distance = 0.5 * limits_.spike * random_of(channel, value);
+  std::size_t below = 0, above = 0;
+  for (std::int64_t i = window.first; i <= window.last && (below < enough || above < enough); ++i) {
+    const double other = slot(i).value[channel];
+    below += other <= value + distance ? 1 : 0;
+    above += other >= value - distance ? 1 : 0;
+  }
+  return below >= enough && above >= enough;
+}
+
 void Screen::find_spikes(std::int64_t row) {
   Slot& at = slot(row);
   const std::int64_t first = std::max<std::int64_t>({row - reach, 0, in_ - static_cast<std::int64_t>(ring)});
   const std::int64_t last = std::min(row + reach, in_ - 1);
   std::array<double, 2 * reach + 1> window;
   for (std::size_t c = 0; c < measured; ++c) {
-    if (std::isnan(at.value[c])) continue;
+    if (std::isnan(at.value[c]) || is_near_median(c, row, {first, last})) continue;
     std::size_t count = 0;
     for (std::int64_t i = first; i <= last; ++i)
       if (const double value = slot(i).value[c]; !std::isnan(value)) window[count++] = value;
-    if (count < least_of_window) continue;
-    if (is_near_median(at.value[c], 0.5 * limits_.spike * random_of(c, at.value[c]), window.data(), count))
-      continue;
+    if (count < enough) continue;
     const double middle = median_of(window.data(), count);
     // Nearly all readings are too close to be a spike whatever the others scatter.
     const double distance = std::abs(at.value[c] - middle), least = random_of(c, middle);

@@ -7,15 +7,18 @@
 namespace dutygauge::field {
 
 void Thinned::add(double value) {
-  if (seen_++ % stride_ != 0) return;
+  if (to_skip_ > 0) {
+    --to_skip_;
+    return;
+  }
+  values_.push_back(value);
   if (values_.size() == most_) {
     std::size_t kept = 0;
     for (std::size_t i = 0; i < values_.size(); i += 2) values_[kept++] = values_[i];
     values_.resize(kept);
     stride_ *= 2;
-    if ((seen_ - 1) % stride_ != 0) return;
   }
-  values_.push_back(value);
+  to_skip_ = stride_ - 1;
 }
 
 double Thinned::median() const {

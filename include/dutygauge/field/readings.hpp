@@ -69,8 +69,8 @@ std::string_view name(Drop drop);
 
 /// What became of the rows and of single values.
 struct Tally {
-  std::uint64_t rows = 0;                                           ///< read, headers not counted
-  std::array<std::uint64_t, drop_count> rows_by{};                  ///< by `Drop`; none: used
+  std::uint64_t rows = 0;                           ///< below the header; each is used or dropped
+  std::array<std::uint64_t, drop_count> rows_by{};  ///< by `Drop`; none: used
   std::uint64_t missing = 0, bad = 0, frozen = 0, drop_spikes = 0;  ///< values
   std::vector<std::string> first_bad;        ///< as typed, with their lines; at most three
   std::vector<std::string> first_bad_times;  ///< the same of times

@@ -30,7 +30,7 @@ class Thinned {
 
  private:
   std::size_t most_;
-  std::uint64_t stride_ = 1, seen_ = 0;
+  std::uint64_t stride_ = 1, to_skip_ = 0;
   std::vector<double> values_;
 };
 
@@ -89,10 +89,15 @@ class Screen {
     bool filled = false;
   };
 
+  struct Window {
+    std::int64_t first, last;  ///< rows, both included
+  };
+
   Slot& slot(std::int64_t row) { return slots_[static_cast<std::size_t>(row) % ring]; }
   void find_frozen(std::int64_t row);
   void find_straight(std::int64_t row);
   bool is_straight(std::int64_t row);
+  bool is_near_median(std::size_t channel, std::int64_t row, const Window& window);
   void find_spikes(std::int64_t row);
   void emit(std::int64_t row);
   Drop judge(std::int64_t row);
