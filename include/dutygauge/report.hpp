@@ -16,6 +16,7 @@ namespace dutygauge::report {
 struct Today {
   service::Assessment assessment;
   std::optional<uncertainty::Result> spread{};
+  std::optional<service::Holding> held{};        ///< where a control holds the duty
   std::optional<uncertainty::Spreads> change{};  ///< of the outcome less that under the reading's conditions
 };
 

@@ -80,7 +80,8 @@ void claims(Page& page, const Result& result, const TextOptions& options) {
   }
   if (rows.size() > 1) page.table(rows, {Align::left, Align::right, Align::right, Align::left, Align::left});
   const auto hidden = result.claims.size() + 1 - rows.size();
-  if (hidden > 0) page.line(fmt::format("  {} more: -v", hidden));
+  // Where the tally says it all, nothing more is announced.
+  if (hidden > 0 && rows.size() > 1) page.line(fmt::format("  {} more: -v", hidden));
 }
 
 }  // namespace dutygauge::report

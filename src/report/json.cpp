@@ -181,7 +181,7 @@ Json operating_case(const RatedCase& one) {
   json["states"] = {{"clean", state(one.clean, one.spread_clean, one.held_clean)},
                     {"design_fouling", fouled}};
   if (one.today) {
-    json["states"]["today"] = state(one.today->assessment, one.today->spread, {});
+    json["states"]["today"] = state(one.today->assessment, one.today->spread, one.today->held);
     json["states"]["today"]["change_since_reading"] = change_json(one.today->change);
   }
   return json;
