@@ -141,7 +141,7 @@ TEST_CASE("explore: a page of four cases fits a screen and begins with a sentenc
   const auto lines = lines_of(page);
   CHECK(lines.size() <= 50);
   for (const auto& line : lines) CHECK(line.size() <= 100);
-  CHECK(contains(page, "Design and more crude: yes. Hot water and both: yes clean, no at design fouling."));
+  CHECK(contains(page, "Design and more crude: yes, today and at design fouling. Hot water: yes as it is"));
   CHECK(contains(page, "<= 110.0"));
   CHECK(std::ranges::count_if(lines, [](const auto& line) { return contains(line, "design fouling  "); }) ==
         4);
@@ -154,7 +154,7 @@ TEST_CASE("explore: the rows of a page of cases keep to a line each, whatever th
   const auto document = case_io::read_document(text, "naphtha-cooler.yaml");
   for (const auto system : {units::System::si, units::System::metric, units::System::us}) {
     const auto lines = lines_of(report::text(explore::rate(document, system), {}));
-    CHECK(std::ranges::count_if(lines, [](const auto& line) { return line.ends_with("missed"); }) == 2);
+    CHECK(std::ranges::count_if(lines, [](const auto& line) { return line.ends_with("missed"); }) == 3);
     CHECK(std::ranges::all_of(lines, [](const auto& line) { return line.size() <= 100; }));
     CHECK(lines.size() <= 50);
   }

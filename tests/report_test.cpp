@@ -164,9 +164,9 @@ TEST_CASE("report: the JSON object is one line with its keys in a fixed order") 
   const auto object = Json::parse(line);
   CHECK(keys_of(object) ==
         std::vector<std::string>{"dutygauge",      "schema_version", "input_sha256",    "case",
-                                 "operating_case", "verdict",        "thermal",         "resistances_m2K_W",
-                                 "tube_side",      "shell_side",     "margins",         "spread",
-                                 "solutions",      "states",         "operating_cases", "assumed",
+                                 "operating_case", "present_since", "verdict",        "thermal",         "resistances_m2K_W",
+                                 "tube_side",      "shell_side",     "margins",         "spread", "control",
+                                 "solutions",      "states",         "operating_cases", "anchor", "assumed",
                                  "levers",         "findings",       "claims",          "inputs",
                                  "between_shells", "profile"});
   CHECK(keys_of(object["thermal"]) ==

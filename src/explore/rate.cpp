@@ -118,6 +118,13 @@ std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorR
   return report::Anchored{std::move(*anchor.value), *rated.outcome};
 }
 
+report::Today rated_today(const report::Anchored& anchored, const case_io::Case& a_case) {
+  report::Today today{.assessment = service::assess(uncertainty::today(anchored.anchor, a_case.problem),
+                                                    service_of(a_case))};
+  if (a_case.control) today.held = held(today.assessment, *a_case.control);
+  return today;
+}
+
 /// Everything but the claims.
 report::Result without_claims(const std::vector<case_io::Case>& cases, const Swings& swings) {
   std::vector<report::RatedCase> all(cases.size());
@@ -126,9 +133,7 @@ report::Result without_claims(const std::vector<case_io::Case>& cases, const Swi
   const auto anchored = anchored_to(cases.front().anchor, of_anchor);
   for (auto& one : all) one.findings.insert(one.findings.end(), of_anchor.begin(), of_anchor.end());
   if (anchored)
-    for (std::size_t i = 0; i < cases.size(); ++i)
-      all[i].today = {service::assess(uncertainty::today(anchored->anchor, cases[i].problem),
-                                      service_of(cases[i]))};
+    for (std::size_t i = 0; i < cases.size(); ++i) all[i].today = rated_today(*anchored, cases[i]);
   add_spreads(all, anchored, swings);
   const std::size_t worst = governing(all);
   const case_io::Case& a_case = cases[worst];

@@ -1,4 +1,4 @@
-#include <fmt/core.h>
+#include <fmt/format.h>
 
 #include <algorithm>
 
@@ -56,12 +56,16 @@ std::vector<std::string> spread_in_words(const Result& result) {
   if (!result.spread || !result.assessment.rating.outcome) return {};
   const auto& spread = *result.spread;
   const auto& outcome = *result.assessment.rating.outcome;
-  std::vector<std::string> said{fmt::format("{}n 9 cases of 10: duty +-{:.1f} %, {}, {}, {}, {}.",
-                                            result.anchored ? "At design fouling, i" : "I",
-                                            100.0 * half_width(spread, Output::duty) / outcome.duty,
-                                            outlet(result, Side::shell), outlet(result, Side::tube),
-                                            drop(result, Side::shell, outcome.shell_drop.total()),
-                                            drop(result, Side::tube, outcome.tube_drop.total()))};
+  std::vector<std::string> parts{
+      fmt::format("duty +-{:.1f} %", 100.0 * half_width(spread, Output::duty) / outcome.duty),
+      outlet(result, Side::shell), outlet(result, Side::tube)};
+  // Beside a reading the page keeps to what it speaks of.
+  if (!result.anchored) {
+    parts.push_back(drop(result, Side::shell, outcome.shell_drop.total()));
+    parts.push_back(drop(result, Side::tube, outcome.tube_drop.total()));
+  }
+  std::vector<std::string> said{
+      fmt::format("{}n 9 cases of 10: {}.", result.anchored ? "At design fouling, i" : "I", fmt::join(parts, ", "))};
   for (std::string sentence : {where_it_comes_from(spread), failures(spread)})
     if (!sentence.empty()) said.push_back(std::move(sentence));
   return said;
