@@ -273,5 +273,7 @@ TEST_CASE("arrangement: what is not built is objected to by key") {
   CHECK(objections({.tube_passes = 2}).empty());
   CHECK(objections({.tube_passes = 2, .flow = Flow::parallel}).at(0).key == "exchanger.flow_direction");
   CHECK(objections({.tube_passes = 0}).at(0).key == "exchanger.tubes.passes");
+  CHECK(objections({.tube_passes = 0}).at(0).what == "0 tube passes in an E shell");
+  CHECK(objections({.shell_type = 'G', .tube_passes = 3}).at(0).what == "3 tube passes in a G shell");
   CHECK(objections({.shell_type = 'Q'}).at(0).key == "exchanger.tema");
 }

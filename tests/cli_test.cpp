@@ -322,8 +322,35 @@ TEST_CASE("cli: the starter case rates as it stands, and explain knows its keys"
   CHECK(entry.status == Status::done);
   CHECK(contains(entry.out, "exchanger.baffles.cut"));
   CHECK(run({"explain", "exchanger.bafles"}).status == Status::input_at_fault);
+  CHECK(contains(run({"explain", "exchanger.bafles"}).err, "did you mean 'exchanger.baffles'?"));
   CHECK(run({"explain"}).status == Status::input_at_fault);
   CHECK(run({"schema", "word"}).status == Status::input_at_fault);
+}
+
+TEST_CASE("cli: explain knows findings, last parts of names, and what a misspelling means") {
+  const auto finding = run({"explain", "rating.mean_misleads"});
+  CHECK(finding.status == Status::done);
+  for (const char* part : {"rating.mean_misleads\n", "  when:", "above 1 %", "  matters:", "  do:"})
+    CHECK(contains(finding.out, part));
+  CHECK(contains(run({"explain", "arrangement.few_baffles"}).out, "  source:  K. Gardner"));
+  CHECK(run({"explain", "mean_misleads"}).out == finding.out);
+  CHECK(run({"explain", "cut", "--json"}).status == Status::done);
+  const auto spacing = run({"explain", "spacing"});
+  CHECK(spacing.status == Status::done);
+  CHECK(contains(spacing.out, "  shellside.spacing\n"));
+  CHECK(contains(spacing.out, "  exchanger.baffles.spacing\n"));
+  CHECK(!contains(spacing.out, "inlet_spacing"));
+  CHECK(Json::parse(run({"explain", "spacing", "--json"}).out)["names"].size() == 2);
+  CHECK(run({"explain", "pitch"}).out == run({"explain", "exchanger.tubes.pitch"}).out);
+  CHECK(Json::parse(run({"explain", "exchanger.tubes.pitch", "--json"}).out)["kind"] == "a length");
+  for (const auto& [typed, meant] : {std::pair("rating.mean_mislead", "rating.mean_misleads"),
+                                     std::pair("exchanger.tubes.lenght", "exchanger.tubes.length"),
+                                     std::pair("spaceing", "spacing")}) {
+    const auto refused = run({"explain", typed});
+    CHECK(refused.status == Status::input_at_fault);
+    CHECK(contains(refused.err, std::string("did you mean '") + meant + "'?"));
+  }
+  CHECK(!contains(run({"explain", "qqqqqqqqqqqqqqqqqqqqqqqq"}).err, "did you mean"));
 }
 
 TEST_CASE("cli: every case of the project gives a page that fits and JSON that stays") {

@@ -6,6 +6,7 @@
 #include <string>
 
 #include "dutygauge/fluids.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "support.hpp"
 
 /// What every fluid keeps, whatever its model; and what its making answers.
@@ -82,6 +83,11 @@ inline bool found(const Findings& findings, const std::string& id) {
   for (const auto& finding : findings)
     if (finding.id == id) return true;
   return false;
+}
+
+/// A message with its mentions in metric units.
+inline std::string metric(const std::string& text) {
+  return dutygauge::units::spoken(text, dutygauge::units::System::metric);
 }
 
 }  // namespace fluids_laws

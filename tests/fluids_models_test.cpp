@@ -15,6 +15,7 @@ using namespace dutygauge;
 using namespace dutygauge::fluids;
 using fluids_laws::check_laws;
 using fluids_laws::found;
+using fluids_laws::metric;
 
 namespace {
 
@@ -105,8 +106,8 @@ TEST_CASE("fluids: the usable range ends where the fluid boils, condenses or fre
         doctest::Approx(373.66).epsilon(0.0005));
   CHECK(usable_temperatures(make_seawater(0.035).fluid, 101325.0).low ==
         doctest::Approx(271.24).epsilon(0.0005));
-  CHECK(why_it_ends(make_liquid("methanol").fluid, 101325.0, true).starts_with("it boils at 64"));
-  CHECK(why_it_ends(make_solution("ethylene_glycol_water", 0.4).fluid, 3e5, false) ==
+  CHECK(metric(why_it_ends(make_liquid("methanol").fluid, 101325.0, true)).starts_with("it boils at 64"));
+  CHECK(metric(why_it_ends(make_solution("ethylene_glycol_water", 0.4).fluid, 3e5, false)) ==
         "it freezes at -23.8 degC");
   // Water vapour of 15 % at 1 bar condenses at the saturation temperature of 0.15 bar.
   const double dew = water::saturation_temperature(0.15e5);

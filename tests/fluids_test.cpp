@@ -11,6 +11,7 @@ using namespace dutygauge;
 using namespace dutygauge::fluids;
 using fluids_laws::check_laws;
 using fluids_laws::found;
+using fluids_laws::metric;
 using fluids_laws::objects;
 
 namespace {
@@ -124,7 +125,12 @@ TEST_CASE("fluids: a temperature outside the range is said, with how far") {
   REQUIRE(near.size() == 1);
   CHECK(near[0].id == "fluids.extrapolated");
   CHECK(near[0].severity == Severity::should);
-  CHECK(near[0].text.find("5.0 K above") != std::string::npos);
+  CHECK(metric(near[0].text).find("5.0 K above") != std::string::npos);
+  // What no thermometer shows and no page could print is no extrapolation.
+  CHECK(check_bulk(table, 393.15 + 0.049, 1e5, "shell side, inlet").empty());
+  CHECK(found(check_bulk(table, 393.15 + 0.051, 1e5, "shell side, inlet"), "fluids.extrapolated"));
+  CHECK(check_wall(table, 393.15 + 0.049, 1e5, "shell side").empty());
+  CHECK(found(check_wall(table, 393.15 + 0.051, 1e5, "shell side"), "fluids.wall_outside"));
   const Findings far = check_bulk(table, 453.15, 1e5, "shell side, inlet");
   REQUIRE(far.size() == 1);
   CHECK(far[0].id == "fluids.beyond_usable");
@@ -171,13 +177,24 @@ TEST_CASE("fluids: water takes the phase of its inlet and refuses to guess near 
   }
 }
 
+TEST_CASE(
+    "fluids: a boundary that is passed by next to nothing is just passed, and ice has no negative zero") {
+  const Fluid liquid = water_at(300.0, 6e5);
+  const double end = usable_temperatures(liquid, 6e5).high;
+  const Findings beyond = check_bulk(liquid, end + 0.01, 6e5, "tube side, outlet");
+  REQUIRE(found(beyond, "fluids.beyond_usable"));
+  CHECK(metric(beyond[0].text).find("158.8 degC is just above what can be computed of water") !=
+        std::string::npos);
+  CHECK(metric(make_water(273.12, 6e5).objections.at(0).what) == "water at 0.0 degC is ice");
+}
+
 TEST_CASE("fluids: water says where it boils, condenses, freezes or is not covered") {
   const Fluid liquid = water_at(300.0, 6e5), steam = water_at(500.0, 6e5);
   CHECK(usable_temperatures(liquid, 6e5).high == doctest::Approx(431.98).epsilon(1e-4));
-  CHECK(why_it_ends(liquid, 6e5, true) == "it boils at 158.8 degC");
-  CHECK(why_it_ends(liquid, 6e5, false) == "it freezes at 0.0 degC");
-  CHECK(why_it_ends(steam, 6e5, false) == "it condenses at 158.8 degC");
-  CHECK(why_it_ends(steam, 6e5, true).find("800.0 degC") != std::string::npos);
+  CHECK(metric(why_it_ends(liquid, 6e5, true)) == "it boils at 158.8 degC");
+  CHECK(metric(why_it_ends(liquid, 6e5, false)) == "it freezes at 0.0 degC");
+  CHECK(metric(why_it_ends(steam, 6e5, false)) == "it condenses at 158.8 degC");
+  CHECK(metric(why_it_ends(steam, 6e5, true)).find("800.0 degC") != std::string::npos);
   CHECK(why_it_ends(liquid, 3e7, true).find("near-critical") != std::string::npos);
   CHECK(found(check_bulk(liquid, 430.0, 6e5, "tube side, outlet"), "fluids.near_boiling"));
   CHECK(found(check_bulk(liquid, 432.5, 6e5, "tube side, outlet"), "fluids.beyond_usable"));

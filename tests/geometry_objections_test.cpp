@@ -88,6 +88,7 @@ TEST_CASE("geometry: what cannot be is objected to by its key, and derive refuse
       {"exchanger.baffles.cut",  // a window full of tubes
        [](Description& d) {
          d.tube_pitch = 0.01906, d.tube_count = 680, d.bundle_to_shell = 0.0, d.baffle_cut = 0.45;
+         d.tube_to_baffle = 0.0;
        }},
       {"exchanger.baffles.count", [](Description& d) { d.baffle_count = 0; }},
       {"exchanger.baffles.count", [](Description& d) { d.baffle_count = 40; }},
@@ -148,4 +149,15 @@ TEST_CASE("geometry: a published tube count is never refused as too full, half a
     d.tube_count = row.fit * 3 / 2;
     CHECK(objects_to(d, "exchanger.tubes.count"));
   }
+}
+
+TEST_CASE("geometry: baffle holes that meet are objected to, with the gap between tubes") {
+  Description d = complete();  // 25.4 mm less 19.05 mm leave 6.35 mm
+  d.tube_to_baffle = 0.00634;
+  CHECK(objections(d).empty());
+  d.tube_to_baffle = 0.00636;
+  REQUIRE(objects_to(d, "exchanger.clearances.tube_to_baffle"));
+  CHECK(objections(d).front().what.find("6.35 mm between two tubes") != std::string::npos);
+  d.tube_to_baffle = d.tube_pitch - d.tube_outside_diameter;
+  CHECK(objects_to(d, "exchanger.clearances.tube_to_baffle"));
 }

@@ -200,3 +200,18 @@ TEST_CASE("tubeside: every finding shows its value, has a limit and names a know
     CHECK(!sources::citation(finding.source).empty());
   }
 }
+
+TEST_CASE("tubeside: roughness is remarked on from 5 % of the bore, with the unit as the likely slip") {
+  geometry::TubeSide tubes = some_tubes();
+  const auto checked = [&] { return check_film(tubes, plain_film(), some_liquid(), some_liquid()); };
+  tubes.roughness = 0.05 * tubes.inside_diameter;
+  CHECK(find(checked(), "tubeside.roughness") == nullptr);
+  tubes.roughness = 0.0501 * tubes.inside_diameter;
+  const Findings findings = checked();
+  const Finding* rough = find(findings, "tubeside.roughness");
+  REQUIRE(rough != nullptr);
+  CHECK(rough->severity == Severity::should);
+  CHECK(rough->limit == doctest::Approx(0.001));
+  CHECK(rough->text.find("um typed as mm") != std::string::npos);
+  CHECK(!sources::citation(rough->source).empty());
+}

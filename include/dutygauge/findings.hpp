@@ -19,7 +19,8 @@ struct Finding {
   std::string id;  ///< "module.what": stable; tests and JSON rely on it
   Severity severity = Severity::note;
   std::string text;  ///< what, why it matters, what to do; "{value}" and "{limit}" stand for the two
-                     ///< numbers below, which the reports show in the reader's units
+                     ///< numbers below, which the reports show in the reader's units; any other
+                     ///< number with a unit is written by units::mention
   Ground ground = Ground::method;
   double value = 0, limit = 0;            ///< SI, temperatures in K
   units::Kind kind = units::Kind::ratio;  ///< of value and limit
@@ -40,7 +41,7 @@ struct Assumption {
   double value = 0;  ///< SI; unused where `word` is set
   units::Kind kind = units::Kind::ratio;
   std::string word = {};                      ///< for values that are words ("liquid")
-  std::string why;                            ///< where the value comes from
+  std::string why;                            ///< where it comes from, with mentions as in a finding
   std::optional<double> low = {}, high = {};  ///< plausible span, SI
   std::string look_in = {};                   ///< the document that would settle it
   Span span = Span::plausible;                ///< what `low` and `high` are

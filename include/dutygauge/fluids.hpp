@@ -67,8 +67,8 @@ TemperatureRange valid_temperatures(const Fluid& fluid, double pressure);
 /// Ends where the fluid boils, condenses or freezes, as far as that is known.
 TemperatureRange usable_temperatures(const Fluid& fluid, double pressure);
 
-/// What stops the fluid at the ends of its usable range, for messages
-/// ("it boils at 158.8 degC", "the table ends at 90 degC").
+/// What stops the fluid at the ends of its usable range, for messages with units::mention
+/// ("it boils at {temperature:431.95}", "the table ends at {temperature:363.15}").
 std::string why_it_ends(const Fluid& fluid, double pressure, bool at_upper_end);
 
 /// What one property rests on.

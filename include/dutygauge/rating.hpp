@@ -46,6 +46,7 @@ struct Stream {
   double mass_flow = 0;               ///< of the whole unit [kg/s]
   double inlet_temperature = 0;       ///< [K]
   double inlet_pressure = 0;          ///< [Pa] absolute
+  bool pressure_is_known = true;      ///< else it stands for one that nothing depends on
   double fouling_resistance = 0;      ///< on the surface it sits on [m2.K/W]
   std::optional<FilmLaw> film_law{};  ///< in place of the correlation
   std::optional<DropLaw> drop_law{};  ///< the same
@@ -127,7 +128,7 @@ struct Outcome {
 /// A rating, or why there is none.
 struct Rating {
   std::optional<Outcome> outcome;
-  std::string no_result;                        ///< why not, a sentence; empty with an outcome
+  std::string no_result;                        ///< why not, with units::mention; empty with an outcome
   double largest_duty = 0;                      ///< what an endless surface in counterflow would do [W]
   std::optional<double> mean_duty, march_duty;  ///< of the solutions that were found [W]
   Findings findings;

@@ -95,8 +95,11 @@ std::string text(const Result& result, const TextOptions& options);
 /// Throws std::logic_error where a number is not finite: null means "not defined".
 std::string json(const Result& result);
 
-/// The finding's text with its two numbers in a system of units.
+/// The finding's text with its numbers in a system of units.
 std::string sentence(const Finding& finding, units::System system);
+
+/// The same for where an assumed value comes from.
+std::string reason(const Assumption& assumption, units::System system);
 
 std::string_view word(Severity severity);
 

@@ -49,6 +49,12 @@ bool is_rated(char shell_type) {
   return std::string_view("EFGHJKX").find(shell_type) != std::string_view::npos;
 }
 
+/// "an E shell", "a G shell": by how the letter is spoken.
+std::string with_article(char shell_type) {
+  return fmt::format(
+      "{} {}", std::string_view("EFHX").find(shell_type) == std::string_view::npos ? "a" : "an", shell_type);
+}
+
 }  // namespace
 
 bool is_built(const Arrangement& a) {
@@ -62,30 +68,32 @@ Objections objections(const Arrangement& a) {
     result.push_back({"exchanger.tema", fmt::format("there is no shell of type {}", a.shell_type),
                       "E, F, G, H, J, K or X", "take the middle letter from the data sheet"});
   else if (!shell_details_fit(a))
-    result.push_back({"exchanger.tema",
-                      fmt::format("this detail of the flow does not exist in a {} shell", a.shell_type),
-                      "a longitudinal baffle that conducts in F, an unequal split in J, mixing in X and H",
-                      "leave the detail out, or correct the shell type"});
+    result.push_back(
+        {"exchanger.tema",
+         fmt::format("this detail of the flow does not exist in {} shell", with_article(a.shell_type)),
+         "a longitudinal baffle that conducts in F, an unequal split in J, mixing in X and H",
+         "leave the detail out, or correct the shell type"});
   if (a.shells_in_series < 1)
     result.push_back({"exchanger.shells.in_series", fmt::format("{} shells in series", a.shells_in_series),
                       "1 or more", "give the number of shells one stream passes after another"});
   if (is_rated(a.shell_type) && !passes_fit(a))
-    result.push_back(
-        {"exchanger.tubes.passes", fmt::format("{} tube passes in a {} shell", a.tube_passes, a.shell_type),
-         a.shell_type == 'F'          ? "an even number: half of them on each side of the baffle"
-         : has_two_ways(a.shell_type) ? "1, or an even number: half of them on each side of the baffle"
-                                      : "1 or more",
-         "check the number of passes of one shell on the drawing"});
+    result.push_back({"exchanger.tubes.passes",
+                      fmt::format("{} tube passes in {} shell", a.tube_passes, with_article(a.shell_type)),
+                      a.shell_type == 'F' ? "an even number: half of them on each side of the baffle"
+                      : has_two_ways(a.shell_type)
+                          ? "1, or an even number: half of them on each side of the baffle"
+                          : "1 or more",
+                      "check the number of passes of one shell on the drawing"});
   if (!areas_fit(a))
     result.push_back({"exchanger.tubes.passes", "the surfaces of the passes do not match their number",
                       fmt::format("a positive surface for each of at most {} passes", most_unequal_passes),
                       "give one for each pass, or none"});
   if (!flow_fits(a))
-    result.push_back(
-        {"exchanger.flow_direction",
-         fmt::format("parallel flow with {} tube passes in a {} shell", a.tube_passes, a.shell_type),
-         "parallel only with one tube pass in an E shell",
-         "leave flow_direction out: the passes run both ways, or the shell type decides"});
+    result.push_back({"exchanger.flow_direction",
+                      fmt::format("parallel flow with {} tube passes in {} shell", a.tube_passes,
+                                  with_article(a.shell_type)),
+                      "parallel only with one tube pass in an E shell",
+                      "leave flow_direction out: the passes run both ways, or the shell type decides"});
   return result;
 }
 

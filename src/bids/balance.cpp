@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 
+#include "dutygauge/units/mention.hpp"
 #include "sheet.hpp"
 
 // Duty and outlets: three ways to say what heat is exchanged.
@@ -133,7 +134,8 @@ std::string cause_of_outlet(const Sheet& sheet, const Vote& vote, std::optional<
   if (computed && other && std::abs(other->value - *computed) < 0.1)
     return "the outlet of the other side stands here";
   if (computed && std::abs(std::abs(stated - *computed) - 10.0) <= 0.1 + (*vote.stated)->rounding)
-    return "a digit is off: the outlet is 10 K from where it belongs";
+    return fmt::format("a digit is off: the outlet is {} from where it belongs",
+                       units::mention(10.0, units::Kind::temperature_difference));
   return "outlet of another operating case, or of another flow or heat capacity";
 }
 

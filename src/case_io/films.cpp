@@ -11,7 +11,8 @@ namespace {
 using units::Kind;
 
 constexpr const char* trust =
-    " The result is no better than this value: whatever is said of how sure it is, is capped by it";
+    " The result is no better than this value, which caps whatever is said of how sure it is; see that "
+    "the reason still holds";
 
 /// The reason, which an overriding key needs.
 std::string reason(Reading& reading, const std::string& block, const std::string& key) {

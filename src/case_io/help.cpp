@@ -3,6 +3,7 @@
 #include <algorithm>
 
 #include "dutygauge/case_io.hpp"
+#include "dutygauge/case_io/keys.hpp"
 #include "fields.hpp"
 #include "wording.hpp"
 
@@ -65,11 +66,13 @@ bool is_commented(const FieldTable& table, std::string_view key) {
   return false;
 }
 
-const Field* find_by_end(const FieldTable& table, std::string_view key) {
+bool ends_in(std::string_view key, std::string_view end) {
+  return key.size() > end.size() && key.ends_with(end) && key[key.size() - end.size() - 1] == '.';
+}
+
+const Field* find_by_end(const FieldTable& table, std::string_view end) {
   for (const Field& field : table.all())
-    if (field.key.size() > key.size() && field.key.ends_with(key) &&
-        field.key[field.key.size() - key.size() - 1] == '.')
-      return &field;
+    if (ends_in(field.key, end)) return &field;
   return nullptr;
 }
 
@@ -120,6 +123,18 @@ std::string starter_case() {
     if (!is_of_a_fluid(field.key) && !is_list_item(field.key) && !is_of_another_channel(field.key))
       text += starter_line(field, is_commented(table, field.key));
   return text;
+}
+
+std::vector<std::string> all_keys() {
+  std::vector<std::string> keys;
+  for (const Field& field : case_fields().all()) keys.emplace_back(field.key);
+  return keys;
+}
+
+std::vector<std::string> keys_ending_in(std::string_view end) {
+  std::vector<std::string> keys = all_keys();
+  std::erase_if(keys, [end](const std::string& key) { return !ends_in(key, end); });
+  return keys;
 }
 
 std::optional<FieldHelp> explain(std::string_view key) {

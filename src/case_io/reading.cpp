@@ -4,6 +4,7 @@
 
 #include <cmath>
 
+#include "dutygauge/units/mention.hpp"
 #include "excuses.hpp"
 #include "suggestions.hpp"
 #include "wording.hpp"
@@ -98,9 +99,12 @@ Position Reading::position_of(std::string_view key) const {
   return {1, 1};
 }
 
-void Reading::note(const std::string& key, std::string what, std::string expected, std::string remedy) {
+void Reading::note(const std::string& key, const std::string& what, const std::string& expected,
+                   const std::string& remedy) {
+  // What modules say of a file carries mentions; messages about files are metric throughout.
+  const auto said = [](const std::string& text) { return units::spoken(text, units::System::metric); };
   at_fault_.insert(key);
-  mistakes_.push_back({position_of(key), key, std::move(what), std::move(expected), std::move(remedy)});
+  mistakes_.push_back({position_of(key), key, said(what), said(expected), said(remedy)});
 }
 
 bool Reading::is_at_fault_within(std::string_view key) const {

@@ -64,7 +64,8 @@ class Reading {
   bool is_at_fault(std::string_view key) const { return at_fault_.contains(key); }
 
   /// Notes a mistake where the key stands, else where the nearest block above it stands.
-  void note(const std::string& key, std::string what, std::string expected, std::string remedy);
+  void note(const std::string& key, const std::string& what, const std::string& expected,
+            const std::string& remedy);
 
   /// Notes what another module objects to, once a key.
   void note_all(const Objections& objections);

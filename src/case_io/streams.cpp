@@ -160,6 +160,7 @@ std::optional<MadeStream> stream_of(Reading& reading, const std::string& name) {
                                .mass_flow = *flow,
                                .inlet_temperature = *inlet.temperature,
                                .inlet_pressure = *inlet.pressure,
+                               .pressure_is_known = reading.has(side + ".inlet.pressure"),
                                .fouling_resistance = *fouling},
                     .assumed = std::move(made->assumed),
                     .findings = std::move(made->findings)};

@@ -66,8 +66,9 @@ constexpr Option field_options[] = {
     force_option};
 
 constexpr std::string_view explain_examples[] = {
-    "dutygauge explain exchanger.baffles.cut            what a key of the case file means",
-    "dutygauge explain streams.shell_side.fouling       and how it may be written"};
+    "dutygauge explain rating.mean_misleads    what a finding means, when it is made, what to do",
+    "dutygauge explain spacing                 the keys that end so; a full key says how it is written"};
+constexpr Option explain_options[] = {{"json", "", "", "one JSON object"}, out_option, force_option};
 
 constexpr std::string_view new_examples[] = {
     "dutygauge new > cooler.yaml         a case to start from, with every key explained",
@@ -151,7 +152,10 @@ constexpr Command table[] = {
      "P = (t_out - t_in)/(T_in - t_in), R and NTU are all referred to the tube side. A P that no surface "
      "reaches is answered with the limit and status 1.",
      run_ntu},
-    {"explain", "say what a key of the case file means", "KEY", explain_examples, result_options, "",
+    {"explain", "say what a finding or a key of the case file means", "[OPTION]... ID|KEY", explain_examples,
+     explain_options,
+     "ID is what stands in brackets behind a finding. Of a KEY or an ID the last part will do: where several "
+     "end so, they are listed.",
      run_explain},
     {"new", "print a commented case to start from", "[OPTION]...", new_examples, result_options, "", run_new},
     {"schema", "print the JSON Schema of a case file", "[OPTION]...", schema_examples, result_options, "",

@@ -9,6 +9,7 @@
 #include "dutygauge/case_io.hpp"
 #include "dutygauge/cli.hpp"
 #include "dutygauge/report.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "fluid_page.hpp"
 
 namespace dutygauge::cli {
@@ -121,8 +122,9 @@ FluidTable table_of(const Call& call, const std::string& spec) {
   refuse_bare_pressure(at, made.fluid);
   for (const fluids::Inlet& place : places)
     if (const auto objections = fluids::object_to_inlet(made.fluid, place); !objections.empty())
-      throw CallError(
-          fmt::format("--at: {}; expected {}", objections.front().what, objections.front().expected));
+      throw CallError(units::spoken(
+          fmt::format("--at: {}; expected {}", objections.front().what, objections.front().expected),
+          units::System::metric));
   FluidTable table{.fluid = made.fluid, .assumed = made.assumed, .findings = findings_of(made, places)};
   for (const std::string& open : at.pressure->taken_for_granted)
     table.assumed.push_back(
@@ -136,7 +138,8 @@ FluidTable table_of(const Call& call, const std::string& spec) {
 void say_beside(const FluidTable& table, std::ostream& err) {
   for (const Assumption& one : table.assumed)
     err << fmt::format("dutygauge: assumed: {}: {} ({})\n", one.key,
-                       one.word.empty() ? units::typed(one.value, one.kind) : one.word, one.why);
+                       one.word.empty() ? units::typed(one.value, one.kind) : one.word,
+                       report::reason(one, units::System::metric));
   for (const Finding& one : table.findings)
     err << fmt::format("dutygauge: {}: {}\n", report::word(one.severity),
                        report::sentence(one, units::System::metric));

@@ -79,10 +79,10 @@ std::string citations(const fluids::Fluid& fluid) {
 std::string beside(const FluidTable& table, units::System system) {
   std::string text;
   for (const Assumption& one : table.assumed)
-    text += wrapped(
-        "  assumed  ",
-        fmt::format("{}: {} ({})", one.key,
-                    one.word.empty() ? units::typed(one.value, one.kind, system) : one.word, one.why));
+    text += wrapped("  assumed  ",
+                    fmt::format("{}: {} ({})", one.key,
+                                one.word.empty() ? units::typed(one.value, one.kind, system) : one.word,
+                                report::reason(one, system)));
   for (const Finding& one : table.findings)
     text += wrapped(fmt::format("  {:<7}  ", report::word(one.severity)), report::sentence(one, system));
   return text.empty() ? text : "\nTo know\n" + text;

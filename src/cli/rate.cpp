@@ -67,7 +67,8 @@ std::vector<std::string> refusals(const report::Result& result, const std::strin
   for (const auto& one : result.assumed)
     lines.push_back(fmt::format(
         "{}: error: {}: left open, and --strict takes no assumption; it would be {} ({}); write it down",
-        file, one.key, one.word.empty() ? units::typed(one.value, one.kind) : one.word, one.why));
+        file, one.key, one.word.empty() ? units::typed(one.value, one.kind) : one.word,
+        report::reason(one, units::System::metric)));
   return lines;
 }
 

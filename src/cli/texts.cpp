@@ -27,17 +27,4 @@ int run_schema(const Call& call, Streams streams) {
   return done;
 }
 
-int run_explain(const Call& call, Streams streams) {
-  if (call.arguments.size() != 1)
-    throw CallError("explain takes one key of the case file, such as exchanger.baffles.cut");
-  const std::string& key = call.arguments.front();
-  const auto entry = case_io::explain(key);
-  if (!entry) throw CallError(fmt::format("no key '{}' in a case file; 'dutygauge new' shows them all", key));
-  deliver(call,
-          fmt::format("{}\n  {}\n  kind: {}\n  expected: {}\n", entry->key, entry->help, entry->kind,
-                      entry->expected),
-          streams.out);
-  return done;
-}
-
 }  // namespace dutygauge::cli

@@ -4,6 +4,7 @@
 #include <numeric>
 
 #include "dutygauge/numerics.hpp"
+#include "dutygauge/report.hpp"
 #include "scan.hpp"
 
 namespace dutygauge::explore {
@@ -20,18 +21,6 @@ bool holds(const Reading& reading, std::size_t condition) {
 const Finding* remark(const Reading& reading, const std::string& id) {
   const auto found = std::ranges::find(reading.remarks, id, &Finding::id);
   return found == reading.remarks.end() ? nullptr : &*found;
-}
-
-void fill(std::string& text, std::string_view token, double value, units::Kind kind, units::System system) {
-  for (auto at = text.find(token); at != std::string::npos; at = text.find(token))
-    text.replace(at, token.size(), units::typed(value, kind, system, 4));
-}
-
-std::string sentence(const Finding& finding, units::System system) {
-  std::string text = finding.text;
-  fill(text, "{value}", finding.value, finding.kind, system);
-  fill(text, "{limit}", finding.limit, finding.kind, system);
-  return text;
 }
 
 /// Remarks that one reading has and the other has not.
@@ -94,7 +83,7 @@ void Follower::compare(const Reading& low, const Reading& high, std::vector<repo
     const Reading& with = without(a) ? b : a;
     const Finding* finding = remark(with, id);
     found.push_back({.name = id,
-                     .what = finding ? sentence(*finding, case_.display) : "",
+                     .what = finding ? report::sentence(*finding, case_.display) : "",
                      .value = with.value,
                      .fails_above = without(a),
                      .stops = false});

@@ -81,8 +81,8 @@ Made make_in_phase(const LiquidRow& row, Inlet inlet) {
   const double excess = std::log(inlet.pressure / vapour_pressure(row, inlet.temperature));
   if (!(std::abs(excess) > 0.005))
     return refused("",
-                   fmt::format("{} at {} and {:.4g} bar is at its boiling point", row.name,
-                               celsius(inlet.temperature), inlet.pressure * 1e-5),
+                   fmt::format("{} at {} and {} is at its boiling point", row.name, said(inlet.temperature),
+                               said_pressure(inlet.pressure)),
                    "a state away from boiling", "correct the inlet; a boiling stream cannot be rated here");
   return excess > 0.0 ? make_liquid(row.key) : make_gas(row.key);
 }
@@ -95,8 +95,8 @@ Made make_steam(Inlet inlet) {
   Made made = make_water(inlet.temperature, inlet.pressure);
   if (made.objections.empty() && made.fluid.phase == Phase::liquid)
     return refused("",
-                   fmt::format("steam at {} and {:.4g} bar is liquid water", celsius(inlet.temperature),
-                               inlet.pressure * 1e-5),
+                   fmt::format("steam at {} and {} is liquid water", said(inlet.temperature),
+                               said_pressure(inlet.pressure)),
                    "a temperature above boiling", "correct the inlet, or write `water`");
   return made;
 }

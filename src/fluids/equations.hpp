@@ -3,6 +3,7 @@
 #include <vector>
 
 #include "dutygauge/fluids.hpp"
+#include "dutygauge/units/mention.hpp"
 
 /// What each model of a fluid gives to the common functions of the module: one overload a model.
 namespace dutygauge::fluids {
@@ -115,7 +116,9 @@ double log_reduced_vapour_pressure(double reduced_temperature, double acentric_f
 /// Refuses the fluid with one objection.
 Made refused(std::string key, std::string what, std::string expected, std::string remedy);
 
-/// A temperature for a message: "158.8 degC".
-std::string celsius(double temperature);
+/// A temperature, a difference, and a pressure, for a message: units::mention of it.
+std::string said(double temperature);
+std::string said_difference(double kelvin);
+std::string said_pressure(double pressure);
 
 }  // namespace dutygauge::fluids

@@ -58,8 +58,16 @@ Limits limits(const Fluid& fluid, double pressure) {
 
 }  // namespace
 
-std::string celsius(double temperature) {
-  return fmt::format("{:.1f} degC", temperature - 273.15);
+std::string said(double temperature) {
+  return units::mention(temperature, units::Kind::temperature);
+}
+
+std::string said_difference(double kelvin) {
+  return units::mention(kelvin, units::Kind::temperature_difference);
+}
+
+std::string said_pressure(double pressure) {
+  return units::mention(pressure, units::Kind::pressure);
 }
 
 Made refused(std::string key, std::string what, std::string expected, std::string remedy) {
@@ -116,9 +124,9 @@ Objections object_to_inlet(const Fluid& fluid, Inlet inlet) {
   const bool above = inlet.temperature > usable.high;
   if (!above && inlet.temperature >= usable.low) return {};
   return {{"",
-           fmt::format("{} cannot be used at {} and {:.4g} bar: {}", fluid.name, celsius(inlet.temperature),
-                       inlet.pressure * 1e-5, why_it_ends(fluid, inlet.pressure, above)),
-           fmt::format("an inlet between {} and {}", celsius(usable.low), celsius(usable.high)),
+           fmt::format("{} cannot be used at {} and {}: {}", fluid.name, said(inlet.temperature),
+                       said_pressure(inlet.pressure), why_it_ends(fluid, inlet.pressure, above)),
+           fmt::format("an inlet between {} and {}", said(usable.low), said(usable.high)),
            "correct the inlet, or give the properties as two_point or table"}};
 }
 

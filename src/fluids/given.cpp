@@ -34,8 +34,8 @@ void apply(const GivenProperty& given, const std::string& key, double pressure, 
   const TemperatureRange usable = usable_temperatures(made.fluid, pressure);
   if (!(given.temperature >= usable.low && given.temperature <= usable.high)) {
     made.objections.push_back(
-        {key, fmt::format("{} is outside the range of {}", celsius(given.temperature), made.fluid.name),
-         fmt::format("a temperature between {} and {}", celsius(usable.low), celsius(usable.high)),
+        {key, fmt::format("{} is outside the range of {}", said(given.temperature), made.fluid.name),
+         fmt::format("a temperature between {} and {}", said(usable.low), said(usable.high)),
          "give the property at a temperature of the service"});
     return;
   }
@@ -45,7 +45,7 @@ void apply(const GivenProperty& given, const std::string& key, double pressure, 
   if (!(ratio >= least_factor && ratio <= greatest_factor)) {
     made.objections.push_back({key,
                                fmt::format("{:.4g} against {:.4g} (SI) of {} at {} cannot be meant",
-                                           given.value, model, made.fluid.name, celsius(given.temperature)),
+                                           given.value, model, made.fluid.name, said(given.temperature)),
                                "a value near the fluid's own", "correct the value or its unit"});
     return;
   }
@@ -56,7 +56,7 @@ void apply(const GivenProperty& given, const std::string& key, double pressure, 
        .severity = Severity::should,
        .text = fmt::format(
            "the given {} is {:.3g} times what {} has at {}; check the value, its unit and the fluid",
-           given.property, ratio, made.fluid.name, celsius(given.temperature)),
+           given.property, ratio, made.fluid.name, said(given.temperature)),
        .ground = Ground::judgement,
        .value = ratio,
        .limit = 1.0,

@@ -69,10 +69,10 @@ std::string end_of(const Model& model, Phase phase, double pressure, bool upper)
   const TemperatureRange usable = limits_of(model, phase, pressure).usable;
   const double end = upper ? usable.high : usable.low;
   if (end != (upper ? reach.usable.high : reach.usable.low) || usable.low >= usable.high)
-    return fmt::format("{} at {}", phase_end(model, {end, pressure}).what, celsius(end));
-  if (!upper && freezes_at_low_end(model)) return fmt::format("it freezes at {}", celsius(end));
+    return fmt::format("{} at {}", phase_end(model, {end, pressure}).what, said(end));
+  if (!upper && freezes_at_low_end(model)) return fmt::format("it freezes at {}", said(end));
   return fmt::format("its data end at {} and are followed no further than {}",
-                     celsius(upper ? reach.valid.high : reach.valid.low), celsius(end));
+                     said(upper ? reach.valid.high : reach.valid.low), said(end));
 }
 
 }  // namespace dutygauge::fluids

@@ -108,8 +108,8 @@ Objections object_to_points(const std::vector<ViscosityPoint>& points, const std
     object(fmt::format("the two temperatures are {:.3g} K apart", warm.temperature - cold.temperature),
            "two points at least 20 K apart", "give a second point farther away");
   else if (cold.dynamic == warm.dynamic && warm.viscosity >= cold.viscosity)
-    object(fmt::format("the viscosity does not fall from {} to {}", celsius(cold.temperature),
-                       celsius(warm.temperature)),
+    object(fmt::format("the viscosity does not fall from {} to {}", said(cold.temperature),
+                       said(warm.temperature)),
            "a lower viscosity at the higher temperature", "check whether the two values are exchanged");
   for (const auto& point : points) {
     const double least = point.dynamic ? 0.21e-6 * 500.0 : 0.21e-6, most = point.dynamic ? 20000.0 : 20.0;

@@ -8,6 +8,10 @@
 namespace dutygauge::fluids {
 namespace {
 
+std::string said_viscosity(const ViscosityPoint& point) {
+  return units::mention(point.viscosity, units::Kind::kinematic_viscosity);
+}
+
 constexpr double coldest = 223.15, density_tables_end = 423.15;  // [K]
 constexpr double viscosity_reach = 30.0;                         // [K] past measured points, ASTM D341
 
@@ -89,9 +93,10 @@ void set_viscosity(const PetroleumData& data, double gravity, Made& made, OilMod
       {.id = "fluids.viscosity_estimated",
        .severity = Severity::should,
        .text = fmt::format("the viscosity of the petroleum is estimated from its gravity and Watson factor "
-                           "({:.3g} mm2/s at 37.8 degC, {:.3g} at 98.9 degC); it may be 30 to 50 % wrong; "
+                           "({} at {}, {} at {}); it may be 30 to 50 % wrong; "
                            "give two measured points, above all for crude and residue",
-                           points[0].viscosity * 1e6, points[1].viscosity * 1e6),
+                           said_viscosity(points[0]), said(points[0].temperature), said_viscosity(points[1]),
+                           said(points[1].temperature)),
        .ground = Ground::method,
        .value = points[0].viscosity,
        .kind = units::Kind::kinematic_viscosity,

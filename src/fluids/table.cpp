@@ -135,8 +135,8 @@ double guess_temperature(const TableModel& model, Phase, double enthalpy, double
 std::string end_of(const TableModel& model, Phase, double, bool upper) {
   return fmt::format("{} at {} and can be continued no further than {}",
                      model.temperature.size() == 2 ? "the two given points end" : "the table ends",
-                     celsius(upper ? model.temperature.back() : model.temperature.front()),
-                     celsius(upper ? model.usable.high : model.usable.low));
+                     said(upper ? model.temperature.back() : model.temperature.front()),
+                     said(upper ? model.usable.high : model.usable.low));
 }
 
 bool changes_phase_at_end(const TableModel&, Phase, double, bool) {

@@ -19,23 +19,28 @@ struct Band {
 struct Column {
   const char* key;
   double PropertyRow::*value;
-  const char* unit;
+  units::Kind kind;
   Band liquid, gas;
 };
 
 // Common practice, no source: wide enough for hydrogen, helium, refrigerants and residues.
 constexpr Column columns[] = {
-    {"density", &PropertyRow::density, "kg/m3", {300.0, 3000.0}, {0.01, 300.0}},
-    {"heat_capacity", &PropertyRow::heat_capacity, "J/kg.K", {500.0, 15000.0}, {500.0, 15000.0}},
-    {"conductivity", &PropertyRow::conductivity, "W/m.K", {0.03, 1.0}, {0.003, 0.6}},
-    {"viscosity", &PropertyRow::viscosity, "Pa.s", {3e-5, 100.0}, {3e-6, 3e-4}},
+    {"density", &PropertyRow::density, units::Kind::density, {300.0, 3000.0}, {0.01, 300.0}},
+    {"heat_capacity",
+     &PropertyRow::heat_capacity,
+     units::Kind::heat_capacity,
+     {500.0, 15000.0},
+     {500.0, 15000.0}},
+    {"conductivity", &PropertyRow::conductivity, units::Kind::conductivity, {0.03, 1.0}, {0.003, 0.6}},
+    {"viscosity", &PropertyRow::viscosity, units::Kind::viscosity, {3e-5, 100.0}, {3e-6, 3e-4}},
 };
 
 void object_to_impossible(const PropertyRow& row, const std::string& prefix, Objections& objections) {
   for (const Column& column : columns) {
     const double value = row.*column.value;
     if (std::isfinite(value) && value > 0.0) continue;
-    objections.push_back({prefix + column.key, fmt::format("{:.4g} {} is impossible", value, column.unit),
+    objections.push_back({prefix + column.key,
+                          fmt::format("{:.4g} {} is impossible", value, units::json_unit(column.kind)),
                           "a number above zero", "correct the value or its unit"});
   }
 }
@@ -48,12 +53,13 @@ void remark_on_unusual(const PropertyRow& row, Phase phase, const std::string& p
     findings.push_back(
         {.id = "fluids.unusual_value",
          .severity = Severity::should,
-         .text = fmt::format(
-             "{}: a {} of {:.4g} {} is unusual for a {} (common: {:g} to {:g}); check its unit", place,
-             column.key, value, column.unit, phase == Phase::liquid ? "liquid" : "gas", low, high),
+         .text = fmt::format("{}: a {} of {{value}} is unusual for a {} (common: {} to {}); check its unit",
+                             place, column.key, phase == Phase::liquid ? "liquid" : "gas",
+                             units::mention(low, column.kind), units::mention(high, column.kind)),
          .ground = Ground::judgement,
          .value = value,
          .limit = value < low ? low : high,
+         .kind = column.kind,
          .source = "common_practice"});
   }
 }
@@ -73,7 +79,7 @@ void judge_trend(const PropertyRow& cold, const PropertyRow& warm, Phase phase, 
                  Made& made) {
   const double ratio = warm.viscosity / cold.viscosity;
   const std::string between =
-      fmt::format("between {} and {}", celsius(cold.temperature), celsius(warm.temperature));
+      fmt::format("between {} and {}", said(cold.temperature), said(warm.temperature));
   if (phase == Phase::gas) {
     if (ratio < 1.0 || ratio > 3.0)
       made.findings.push_back(trend(
@@ -155,7 +161,7 @@ void object_to_order(const std::vector<PropertyRow>& rows, Objections& objection
     if (rows[i].temperature > rows[i - 1].temperature) continue;
     objections.push_back({fmt::format("table.rows.{}.temperature", i),
                           fmt::format("{} does not rise above the {} of the row before",
-                                      celsius(rows[i].temperature), celsius(rows[i - 1].temperature)),
+                                      said(rows[i].temperature), said(rows[i - 1].temperature)),
                           "rows in rising temperature, each temperature once", "sort the rows"});
   }
 }

@@ -78,14 +78,14 @@ double guess_temperature(const WaterModel&, Phase phase, double enthalpy, double
 
 std::string end_of(const WaterModel& model, Phase phase, double pressure, bool upper) {
   const TemperatureRange range = limits_of(model, phase, pressure).usable;
-  if (phase == Phase::liquid && !upper) return "it freezes at 0.0 degC";
-  if (phase == Phase::gas && upper) return "the steam equations end at 800.0 degC";
+  if (phase == Phase::liquid && !upper) return "it freezes at " + said(water::lowest_temperature);
+  if (phase == Phase::gas && upper) return "the steam equations end at " + said(water::highest_temperature);
   const double end = upper ? range.high : range.low;
   if (pressure > water::region3_pressure)
-    return fmt::format("near-critical water, not covered here, begins at {}", celsius(end));
-  if (phase == Phase::liquid) return fmt::format("it boils at {}", celsius(end));
-  if (pressure < water::triple_pressure) return "it freezes out at 0.0 degC";
-  return fmt::format("it condenses at {}", celsius(end));
+    return fmt::format("near-critical water, not covered here, begins at {}", said(end));
+  if (phase == Phase::liquid) return fmt::format("it boils at {}", said(end));
+  if (pressure < water::triple_pressure) return "it freezes out at " + said(water::lowest_temperature);
+  return fmt::format("it condenses at {}", said(end));
 }
 
 bool changes_phase_at_end(const WaterModel&, Phase phase, double pressure, bool upper) {
@@ -111,19 +111,19 @@ std::vector<PropertyNote> notes_of(const WaterModel&, Phase phase) {
 Made make_water(double inlet_temperature, double inlet_pressure) {
   const double t = inlet_temperature, p = inlet_pressure;
   if (!(p > 0.0 && p <= water::highest_pressure))
-    return refused_range(fmt::format("water at {:.4g} bar is outside the steam equations", p * 1e-5));
+    return refused_range(fmt::format("water at {} is outside the steam equations", said_pressure(p)));
   if (!(t >= water::lowest_temperature && t <= water::highest_temperature))
     return refused_range(t < water::lowest_temperature
-                             ? fmt::format("water at {} is ice", celsius(t))
-                             : fmt::format("water at {} is outside the steam equations", celsius(t)));
+                             ? fmt::format("water at {} is ice", said(t))
+                             : fmt::format("water at {} is outside the steam equations", said(t)));
   const std::optional<Phase> phase = phase_at(t, p);
   if (!phase && p > water::region3_pressure)
-    return refused_range(fmt::format("water at {} and {:.4g} bar is near-critical, which is not covered",
-                                     celsius(t), p * 1e-5));
+    return refused_range(
+        fmt::format("water at {} and {} is near-critical, which is not covered", said(t), said_pressure(p)));
   if (!phase)
     return refused("",
-                   fmt::format("water at {} and {:.4g} bar is at its boiling point of {}", celsius(t),
-                               p * 1e-5, celsius(water::saturation_temperature(p))),
+                   fmt::format("water at {} and {} is at its boiling point of {}", said(t), said_pressure(p),
+                               said(water::saturation_temperature(p))),
                    "liquid or steam, at least 0.05 K away from boiling",
                    "correct the inlet temperature or the pressure (gauge or absolute?); a boiling or "
                    "condensing stream cannot be rated here");

@@ -3,12 +3,17 @@
 #include <algorithm>
 #include <cmath>
 
+#include "dutygauge/units/mention.hpp"
 #include "parts.hpp"
 
 namespace dutygauge::geometry {
 namespace {
 
 constexpr double inch = 0.0254;
+
+std::string length(double si) {
+  return units::mention(si, units::Kind::length);
+}
 
 bool is_tight(char rear_head) {
   return rear_head == 'L' || rear_head == 'M' || rear_head == 'N' || rear_head == 'U';
@@ -69,8 +74,7 @@ void assume_baffle_clearances(const Description& d, double span, const ShellSide
     assumed.push_back({.key = "exchanger.clearances.tube_to_baffle",
                        .value = shell.tube_to_baffle,
                        .kind = units::Kind::length,
-                       .why = fmt::format("TEMA RCB-4.2 for a longest unsupported span of {}",
-                                          units::typed(span, units::Kind::length)),
+                       .why = "TEMA RCB-4.2 for a longest unsupported span of " + length(span),
                        .low = 0.397e-3,
                        .high = 0.794e-3,
                        .look_in = "bundle drawing"});
@@ -95,18 +99,21 @@ double rows_crossed(const ShellSide& shell) {
 
 void set_strips(const Description& d, ShellSide& shell, Assumptions& assumed) {
   // One pair per 5 to 7 rows, and sealing above a gap of 16 mm, are the refinery rule (API 660, recalled).
+  constexpr double sealed_gap = 16e-3;
   const int one_per_five = std::max(1, nearest(rows_crossed(shell) / 5.0));
-  const bool narrow = is_tight(d.rear_head) && shell.bundle_to_shell < 16e-3;
+  const bool narrow = is_tight(d.rear_head) && shell.bundle_to_shell < sealed_gap;
   shell.sealing_strip_pairs = d.sealing_strip_pairs.value_or(narrow ? 0 : one_per_five);
   if (d.sealing_strip_pairs) return;
-  assumed.push_back({.key = "exchanger.sealing_strip_pairs",
-                     .value = static_cast<double>(shell.sealing_strip_pairs),
-                     .kind = units::Kind::count,
-                     .why = narrow ? "gaps below 16 mm between bundle and shell are usually left unsealed"
-                                   : "common rule: a pair for every five rows between the baffle edges",
-                     .low = 0.0,
-                     .high = static_cast<double>(one_per_five),
-                     .look_in = "bundle drawing"});
+  assumed.push_back(
+      {.key = "exchanger.sealing_strip_pairs",
+       .value = static_cast<double>(shell.sealing_strip_pairs),
+       .kind = units::Kind::count,
+       .why = narrow ? fmt::format("gaps below {} between bundle and shell are usually left unsealed",
+                                   length(sealed_gap))
+                     : "common rule: a pair for every five rows between the baffle edges",
+       .low = 0.0,
+       .high = static_cast<double>(one_per_five),
+       .look_in = "bundle drawing"});
 }
 
 void set_lanes(const Description& d, ShellSide& shell, Assumptions& assumed) {
@@ -123,13 +130,15 @@ void set_lanes(const Description& d, ShellSide& shell, Assumptions& assumed) {
                        .high = 1.0,
                        .look_in = "tube layout drawing"});
   if (lanes > 0 && !d.pass_lane_width)
-    assumed.push_back({.key = "exchanger.pass_lanes.width",
-                       .value = d.tube_outside_diameter,
-                       .kind = units::Kind::length,
-                       .why = "one tube diameter; lanes of 16 to 19 mm are usual with 19 to 25 mm tubes",
-                       .low = std::min(16e-3, d.tube_outside_diameter),
-                       .high = std::max(19e-3, d.tube_outside_diameter),
-                       .look_in = "tube layout drawing"});
+    assumed.push_back(
+        {.key = "exchanger.pass_lanes.width",
+         .value = d.tube_outside_diameter,
+         .kind = units::Kind::length,
+         .why = fmt::format("one tube diameter; lanes of {} to {} are usual with tubes of {} to {}",
+                            length(16e-3), length(19e-3), length(19e-3), length(25e-3)),
+         .low = std::min(16e-3, d.tube_outside_diameter),
+         .high = std::max(19e-3, d.tube_outside_diameter),
+         .look_in = "tube layout drawing"});
 }
 
 }  // namespace

@@ -5,6 +5,7 @@
 #include <numbers>
 #include <stdexcept>
 
+#include "dutygauge/units/mention.hpp"
 #include "parts.hpp"
 
 namespace dutygauge::geometry {
@@ -106,11 +107,13 @@ ShellSide shell_side(const Description& d, const Baffles& baffles, double expose
 
 void assume_lengths_and_flow(const Description& d, double thickness, Assumptions& assumed) {
   if (!d.tubesheet_thickness)
-    assumed.push_back({.key = "exchanger.tubes.tubesheet_thickness",
-                       .value = thickness,
-                       .kind = units::Kind::length,
-                       .why = "a twentieth of the shell diameter, at least 20 mm: common practice, no source",
-                       .look_in = "bundle drawing"});
+    assumed.push_back(
+        {.key = "exchanger.tubes.tubesheet_thickness",
+         .value = thickness,
+         .kind = units::Kind::length,
+         .why = fmt::format("a twentieth of the shell diameter, at least {}: common practice, no source",
+                            units::mention(20e-3, units::Kind::length)),
+         .look_in = "bundle drawing"});
   if (!d.flow_direction && d.tube_passes == 1 && d.shell_type == 'E')
     assumed.push_back({.key = "exchanger.flow_direction",
                        .word = "counter",

@@ -108,6 +108,13 @@ void check_tubes(const Description& d, Objections& out) {
                    fmt::format("{} leaves no metal between tubes of {}", length(d.tube_pitch),
                                length(d.tube_outside_diameter)),
                    "more than the outside diameter, usually 1.25 times", "check pitch and outside diameter"});
+  const double metal = d.tube_pitch - d.tube_outside_diameter;
+  if (metal > 0.0 && d.tube_to_baffle.value_or(0.0) >= metal)
+    out.push_back({"exchanger.clearances.tube_to_baffle",
+                   fmt::format("{} is no less than the {} between two tubes: the holes in the baffles meet",
+                               length(*d.tube_to_baffle), length(metal)),
+                   "less than the gap between tubes, usually 0.4 to 0.8 mm",
+                   "give the hole's diameter less the tube's, and check its unit"});
   if (d.layout != 30 && d.layout != 45 && d.layout != 60 && d.layout != 90)
     out.push_back({"exchanger.tubes.layout", fmt::format("is {}", d.layout), "30, 45, 60 or 90",
                    "give the angle between the rows and the crossflow"});

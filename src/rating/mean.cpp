@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "dutygauge/numerics.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "outcome.hpp"
 
 namespace dutygauge::rating {
@@ -39,7 +40,7 @@ std::string range_fault(const Problem& problem, const DutyLimit& limit) {
       "{}; "
       "change its flow, its pressure or an inlet temperature, or describe the fluid further",
       limit.tube_side_governs ? "tube-side" : "shell-side", stream.fluid.name,
-      units::typed(limit.duty, units::Kind::power, units::System::metric, 4),
+      units::mention(limit.duty, units::Kind::power),
       fluids::why_it_ends(stream.fluid, stream.inlet_pressure, !cooled));
 }
 

@@ -3,6 +3,7 @@
 #include <cmath>
 
 #include "dutygauge/numerics.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "outcome.hpp"
 
 namespace dutygauge::rating {
@@ -57,8 +58,8 @@ Finding out_of_reach(const Unit& unit, const Trial& trial, double p) {
           "surface{}; {}",
           trial.r, problem.exchanger.shells_in_series, unit.arrangement.tube_passes,
           crossing ? fmt::format(", because the outlets would cross by {}",
-                                 units::typed(std::abs(trial.tube_outlet - trial.shell_outlet),
-                                              units::Kind::temperature_difference, units::System::metric, 3))
+                                 units::mention(std::abs(trial.tube_outlet - trial.shell_outlet),
+                                                units::Kind::temperature_difference))
                    : "",
           cure(unit.arrangement, trial.r, p)),
       .ground = Ground::arithmetic,
@@ -86,7 +87,7 @@ Checked<std::optional<Needed>> needed_by_mean(const Problem& problem, double dut
             {{.id = "service.walls",
               .severity = Severity::should,
               .text = "the wall temperatures do not settle at the required duty {value}: surface and fouling "
-                      "margins are not given",
+                      "margins are not given; judge by the duty running free",
               .value = duty,
               .kind = units::Kind::power}},
             {}};

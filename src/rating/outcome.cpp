@@ -6,6 +6,8 @@
 #include <cmath>
 #include <iterator>
 
+#include "dutygauge/units/mention.hpp"
+
 namespace dutygauge::rating {
 namespace {
 
@@ -91,7 +93,7 @@ std::string inlet_fault(const Stream& stream, std::string_view side) {
   const bool above = stream.inlet_temperature > usable.high;
   if (!above && stream.inlet_temperature >= usable.low) return {};
   return fmt::format("the {} inlet, {}, lies outside what is known of {}: {}", side,
-                     units::typed(stream.inlet_temperature, units::Kind::temperature), stream.fluid.name,
+                     units::mention(stream.inlet_temperature, units::Kind::temperature), stream.fluid.name,
                      fluids::why_it_ends(stream.fluid, stream.inlet_pressure, above));
 }
 

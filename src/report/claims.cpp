@@ -2,6 +2,7 @@
 
 #include <algorithm>
 
+#include "dutygauge/units/mention.hpp"
 #include "sections.hpp"
 #include "words.hpp"
 
@@ -28,8 +29,8 @@ std::string figure(const ClaimVerdict& claim, double si, const Figures& figures)
   return claim.key == "surface_margin" ? signed_percent(si) : figures.with_unit(si, claim.kind);
 }
 
-std::string why(const ClaimVerdict& claim, bool all) {
-  std::string words = claim.likely;
+std::string why(const ClaimVerdict& claim, units::System system, bool all) {
+  std::string words = units::spoken(claim.likely, system);
   if (claim.computed && (all || words.empty()))
     words += fmt::format("{}beside {}", words.empty() ? "" : "; ", claim.against);
   return words;
@@ -76,7 +77,7 @@ void claims(Page& page, const Result& result, const TextOptions& options) {
     std::ranges::replace(verdict, '_', ' ');
     rows.push_back({spoken(claim.key), figure(claim, claim.stated, figures),
                     claim.computed ? figure(claim, *claim.computed, figures) : "-", verdict,
-                    why(claim, options.all)});
+                    why(claim, result.display, options.all)});
   }
   if (rows.size() > 1) page.table(rows, {Align::left, Align::right, Align::right, Align::left, Align::left});
   const auto hidden = result.claims.size() + 1 - rows.size();

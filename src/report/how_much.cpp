@@ -25,28 +25,34 @@ std::string at_least_or_most(bool at_least, const std::string& limit) {
   return (at_least ? ">= " : "<= ") + limit;
 }
 
+// Fills the last two cells from the fraction of a limit that is left; beyond these a per cent says little.
+void put_margin(Row& row, double fraction_left, std::string_view broken, bool limit_is_most) {
+  constexpr double far_over = -1.0, far_above = 10.0;
+  const std::string word(limit_word(fraction_left, broken));
+  std::string margin = signed_percent(fraction_left);
+  if (limit_is_most && fraction_left < far_over) margin = times(1.0 - fraction_left) + " limit";
+  if (!limit_is_most && fraction_left > far_above) margin = times(1.0 + fraction_left) + " need";
+  row.insert(row.end(), {margin, word});
+}
+
 void duty_rows(const Result& result, const rating::Outcome& outcome, std::vector<Row>& rows) {
   const Figures figures(result.display);
   const auto& margins = result.assessment.margins;
   const Row duty = {"  duty", figures.number(outcome.duty, Kind::power), figures.unit(Kind::power)};
-  const auto add = [&](const std::string& limit, double fraction_left, std::string_view broken) {
-    rows.push_back(duty);
-    rows.back().insert(rows.back().end(), {limit, signed_percent(fraction_left),
-                                           std::string(limit_word(fraction_left, broken))});
+  const auto add = [&](Row row, bool at_least, double limit, double fraction_left) {
+    row.push_back(at_least_or_most(at_least, figures.number(limit, Kind::power)));
+    put_margin(row, fraction_left, at_least ? "short" : "over", !at_least);
+    rows.push_back(std::move(row));
   };
-  if (margins.required_duty && margins.duty)
-    add(at_least_or_most(true, figures.number(*margins.required_duty, Kind::power)), *margins.duty, "short");
+  if (margins.required_duty && margins.duty) add(duty, true, *margins.required_duty, *margins.duty);
   if (margins.required_duty && result.cases.size() == 1 && result.cases[0].clean.rating.outcome) {
     const double clean = result.cases[0].clean.rating.outcome->duty;
-    const double fraction = clean / *margins.required_duty - 1.0;
-    rows.push_back({"  duty, if clean", figures.number(clean, Kind::power), figures.unit(Kind::power),
-                    at_least_or_most(true, figures.number(*margins.required_duty, Kind::power)),
-                    signed_percent(fraction), std::string(limit_word(fraction, "short"))});
+    add({"  duty, if clean", figures.number(clean, Kind::power), figures.unit(Kind::power)}, true,
+        *margins.required_duty, clean / *margins.required_duty - 1.0);
   }
   for (const auto& demand : result.assessment.service.demands)
     if (demand.quantity == Quantity::duty && !demand.at_least)
-      add(at_least_or_most(false, figures.number(demand.limit, Kind::power)),
-          1.0 - outcome.duty / demand.limit, "over");
+      add(duty, false, demand.limit, 1.0 - outcome.duty / demand.limit);
   if (!rows.back().front().starts_with(duty.front())) {
     rows.push_back(duty);
     rows.back().insert(rows.back().end(), {no_limit, "", ""});
@@ -92,7 +98,8 @@ void surface_rows(const Result& result, std::vector<Row>& rows) {
     return;
   }
   const auto surface = [&rows](const char* label, double fraction) {
-    rows.push_back({label, fmt::format("{:+.1f}", 100.0 * fraction), "%", ">= 0", "",
+    const std::string per_cent = signed_percent(fraction);
+    rows.push_back({label, per_cent.substr(0, per_cent.find(' ')), "%", ">= 0", "",
                     std::string(limit_word(fraction, "short"))});
   };
   surface("  surface margin", *margins.surface);
@@ -116,19 +123,16 @@ void drop_row(const Result& result, Side side, double drop, std::vector<Row>& ro
       side == Side::shell ? service.shell_side_allowable_drop : service.tube_side_allowable_drop;
   const auto kind = Kind::pressure_difference;
   Row row = {"  " + stream_name(result.assessment.problem, side) + " pressure drop",
-             figures.number(drop, kind, 3),
-             figures.unit(kind),
-             no_limit,
-             "",
-             ""};
-  if (!is_drop_known(result.assessment.problem, side)) {
-    row[1] = "not known";
-    row[2] = "";
-  } else if (allowable) {
-    const double left = 1.0 - drop / *allowable;
-    row[3] = at_least_or_most(false, figures.number(*allowable, kind, 3));
-    row[4] = signed_percent(left);
-    row[5] = limit_word(left, "over");
+             figures.number(drop, kind, 3), figures.unit(kind)};
+  const bool is_known = is_drop_known(result.assessment.problem, side);
+  if (!is_known) {
+    row = {row[0], "not known", ""};
+  }
+  if (allowable && is_known) {
+    row.push_back(at_least_or_most(false, figures.number(*allowable, kind, 3)));
+    put_margin(row, 1.0 - drop / *allowable, "over", true);
+  } else {
+    row.insert(row.end(), {no_limit, "", ""});
   }
   rows.push_back(std::move(row));
 }

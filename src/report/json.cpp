@@ -11,6 +11,7 @@
 #include "anchor_json.hpp"
 #include "dutygauge/report.hpp"
 #include "dutygauge/sources.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "spread_json.hpp"
 #include "words.hpp"
 
@@ -252,7 +253,7 @@ Json assumed(const Result& result) {
     };
     list.push_back({{"key", one.key},
                     {"value", as_typed(one, units::System::metric, 5)},
-                    {"why", one.why},
+                    {"why", reason(one, units::System::metric)},
                     {"low", end(one.low)},
                     {"high", end(one.high)},
                     {"effect", effect(result, i)},
@@ -302,7 +303,7 @@ Json claims(const std::vector<bids::ClaimVerdict>& all) {
                     {"ground", word(one.ground)},
                     {"verdict", word(one.verdict)},
                     {"against", one.against},
-                    {"likely", one.likely}});
+                    {"likely", units::spoken(one.likely, units::System::metric)}});
   }
   return list;
 }

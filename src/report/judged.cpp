@@ -6,6 +6,7 @@
 #include <iterator>
 #include <utility>
 
+#include "dutygauge/report/finding_help.hpp"
 #include "dutygauge/sources.hpp"
 #include "sections.hpp"
 #include "words.hpp"
@@ -25,6 +26,13 @@ std::string against(double other, double ours) {
   if (std::abs(fraction) < 0.01) return "within 1 %";
   if (fraction >= 1.0) return fmt::format("{:.1f} times as high", other / ours);
   return fmt::format("{:.0f} % {}", 100.0 * std::abs(fraction), fraction < 0.0 ? "lower" : "higher");
+}
+
+// Which of two shell-side drops to believe, where they lie far apart.
+std::string drop_to_believe(double kern, double ours) {
+  constexpr double far_apart = 1.5;
+  if (kern <= far_apart * ours && ours <= far_apart * kern) return "";
+  return " Believe the drop by Bell-Delaware: Kern's has no leakage and no by-pass in it.";
 }
 
 // Whether the stated service comes out the same with the other method; empty without a service.
@@ -62,12 +70,14 @@ std::string where_the_difference_goes(const service::Assessment& assessment) {
   return "The temperature difference goes " + listed(parts);
 }
 
-// What a finding says to do: its last clause. Where it has but one, the finding itself is the task.
+// What a finding says to do: its last clause. Where it has but one, what its kind asks for.
 std::string task_from(const Finding& finding, units::System system) {
   const std::string text = sentence(finding, system);
   const auto at = std::max(text.rfind("; ") + 1, text.rfind(". ") + 1);  // npos + 1 is 0
-  if (at == 0) return fmt::format("Decide on {}, under RULES.", finding.id);
-  std::string clause = text.substr(at + 1);
+  const auto* help = find_finding_help(finding.id);
+  if (at == 0 && help != nullptr)
+    return fmt::format("{} ({}).", help->remedy.substr(0, help->remedy.size() - 1), finding.id);
+  std::string clause = at == 0 ? text : text.substr(at + 1);
   clause.front() = static_cast<char>(std::toupper(static_cast<unsigned char>(clause.front())));
   return fmt::format("{} ({}).", clause, finding.id);
 }
@@ -105,7 +115,7 @@ std::vector<std::string> tasks_from_assumptions(const Assumptions& assumptions) 
 }
 
 std::vector<std::string> assumption_row(const Assumption& one, const Result& result, bool all) {
-  std::string why = one.why;
+  std::string why = reason(one, result.display);
   if (all && one.low && one.high)
     why += fmt::format("; may lie between {} and {}", units::typed(*one.low, one.kind, result.display, 4),
                        units::typed(*one.high, one.kind, result.display, 4));
@@ -154,12 +164,13 @@ void how_sure(Page& page, const Result& result) {
     const auto& ours = *assessment.rating.outcome;
     const auto& other = *assessment.second_opinion;
     page.section(
-        name,
-        fmt::format("Kern's method, a second one for the shell, puts the film {}, the duty {} and the "
-                    "pressure drop {}.{}",
-                    against(other.local.shell_film.coefficient, ours.local.shell_film.coefficient),
-                    against(other.duty, ours.duty),
-                    against(other.shell_drop.total(), ours.shell_drop.total()), same_answer(assessment)));
+        name, fmt::format("Kern's method, a second one for the shell, puts the film {}, the duty {} and the "
+                          "pressure drop {}.{}{}",
+                          against(other.local.shell_film.coefficient, ours.local.shell_film.coefficient),
+                          against(other.duty, ours.duty),
+                          against(other.shell_drop.total(), ours.shell_drop.total()),
+                          drop_to_believe(other.shell_drop.total(), ours.shell_drop.total()),
+                          same_answer(assessment)));
     name.clear();
   }
   if (remarks > 0)

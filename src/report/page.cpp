@@ -8,6 +8,8 @@
 #include <iterator>
 #include <utility>
 
+#include "dutygauge/units/mention.hpp"
+
 namespace dutygauge::report {
 namespace {
 
@@ -64,6 +66,12 @@ std::string take_line(std::string_view& words, std::size_t width) {
   words.remove_prefix(length);
   words.remove_prefix(std::min(words.find_first_not_of(' '), words.size()));
   return line;
+}
+
+// With one decimal; what rounds to zero has no minus.
+std::string with_sign(double amount) {
+  const std::string text = fmt::format("{:+.1f}", amount);
+  return text == "-0.0" ? "0.0" : text;
 }
 
 }  // namespace
@@ -133,9 +141,7 @@ void Page::table(const std::vector<std::vector<std::string>>& rows, const std::v
 }
 
 std::string Figures::number(double si, units::Kind kind, int significant) const {
-  if (kind == units::Kind::temperature || kind == units::Kind::temperature_difference)
-    return fmt::format("{:.1f}", units::from_si(si, units::shown_unit(kind, system_), kind));
-  return units::shown_number(si, kind, system_, significant);
+  return units::shown_figure(si, kind, system_, significant);
 }
 
 std::string Figures::unit(units::Kind kind) const {
@@ -143,22 +149,17 @@ std::string Figures::unit(units::Kind kind) const {
 }
 
 std::string Figures::with_unit(double si, units::Kind kind, int significant) const {
-  if (kind == units::Kind::length && std::abs(si) >= 1.0) {
-    const char* large = system_ == units::System::us ? "ft" : "m";
-    return fmt::format("{:.{}g} {}", units::from_si(si, large, kind), significant, large);
-  }
-  const std::string name = unit(kind);
-  return number(si, kind, significant) + (name.empty() ? "" : " " + name);
+  return units::shown(si, kind, system_, significant);
 }
 
 std::string Figures::difference(double kelvin) const {
   const auto kind = units::Kind::temperature_difference;
   const auto name = units::shown_unit(kind, system_);
-  return fmt::format("{:+.1f} {}", units::from_si(kelvin, name, kind), name);
+  return fmt::format("{} {}", with_sign(units::from_si(kelvin, name, kind)), name);
 }
 
 std::string signed_percent(double fraction) {
-  return fmt::format("{:+.1f} %", 100.0 * fraction);
+  return with_sign(100.0 * fraction) + " %";
 }
 
 }  // namespace dutygauge::report

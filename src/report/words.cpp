@@ -1,7 +1,11 @@
 #include "words.hpp"
 
+#include <fmt/core.h>
+
 #include <algorithm>
 #include <stdexcept>
+
+#include "dutygauge/units/mention.hpp"
 
 namespace dutygauge::report {
 namespace {
@@ -92,7 +96,11 @@ std::string sentence(const Finding& finding, units::System system) {
   std::string text = finding.text;
   replace_all(text, "{value}", figures.with_unit(finding.value, finding.kind));
   replace_all(text, "{limit}", figures.with_unit(finding.limit, finding.kind));
-  return text;
+  return units::spoken(text, system);
+}
+
+std::string reason(const Assumption& assumption, units::System system) {
+  return units::spoken(assumption.why, system);
 }
 
 std::string as_typed(const Assumption& assumption, units::System system, int significant) {
@@ -117,6 +125,10 @@ std::string plain_words(std::string_view key) {
 std::string_view limit_word(double fraction_left, std::string_view broken) {
   if (fraction_left < -rounding) return broken;
   return fraction_left < close_to_a_limit ? "close" : "ok";
+}
+
+std::string times(double ratio) {
+  return fmt::format("{:.{}f} x", ratio, ratio < 10.0 ? 1 : 0);
 }
 
 std::string listed(const std::vector<std::string>& words) {

@@ -30,6 +30,9 @@ std::string plain_words(std::string_view key);
 /// "ok", "close" (less than a tenth left) or `broken`, for the fraction of a limit that is left.
 std::string_view limit_word(double fraction_left, std::string_view broken);
 
+/// "2.4 x", "43 x".
+std::string times(double ratio);
+
 /// "a, b and c".
 std::string listed(const std::vector<std::string>& words);
 

@@ -1,3 +1,5 @@
+#include <fmt/core.h>
+
 #include <algorithm>
 #include <cmath>
 #include <stdexcept>
@@ -88,14 +90,17 @@ void fill_surface(const rating::Problem& problem, double required, Margins& marg
   if (const auto clean = rating::needed_for(without_fouling(problem), required).value)
     margins.surface_clean = clean->surface_margin;
   if (margins.surface_clean.value_or(0.0) < 0.0)
-    findings.push_back({.id = "service.fails_clean",
-                        .severity = Severity::should,
-                        .text =
-                            "even without any fouling the surface falls short ({value} of what is needed, "
-                            "less one): cleaning alone will not bring the service back",
-                        .ground = Ground::arithmetic,
-                        .value = *margins.surface_clean,
-                        .limit = 0.0});
+    findings.push_back(
+        {.id = "service.fails_clean",
+         .severity = Severity::should,
+         .text =
+             fmt::format("even without any fouling the surface is {:.3g} % less than what is needed, so "
+                         "cleaning alone will not bring the service back; decide whether to add surface, to "
+                         "change a flow, or to ask for less duty",
+                         -100.0 * *margins.surface_clean),
+         .ground = Ground::arithmetic,
+         .value = *margins.surface_clean,
+         .limit = 0.0});
 }
 
 }  // namespace

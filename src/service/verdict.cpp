@@ -48,6 +48,7 @@ std::string sentence(const Demand& demand, const rating::Problem& problem, const
 }
 
 std::string per_cent(double fraction) {
+  if (fraction > 10.0) return fmt::format("{:.0f} times what is required", 1.0 + fraction);
   return fmt::format("{:+.1f} %", 100.0 * fraction);
 }
 

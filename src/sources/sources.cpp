@@ -42,6 +42,7 @@ constexpr Source table[] = {
      "secondary"},
     {"millero_1978", "F. J. Millero, Freezing point of sea water, UNESCO Tech. Papers Mar. Sci. 28 (1978)",
      "recalled"},
+    {"moody_1944", "L. F. Moody, Trans. ASME 66, 671-684 (1944)", "recalled"},
     {"nasa_tm4513", "McBride, Gordon & Reno, NASA TM-4513 (1993)", "secondary"},
     {"nayar_2016", "Nayar, Sharqawy, Banchik & Lienhard, Desalination 390, 1-24 (2016)", "secondary"},
     {"nist_sp811", "Thompson & Taylor, Guide for the Use of the SI, NIST SP 811 (2008), appendix B",

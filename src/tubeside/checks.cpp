@@ -3,9 +3,14 @@
 #include <cmath>
 
 #include "dutygauge/tubeside.hpp"
+#include "dutygauge/units/mention.hpp"
 
 namespace dutygauge::tubeside {
 namespace {
+
+std::string length(double si) {
+  return units::mention(si, units::Kind::length);
+}
 
 void check_regime(const geometry::TubeSide& tubes, const Film& film, Findings& findings) {
   if (film.regime == Regime::transition)
@@ -39,19 +44,19 @@ void check_prandtl(const Film& film, Findings& findings) {
                         .severity = Severity::must,
                         .text =
                             "tube-side Pr {value} is that of a liquid metal: the film correlation does not "
-                            "hold below {limit} and the result must not be used",
+                            "hold below {limit} and the result must not be used; check the properties",
                         .value = film.prandtl,
                         .limit = 0.1,
                         .source = "gnielinski_1976"});
   else if (film.prandtl < 0.5)
-    findings.push_back({.id = "tubeside.prandtl_low",
-                        .severity = Severity::should,
-                        .text =
-                            "tube-side Pr {value} is below {limit}, where the correlation was fitted; the "
-                            "film reads somewhat high",
-                        .value = film.prandtl,
-                        .limit = 0.5,
-                        .source = "gnielinski_1976"});
+    findings.push_back(
+        {.id = "tubeside.prandtl_low",
+         .severity = Severity::should,
+         .text = "tube-side Pr {value} is below {limit}, where the correlation was fitted, and the "
+                 "film reads somewhat high; check conductivity and viscosity",
+         .value = film.prandtl,
+         .limit = 0.5,
+         .source = "gnielinski_1976"});
   else if (film.prandtl > 2000.0 && film.regime != Regime::laminar)
     findings.push_back({.id = "tubeside.prandtl_high",
                         .severity = Severity::should,
@@ -71,7 +76,7 @@ void check_wall(const Film& film, const fluids::State& bulk, const fluids::State
                           .severity = Severity::should,
                           .text =
                               "the tube-side gas is heated by a very hot wall (T/T_wall {value}, fitted down "
-                              "to {limit}); the film is uncertain",
+                              "to {limit}), and the film is uncertain; keep a wider margin",
                           .value = ratio,
                           .limit = 0.5,
                           .source = "gnielinski_1976"});
@@ -83,7 +88,7 @@ void check_wall(const Film& film, const fluids::State& bulk, const fluids::State
         {.id = "tubeside.wall_correction",
          .severity = Severity::should,
          .text = "tube-side Pr at the bulk over Pr at the wall is {value}, beyond {limit}: the wall "
-                 "correction is extrapolated",
+                 "correction is extrapolated; keep a wider margin",
          .value = ratio,
          .limit = ratio < 0.1 ? 0.1 : 20.0,
          .source = "gnielinski_1976"});
@@ -94,7 +99,8 @@ void check_wall(const Film& film, const fluids::State& bulk, const fluids::State
                         .text =
                             "the liquid in the tubes is {value} times thicker at the wall than in the bulk "
                             "(watch above {limit}) and flows laminar: cold tubes can slow down and stay "
-                            "cold, and the unit then cools less than rated",
+                            "cold, and the unit then cools less than rated; ask for a higher velocity or a "
+                            "warmer coolant",
                         .value = thickening,
                         .limit = 3.0,
                         .source = "common_practice"});
@@ -120,12 +126,32 @@ void check_velocity(const Film& film, const fluids::State& bulk, Findings& findi
                         .severity = Severity::should,
                         .text =
                             "tube-side gas has rho v2 {value}, above {limit}: erosion, noise and vibration "
-                            "become likely",
+                            "become likely; ask for the maker's limit",
                         .ground = Ground::judgement,
                         .value = momentum,
                         .limit = 5000.0,
                         .kind = units::Kind::momentum_flux,
                         .source = "common_practice"});
+}
+
+/// The chart of friction factors ends at 5 % of the bore, and so does what Colebrook's equation was made
+/// from.
+void check_roughness(const geometry::TubeSide& tubes, Findings& findings) {
+  constexpr double most = 0.05;
+  if (tubes.roughness <= most * tubes.inside_diameter) return;
+  findings.push_back(
+      {.id = "tubeside.roughness",
+       .severity = Severity::should,
+       .text =
+           fmt::format("the tube roughness {{value}} is more than {:.0f} % of the bore, {{limit}}, where "
+                       "friction data end: the tube-side pressure drop is extrapolated. Check its "
+                       "unit, as commercial tubes have {} (drawn) to {} (steel pipe): um typed as mm, or mm "
+                       "as in, is the likely slip",
+                       100.0 * most, length(1.5e-6), length(46e-6)),
+       .value = tubes.roughness,
+       .limit = most * tubes.inside_diameter,
+       .kind = units::Kind::length,
+       .source = "moody_1944"});
 }
 
 }  // namespace
@@ -137,13 +163,16 @@ Findings check_film(const geometry::TubeSide& tubes, const Film& film, const flu
   check_prandtl(film, findings);
   check_wall(film, bulk, wall, findings);
   check_velocity(film, bulk, findings);
+  check_roughness(tubes, findings);
   if (film.reynolds > 5e6)
-    findings.push_back({.id = "tubeside.reynolds_high",
-                        .severity = Severity::should,
-                        .text = "tube-side Re {value} is above {limit}, where the correlation was fitted",
-                        .value = film.reynolds,
-                        .limit = 5e6,
-                        .source = "gnielinski_1976"});
+    findings.push_back(
+        {.id = "tubeside.reynolds_high",
+         .severity = Severity::should,
+         .text = "tube-side Re {value} is above {limit}, where the correlation was fitted; check flow, "
+                 "tube count and bore",
+         .value = film.reynolds,
+         .limit = 5e6,
+         .source = "gnielinski_1976"});
   return findings;
 }
 

@@ -5,6 +5,7 @@
 #include <charconv>
 #include <span>
 
+#include "dutygauge/units/mention.hpp"
 #include "kinds.hpp"
 #include "read.hpp"
 
@@ -164,8 +165,9 @@ Value pipe_bore(std::string_view text, std::span<const std::string_view> parts) 
   Value value;
   value.si = (pipe.outside - 2.0 * wall) * inch;
   if (schedule.empty())
-    value.taken_for_granted.push_back(fmt::format("{} {} taken with standard wall, {} in (ASME B36.10M)",
-                                                  system == "nps" ? "NPS" : "DN", size, wall));
+    value.taken_for_granted.push_back(fmt::format("{} {} taken with standard wall, {} (ASME B36.10M)",
+                                                  system == "nps" ? "NPS" : "DN", size,
+                                                  mention(wall * inch, Kind::length)));
   return value;
 }
 
