@@ -152,13 +152,10 @@ TEST_CASE("case_io: exchangers and services that cannot be are named at their ke
 }
 
 TEST_CASE("case_io: what this version does not read is refused by name") {
-  for (const char* key : {"requirements", "guarantee", "inquiry", "bidder", "readings", "plan"})
+  for (const char* key : {"requirements", "guarantee", "inquiry", "bidder"})
     check({{key,
             and_also(std::string(key) + ": {a: 1}"),
             {"x:49:1:", std::string(key) + ": not read yet", "leave the block out"}}});
-  check({
-      {"plan", with("methods:", "plan: {next_stop: 2027-03-15}\nmethods:"), {"x:48:", "not read yet"}},
-  });
 }
 
 TEST_CASE("case_io: all mistakes of a file come at once, in file order") {

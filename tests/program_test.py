@@ -27,6 +27,16 @@ def starter():
     return run("new").stdout
 
 
+def readings():
+    """Two days of a plant that runs as the starter case says, with a little noise."""
+    lines = ["time,hot_flow[kg/s],cold_flow[m3/h],hot_in[degC],hot_out[degC],cold_in[degC],cold_out[degC]"]
+    for hour in range(48):
+        wobble = [((hour * step) % 17 - 8) / 40 for step in (3, 5, 7, 11, 13, 16)]
+        values = [base + part for base, part in zip((21.5, 62, 68, 58.5, 29, 34.9), wobble)]
+        lines.append(f"2026-01-{1 + hour // 24:02}T{hour % 24:02}:00Z," + ",".join(f"{value:.2f}" for value in values))
+    return "\n".join(lines).encode() + b"\n"
+
+
 def too_much_asked():
     return starter().replace(b"at_most: 58 degC", b"at_most: 45 degC")
 
@@ -123,6 +133,27 @@ class Streams(InFolder):
             self.assertIn(waiting.wait(10), (130, -signal.SIGINT))  # a shell shows both as 130
             self.assertEqual(waiting.stdout.read(), b"")
 
+    def test_an_interrupted_record_leaves_nothing_behind(self):
+        case = self.write("cooler.yaml", starter())
+        words = [PROGRAM, "field", case, "-", "--csv", self.folder / "hours.csv"]
+        with subprocess.Popen(words, stdin=subprocess.PIPE, stdout=subprocess.PIPE, stderr=subprocess.PIPE) as waiting:
+            waiting.stdin.write(readings())
+            waiting.stdin.flush()
+            time.sleep(0.3)
+            waiting.send_signal(signal.SIGINT)
+            self.assertEqual(waiting.wait(10), 130)
+            self.assertEqual(waiting.stdout.read(), b"")
+            self.assertIn(b"interrupted", waiting.stderr.read())
+        self.assertEqual(sorted(path.name for path in self.folder.iterdir()), ["cooler.yaml"])
+
+    def test_a_record_from_a_pipe_is_the_record_of_the_file(self):
+        case, file = self.write("cooler.yaml", starter()), self.write("readings.csv", readings())
+        from_file = run("field", case, file, "--csv", "-")
+        piped = run("field", case, "-", "--csv", "-", input=readings())
+        self.assertEqual((piped.returncode, piped.stderr), (0, b""))
+        self.assertEqual(piped.stdout, from_file.stdout)
+        self.assertEqual(len(piped.stdout.splitlines()), 49)
+
     def test_a_dash_is_standard_input(self):
         done = run("rate", "-", input=starter())
         self.assertEqual((done.returncode, done.stderr), (0, b""))
@@ -142,6 +173,7 @@ class Help(InFolder):
         for name in ("cooler.yaml", "before.yaml"):
             self.write(name, starter())
         self.write("after.yaml", too_much_asked())
+        self.write("readings.csv", readings())
         (self.folder / "before.json").write_bytes(run("rate", "--json", self.folder / "before.yaml").stdout)
         shutil.copytree(ROOT / "cases", self.folder / "cases")
         path = {**os.environ, "PATH": f"{PROGRAM.parent}:{os.environ['PATH']}"}

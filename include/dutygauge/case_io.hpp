@@ -9,6 +9,7 @@
 #include <vector>
 
 #include "dutygauge/bids.hpp"
+#include "dutygauge/field/mapping.hpp"
 #include "dutygauge/findings.hpp"
 #include "dutygauge/rating.hpp"
 #include "dutygauge/service.hpp"
@@ -104,6 +105,8 @@ struct Case {
   Assumptions assumed;  ///< made while reading and deriving
   Findings findings;    ///< the same
   std::vector<Accepted> accepted;
+  field::Mapping readings;  ///< how the plant's record is to be read
+  field::Planned plan;
 };
 
 /// Reads YAML text strictly: one document, no anchors, aliases, tags, merges;

@@ -59,6 +59,11 @@ Peak peak_of(const Arrangement& train, double r) {
   return {shells * one.ntu, train::effectiveness(train, r, one.p)};
 }
 
+/// Whether any surface reaches P: what counterflow does not reach, nothing does.
+bool counterflow_reaches(double r, double p) {
+  return r >= 0.0 && p >= 0.0 && p < 1.0 && p * r < 1.0 && p / (1.0 - p) * (1.0 - r) > -1.0;
+}
+
 std::optional<double> two_pass_ntu(double r, double p) {
   const double g = std::hypot(r, 1.0), left = 2.0 - p * (1.0 + r + g);
   if (!(left > 0.0)) return {};
@@ -94,9 +99,9 @@ std::optional<double> searched_ntu(const Arrangement& shell, double r, double p,
 }
 
 std::optional<double> ntu_of_shell(const Arrangement& shell, double r, double p) {
+  if (is_two_pass(shell)) return two_pass_ntu(r, p);
   const auto counterflow = counterflow_ntu(r, p);
   if (!counterflow || *counterflow == 0.0) return counterflow;
-  if (is_two_pass(shell)) return two_pass_ntu(r, p);
   if (shell.shell_type != 'E' || shell.tube_passes > 1) return searched_ntu(shell, r, p, *counterflow);
   if (shell.flow == Flow::counter) return counterflow;
   if (!(p * (1.0 + r) < 1.0)) return {};
@@ -124,7 +129,7 @@ std::optional<double> ntu_for(const Arrangement& arrangement, double capacity_ra
                               double temperature_effectiveness) {
   train::require(arrangement, capacity_ratio);
   const double r = capacity_ratio, p = temperature_effectiveness;
-  if (!counterflow_ntu(r, p)) return {};
+  if (!counterflow_reaches(r, p)) return {};
   if (const int trains = arrangement.trains_in_turn; trains > 1) {
     const auto one = ntu_for(train::one_train_of(arrangement), trains * r, train::one_in_turn(p, trains));
     return one ? std::optional(trains * *one) : std::nullopt;
@@ -137,10 +142,9 @@ std::optional<double> ntu_for(const Arrangement& arrangement, double capacity_ra
 
 std::optional<double> counterflow_ntu(double capacity_ratio, double temperature_effectiveness) {
   const double r = capacity_ratio, p = temperature_effectiveness;
-  if (!(r >= 0.0 && p >= 0.0 && p < 1.0 && p * r < 1.0)) return {};
-  const double gained = p / (1.0 - p), u = gained * (1.0 - r);
-  if (!(u > -1.0)) return {};
-  return gained * numerics::log1p_ratio(u);
+  if (!counterflow_reaches(r, p)) return {};
+  const double gained = p / (1.0 - p);
+  return gained * numerics::log1p_ratio(gained * (1.0 - r));
 }
 
 std::optional<double> lmtd_correction(const Arrangement& arrangement, double capacity_ratio, double ntu) {

@@ -124,6 +124,8 @@ Case read_case(const Document& document, Reading& reading) {
   const rating::Methods methods = methods_of(reading);
   check_scaled(reading);
   bids::Claims claims = claims_of(reading);
+  field::Mapping readings = mapping_of(reading);
+  field::Planned plan = plan_of(reading, readings.clock.offset);
   std::optional<AnchorReading> anchor;
   if (shell_side && tube_side) anchor = anchor_of(reading, shell_side->stream, tube_side->stream);
   if (!reading.mistakes().empty()) throw InputError(document.file, reading.mistakes());
@@ -150,6 +152,8 @@ Case read_case(const Document& document, Reading& reading) {
   result.control = control_of(entries);
   take_bypasses(reading, result);
   result.claims = std::move(claims);
+  result.readings = std::move(readings);
+  result.plan = std::move(plan);
   append(result.assumed, reading.assumed());
   append(result.assumed, derived.assumed);
   append(result.findings, derived.findings);

@@ -14,7 +14,9 @@ Excuse excuse_of(std::string_view key) {
     return last == "passes" || is_own_block ? Excuse::none : Excuse::area;
   }
   if (!key.starts_with("streams.")) return Excuse::none;
-  const bool is_property = key.find(".fluid.constant.") != std::string_view::npos && last != "heat_capacity";
+  const bool is_property = (key.find(".fluid.constant.") != std::string_view::npos ||
+                            key.find(".fluid.two_point.") != std::string_view::npos) &&
+                           last != "heat_capacity" && last != "at";
   return is_property || key.ends_with(".inlet.pressure") ? Excuse::area : Excuse::none;
 }
 

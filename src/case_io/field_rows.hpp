@@ -20,6 +20,9 @@ struct Row {
 
 std::span<const Row> case_rows();
 
+/// The blocks `readings` and `plan`; "@" stands for a channel.
+std::span<const Row> record_rows();
+
 /// Keys relative to a fluid.
 std::span<const Row> fluid_rows();
 

@@ -4,6 +4,7 @@
 
 #include <algorithm>
 
+#include "dutygauge/field/mapping.hpp"
 #include "field_rows.hpp"
 #include "wording.hpp"
 
@@ -50,6 +51,56 @@ void add_side(std::vector<Field>& fields, std::span<const Row> rows, bool shell)
   }
 }
 
+/// What is of flows alone.
+bool is_about(const Row& row, field::Channel channel) {
+  const std::string_view key = row.key;
+  return field::is_flow(channel) || !(key.ends_with(".at") || key.find(".meter") != std::string::npos);
+}
+
+/// One row of a channel: its example and its kind follow from what it measures.
+Field channel_field(const Row& row, field::Channel channel) {
+  std::string key = row.key;
+  key.replace(key.find('@'), 1, field::name(channel));
+  Field result = field_of(row, key, true);
+  const bool is_flow = field::is_flow(channel), is_drop = field::is_drop(channel);
+  const bool is_temperature = field::is_temperature(channel);
+  if (last_segment(key) == "unit")
+    result.example = is_flow ? "t/h" : is_temperature ? "degC" : is_drop ? "kPa" : "\"%\"";
+  if (last_segment(key) == "tag" && !is_flow) result.example = is_temperature ? "21TI1044.PV" : "21PI1045.PV";
+  if (row.form != Form::uncertainty) return result;
+  const bool is_random = last_segment(key) == "random";
+  result.kind = is_flow          ? Kind::mass_flow
+                : is_temperature ? Kind::temperature_difference
+                : is_drop        ? Kind::pressure_difference
+                                 : Kind::ratio;
+  if (is_temperature)
+    result.example = is_random ? "0.1 K" : "0.5 K";
+  else
+    result.example = is_random ? "1 %" : "3 %";
+  return result;
+}
+
+/// All rows of one channel that stand together, so that a block's rows follow each other.
+void add_record(std::vector<Field>& fields) {
+  const auto rows = record_rows();
+  const auto is_of_channels = [](const Row& row) {
+    return std::string_view(row.key).find('@') != std::string::npos;
+  };
+  for (auto row = rows.begin(); row != rows.end();) {
+    if (!is_of_channels(*row)) {
+      fields.push_back(field_of(*row, row->key, true));
+      ++row;
+      continue;
+    }
+    const auto end = std::find_if_not(row, rows.end(), is_of_channels);
+    for (std::size_t channel = 0; channel < field::channel_count; ++channel)
+      for (auto one = row; one != end; ++one)
+        if (is_about(*one, static_cast<field::Channel>(channel)))
+          fields.push_back(channel_field(*one, static_cast<field::Channel>(channel)));
+    row = end;
+  }
+}
+
 std::vector<Field> all_case_fields() {
   std::vector<Field> fields;
   const auto rows = case_rows();
@@ -66,6 +117,7 @@ std::vector<Field> all_case_fields() {
     for (const bool shell : {true, false}) add_side(fields, {row, end}, shell);
     row = end;
   }
+  add_record(fields);
   return fields;
 }
 
@@ -101,8 +153,6 @@ constexpr Unread unread[] = {
     {"bidder", "who made a bid"},
     {"exceptions", "what a bid excepts"},
     {"stated_streams", "streams of a bid's sheet"},
-    {"readings", "plant readings"},
-    {"plan", "the next stop and what cleaning costs"},
     {"exchanger.split", "streams that divide unevenly"},
     {"streams.*.fouling_area", "fouling on the other surface"},
     {"streams.*.split", "streams that divide unevenly"},
@@ -163,6 +213,19 @@ std::string kind_in_words(const Field& field) {
       return std::string(known_fluids);
     case Form::overlay:
       return "a block of values by dotted key,";
+    case Form::texts:
+      return "a list of texts";
+    case Form::instant:
+      return "a date, or a time in ISO 8601,";
+    case Form::money:
+      return "an amount with its currency";
+    case Form::energy_price:
+      return "an amount with its currency, for an energy,";
+    case Form::uncertainty:
+      if (field.kind == Kind::temperature_difference) return std::string(units::name(field.kind));
+      return field.kind == Kind::ratio
+                 ? "a share"
+                 : fmt::format("a share of the reading, or {},", units::name(field.kind));
   }
   return {};
 }

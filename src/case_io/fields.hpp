@@ -35,6 +35,11 @@ enum class Form {
   pair,              ///< "a -> b" of `kind`
   fluid,             ///< a fluid's name, or a block of one family
   overlay,           ///< values by dotted key, laid on the case
+  texts,             ///< a list of texts
+  instant,           ///< a date, or a time in ISO 8601
+  money,             ///< an amount with its currency
+  energy_price,      ///< the same for an energy
+  uncertainty,       ///< of an instrument: a share of the reading, or a quantity of `kind`
 };
 
 enum class Need {

@@ -77,6 +77,14 @@ std::optional<Made> two_point(const Source& source) {
     second.*member = found->second.second;
     return true;
   };
+  if (is_heat_capacity_alone(source)) {
+    if (!take("at", &fluids::PropertyRow::temperature) ||
+        !take("heat_capacity", &fluids::PropertyRow::heat_capacity))
+      return {};
+    for (fluids::PropertyRow* row : {&first, &second})  // a liquid thins when it warms
+      row->density = 1000.0, row->conductivity = 0.6, row->viscosity = 0.3 / row->temperature;
+    return fluids::make_two_point(first, second, Phase::liquid);
+  }
   const bool complete = take("at", &fluids::PropertyRow::temperature) &&
                         take("density", &fluids::PropertyRow::density) &&
                         take("heat_capacity", &fluids::PropertyRow::heat_capacity) &&

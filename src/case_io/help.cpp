@@ -25,6 +25,15 @@ bool is_list_item(std::string_view key) {
   return key.find('#') != std::string_view::npos;
 }
 
+/// Whether a row is that of a channel beyond the first flow and the first temperature, which
+/// the starter case shows for all.
+bool is_of_another_channel(std::string_view key) {
+  constexpr std::string_view columns = "readings.columns.";
+  if (!key.starts_with(columns)) return false;
+  const auto channel = key.substr(columns.size(), key.find('.', columns.size()) - columns.size());
+  return channel != "hot_flow" && channel != "hot_in";
+}
+
 /// A name where any will do.
 std::string_view name_of_any(std::string_view key) {
   return key == "operating_cases.?" ? "base" : "sheet";
@@ -92,6 +101,13 @@ std::string kind_of(const Field& field) {
       return "fluid";
     case Form::overlay:
       return "overlay";
+    case Form::texts:
+      return "list of texts";
+    case Form::instant:
+      return "date or time";
+    case Form::money:
+    case Form::energy_price:
+      return "money";
     default:
       return std::string(units::name(field.kind));
   }
@@ -104,7 +120,7 @@ std::string starter_case() {
       "# A case for dutygauge. Replace every value by your own; lines that begin with '#' may be left out.\n";
   const FieldTable& table = case_fields();
   for (const Field& field : table.all())
-    if (!is_of_a_fluid(field.key) && !is_list_item(field.key))
+    if (!is_of_a_fluid(field.key) && !is_list_item(field.key) && !is_of_another_channel(field.key))
       text += starter_line(field, is_commented(table, field.key));
   return text;
 }

@@ -6,6 +6,7 @@
 
 #include "cut.hpp"
 #include "reading.hpp"
+#include "record_leaves.hpp"
 #include "wording.hpp"
 
 // From the text of a leaf to its value, by the form of its row.
@@ -261,6 +262,19 @@ Outcome read_by_form(Entry entry) {
       return read_flow(std::move(entry));
     case Form::pair:
       return read_pair(std::move(entry));
+    case Form::instant:
+      if (auto mistake = read_instant(entry)) return *mistake;
+      return entry;
+    case Form::money:
+      if (auto mistake = read_money(entry, false)) return *mistake;
+      return entry;
+    case Form::energy_price:
+      if (auto mistake = read_money(entry, true)) return *mistake;
+      return entry;
+    case Form::uncertainty:
+      if (auto mistake = read_uncertainty(entry)) return *mistake;
+      return entry;
+    case Form::texts:
     case Form::text:
     case Form::fluid:
     case Form::block:
@@ -312,6 +326,11 @@ void Reading::read_leaf(const std::string& key, const Leaf& leaf, const Field& f
 }
 
 void Reading::take(const std::string& key, Entry entry) {
+  // What is said of a record or of a plan does not reach a rating.
+  if (key.starts_with("readings.") || key.starts_with("plan.")) {
+    entries_.emplace(key, std::move(entry));
+    return;
+  }
   for (const std::string& open : entry.value.taken_for_granted) {
     Assumption assumption{.key = key, .value = entry.value.si, .kind = entry.kind(), .why = open};
     assumption.low = entry.value.low;

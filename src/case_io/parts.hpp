@@ -42,6 +42,9 @@ GivenFilm given_film_of(Reading& reading, const std::string& side);
 /// Puts it into the problem; the exchanger must be there, for the ratio of the surfaces.
 void put_film(const GivenFilm& given, bool is_shell_side, rating::Problem& problem);
 
+/// Whether the fluid of "streams.shell_side" has a density: one that is a heat capacity alone has none.
+bool knows_density(const Reading& reading, const std::string& side);
+
 /// The stream of "shell_side" or "tube_side"; empty where it cannot be made.
 std::optional<MadeStream> stream_of(Reading& reading, const std::string& side);
 
@@ -73,5 +76,9 @@ std::optional<AnchorReading> anchor_of(Reading& reading, const rating::Stream& s
 Case build_plain(const Document& document);
 /// What the sheet claims; empty where it claims nothing.
 bids::Claims claims_of(Reading& reading);
+
+/// How the plant's record is to be read, and what is planned.
+field::Mapping mapping_of(Reading& reading);
+field::Planned plan_of(Reading& reading, std::optional<int> offset);
 
 }  // namespace dutygauge::case_io

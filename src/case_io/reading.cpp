@@ -13,7 +13,7 @@ namespace dutygauge::case_io {
 namespace {
 
 bool takes_list(Form form) {
-  return form == Form::list || form == Form::whole_or_list || form == Form::wholes;
+  return form == Form::list || form == Form::whole_or_list || form == Form::wholes || form == Form::texts;
 }
 
 /// Whether values stand under the key as a block or list.
@@ -22,7 +22,7 @@ bool takes_block(Form form) {
 }
 
 bool takes_value(Form form) {
-  return form != Form::block && form != Form::list && form != Form::wholes;
+  return form != Form::block && form != Form::list && form != Form::wholes && form != Form::texts;
 }
 
 }  // namespace
@@ -35,6 +35,9 @@ bool Entry::is_word() const {
     case Form::version:
     case Form::tema:
     case Form::fluid:
+    case Form::instant:
+    case Form::money:
+    case Form::energy_price:
       return true;
     default:
       return false;
@@ -43,6 +46,7 @@ bool Entry::is_word() const {
 
 units::Kind Entry::kind() const {
   if (dynamic) return units::Kind::viscosity;
+  if (relative) return units::Kind::ratio;
   if (field->form != Form::flow) return field->kind;
   return basis == units::FlowBasis::mass ? units::Kind::mass_flow : units::Kind::volume_flow;
 }

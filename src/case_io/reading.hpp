@@ -25,6 +25,8 @@ struct Entry {
   bool from_duty = false;  ///< a flow that a duty and an outlet give
   units::FlowBasis basis = units::FlowBasis::mass;
   double at_temperature = 0;  ///< [K] where a volume flow is measured, or a property holds
+  bool relative = false;      ///< an uncertainty that is a share of the reading
+  std::string currency{};     ///< of money: "EUR"; its amount is in `value`, for an energy of a joule
   bool dynamic = false;       ///< a viscosity that may be either: dynamic, not kinematic
 
   bool is_word() const;

@@ -20,6 +20,7 @@ ordered_json words_of(std::string_view words) {
     const auto bar = words.find('|');
     const std::string word(words.substr(0, bar));
     list.push_back(word);
+    if (word == "yes" || word == "no") list.push_back(word == "yes");  // older readers of YAML take them so
     if (const auto amount = units::number(word)) list.push_back(static_cast<int>(*amount));
     words = bar == std::string_view::npos ? std::string_view{} : words.substr(bar + 1);
   }
@@ -52,6 +53,8 @@ ordered_json leaf(const Field& field) {
       return {{"type", {"string", "number", "boolean"}}};
     case Form::number:
       return {{"type", {"number", "string"}}};
+    case Form::instant:
+      return {{"type", "string"}, {"pattern", "^[0-9]{4}-[0-9]{2}-[0-9]{2}"}};
     case Form::quantity:
       if (field.kind == units::Kind::ratio) return {{"type", {"string", "number"}}};
       [[fallthrough]];
@@ -92,6 +95,8 @@ ordered_json schema_of(const FieldTable& table, const Field& field) {
   ordered_json json;
   if (field.form == Form::block) {
     json = object_of(table, field.key);
+  } else if (field.form == Form::texts) {
+    json = {{"type", "array"}, {"items", leaf(*table.find(field.key + ".#"))}};
   } else if (field.form == Form::list) {
     json = {{"type", "array"}, {"items", object_of(table, field.key + ".#")}};
   } else if (field.form == Form::overlay) {

@@ -103,6 +103,12 @@ std::optional<double> flow_density(Reading& reading, const std::string& side, co
                         at_inlet || !is_gas ? *inlet.pressure : standard_atmosphere});
 }
 
+bool knows_density(const Reading& reading, const std::string& side) {
+  for (const char* family : {".fluid.constant", ".fluid.two_point"})
+    if (reading.has(side + family) && !reading.has(side + family + ".density")) return false;
+  return true;
+}
+
 namespace {
 
 std::optional<double> mass_flow(Reading& reading, const std::string& side, const Fluid& fluid,
@@ -111,7 +117,7 @@ std::optional<double> mass_flow(Reading& reading, const std::string& side, const
   if (found == reading.entries().end()) return {};
   if (found->second.from_duty) return 0.0;  // found once both streams are known
   if (reading.has("exchanger.area") && found->second.basis != FlowBasis::mass &&
-      !reading.has(side + ".fluid.constant.density") && reading.has(side + ".fluid.constant")) {
+      !knows_density(reading, side)) {
     reading.note(side + ".flow", "a volume, and the fluid's density is not given",
                  "a mass flow such as 80 kg/s", "give the mass flow, or the density");
     return {};
@@ -129,8 +135,10 @@ std::string name_of(const Reading& reading, const std::string& side, const Fluid
 /// Where films and drops are laws and the fluid is a heat capacity, nothing depends on the pressure.
 std::optional<double> pressure_of(const Reading& reading, const std::string& side) {
   const auto typed = si(reading.entries(), side + ".inlet.pressure");
-  const bool matters = !reading.has("exchanger.area") || !reading.has(side + ".fluid.constant") ||
-                       reading.has(side + ".inlet.pressure");
+  const bool is_heat_capacity =
+      reading.has(side + ".fluid.constant") || reading.has(side + ".fluid.two_point");
+  const bool matters =
+      !reading.has("exchanger.area") || !is_heat_capacity || reading.has(side + ".inlet.pressure");
   return matters ? typed : std::optional(standard_atmosphere);
 }
 

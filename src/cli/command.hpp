@@ -108,5 +108,6 @@ int run_new(const Call& call, Streams streams);
 int run_schema(const Call& call, Streams streams);
 int run_fluid(const Call& call, Streams streams);
 int run_ntu(const Call& call, Streams streams);
+int run_field(const Call& call, Streams streams);
 
 }  // namespace dutygauge::cli

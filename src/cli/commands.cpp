@@ -53,6 +53,18 @@ constexpr std::string_view compare_examples[] = {
     "dutygauge compare before.json after.yaml          what rate --json once wrote, against a case"};
 constexpr Option compare_options[] = {case_option, one_json_option, units_option, out_option, force_option};
 
+constexpr std::string_view field_examples[] = {
+    "dutygauge field cooler.yaml readings.csv                              a year of readings",
+    "dutygauge field --json cooler.yaml readings.csv --csv hours.csv       every row to a file, too"};
+constexpr Option field_options[] = {
+    one_json_option,
+    {"csv", "", "FILE", "what every row says as CSV in SI; - is standard output, instead of the page"},
+    {"html", "", "FILE", "a page with the trend for a browser, too; - is standard output, instead"},
+    case_option,
+    units_option,
+    out_option,
+    force_option};
+
 constexpr std::string_view explain_examples[] = {
     "dutygauge explain rating.mean_misleads    what a finding means, when it is made, what to do",
     "dutygauge explain spacing                 the keys that end so; a full key says how it is written"};
@@ -120,6 +132,14 @@ constexpr Command table[] = {
      run_reach},
     {"compare", "say what changed between two cases or results, going in and coming out", "[OPTION]... A B",
      compare_examples, compare_options, "", run_compare},
+    {"field", "say what a plant's readings tell of a unit in service", "[OPTION]... CASE READINGS...",
+     field_examples, field_options,
+     "READINGS are CSV files of flows and temperatures, in any order, or - for standard input. Headers such "
+     "as "
+     "hot_in[degC] are read as they stand; others are named in the case, under 'readings'. Each row is "
+     "screened, balanced and held against the clean unit: the page says what was read, what was left out and "
+     "why.",
+     run_field},
     {"fluid", "show a fluid's properties", "[OPTION]... SPEC", fluid_examples, fluid_options,
      "SPEC is what stands under 'fluid:' in a case, in YAML flow style; in quotes where it holds blanks. "
      "JSON "

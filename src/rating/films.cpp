@@ -6,6 +6,13 @@
 // where one is known.
 
 namespace dutygauge::rating {
+namespace {
+
+double whole(const Unit& unit, double flow_of_one_bank) {
+  return flow_of_one_bank * unit.problem->exchanger.shells_in_parallel;
+}
+
+}  // namespace
 
 double FilmLaw::at(double mass_flow, const fluids::State& bulk) const {
   double film = value * (1.0 + temperature_slope * (bulk.temperature - at_temperature));
@@ -30,7 +37,7 @@ tubeside::Film tube_film(const Unit& unit, const fluids::State& bulk, const flui
   if (problem.exchanger.tubes_drawn)
     film = tubeside::film(problem.exchanger.tube_side, unit.tube_flow, bulk, wall);
   if (law) {
-    film.coefficient = law->at(problem.tube_side.mass_flow, bulk);
+    film.coefficient = law->at(whole(unit, unit.tube_flow), bulk);
     film.nusselt = film.coefficient * problem.exchanger.tube_side.inside_diameter / bulk.conductivity;
   }
   film.coefficient *= problem.factors.tube_film;
@@ -43,7 +50,7 @@ shellside::Film shell_film(const Unit& unit, const fluids::State& bulk, const fl
   const auto& law = problem.shell_side.film_law;
   shellside::Film film;
   if (problem.exchanger.shell_drawn) film = shellside::film(unit.bundle, unit.shell_flow, bulk, wall);
-  if (law) film.coefficient = law->at(problem.shell_side.mass_flow, bulk);
+  if (law) film.coefficient = law->at(whole(unit, unit.shell_flow), bulk);
   film.coefficient *= problem.factors.shell_film;
   return film;
 }
@@ -53,7 +60,7 @@ tubeside::PressureDrop tube_drop(const Unit& unit, const Local& at) {
   const geometry::Exchanger& exchanger = problem.exchanger;
   const int in_series = exchanger.shells_in_series * (exchanger.shells_in_parallel / exchanger.tube_banks());
   if (const auto& law = problem.tube_side.drop_law)
-    return {.friction = problem.factors.tube_drop * law->at(problem.tube_side.mass_flow, at.tube_bulk)};
+    return {.friction = problem.factors.tube_drop * law->at(whole(unit, unit.tube_flow), at.tube_bulk)};
   if (!problem.exchanger.tubes_drawn) return {};
   return tubeside::pressure_drop(problem.exchanger.tube_side, unit.tube_flow, at.tube_bulk, at.tube_wall)
       .times(in_series * problem.factors.tube_drop);
@@ -63,7 +70,7 @@ shellside::PressureDrop shell_drop(const Unit& unit, const Local& at) {
   const Problem& problem = *unit.problem;
   const int in_series = problem.exchanger.shells_in_series;
   if (const auto& law = problem.shell_side.drop_law)
-    return {.crossflow = problem.factors.shell_drop * law->at(problem.shell_side.mass_flow, at.shell_bulk)};
+    return {.crossflow = problem.factors.shell_drop * law->at(whole(unit, unit.shell_flow), at.shell_bulk)};
   if (!problem.exchanger.shell_drawn) return {};
   return shellside::pressure_drop(unit.bundle, unit.shell_flow, at.shell_bulk, at.shell_wall)
       .times(in_series * problem.factors.shell_drop);

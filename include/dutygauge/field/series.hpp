@@ -25,7 +25,9 @@ inline constexpr std::size_t channel_count = 9;
 /// A quiet NaN is a missing value; it never leaves this module.
 using Channels = std::array<double, channel_count>;
 
-constexpr std::size_t index_of(Channel channel) { return static_cast<std::size_t>(channel); }
+constexpr std::size_t index_of(Channel channel) {
+  return static_cast<std::size_t>(channel);
+}
 
 /// One row of a plant's record.
 struct Reading {
@@ -44,9 +46,9 @@ using Instruments = std::array<Instrument, channel_count>;
 
 /// What one reading says of the exchanger.
 struct Apparent {
-  double hot_duty = 0, cold_duty = 0;  ///< [W]; NaN where a flow is missing
+  double hot_duty = 0, cold_duty = 0;  ///< [W]; NaN where a channel of that side is missing
   double duty = 0;                     ///< weighted by their uncertainties [W]
-  double closure = 0;                  ///< hot/cold - 1 [-]; NaN where a flow is missing
+  double closure = 0;                  ///< hot/cold - 1 [-]; NaN where a channel is missing
   double closure_uncertainty = 0;      ///< standard, of both kinds together [-]
   double u = 0, u_clean = 0;           ///< from the readings; of the films at their flows [W/m2.K]
   double fouling = 0;                  ///< 1/u - 1/u_clean, outside area [m2.K/W]
