@@ -157,7 +157,7 @@ TEST_CASE("case_io: what this version does not read is refused by name") {
             and_also(std::string(key) + ": {a: 1}"),
             {"x:49:1:", std::string(key) + ": not read yet", "leave the block out"}}});
   check({
-      {"plan", with("methods:", "plan: {next_stop: 2027-03-15}\nmethods:"), {"x:48:", "not read yet"}},
+      {"bidder", with("methods:", "bidder: Somebody\nmethods:"), {"x:48:", "not read yet"}},
   });
 }
 
