@@ -46,10 +46,10 @@ struct Stream {
   double mass_flow = 0;               ///< of the whole unit [kg/s]
   double inlet_temperature = 0;       ///< [K]
   double inlet_pressure = 0;          ///< [Pa] absolute
-  bool pressure_is_known = true;      ///< else it stands for one that nothing depends on
   double fouling_resistance = 0;      ///< on the surface it sits on [m2.K/W]
   std::optional<FilmLaw> film_law{};  ///< in place of the correlation
   std::optional<DropLaw> drop_law{};  ///< the same
+  bool pressure_is_known = true;      ///< else it stands for one that nothing depends on
 };
 
 /// How the outlets are found.

@@ -160,8 +160,8 @@ std::optional<MadeStream> stream_of(Reading& reading, const std::string& name) {
                                .mass_flow = *flow,
                                .inlet_temperature = *inlet.temperature,
                                .inlet_pressure = *inlet.pressure,
-                               .pressure_is_known = reading.has(side + ".inlet.pressure"),
-                               .fouling_resistance = *fouling},
+                               .fouling_resistance = *fouling,
+                               .pressure_is_known = reading.has(side + ".inlet.pressure")},
                     .assumed = std::move(made->assumed),
                     .findings = std::move(made->findings)};
 }
