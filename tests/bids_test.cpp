@@ -4,6 +4,7 @@
 #include <filesystem>
 
 #include "claims_support.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "dutygauge/rating/scaled.hpp"
 
 using namespace dutygauge;
@@ -105,8 +106,8 @@ TEST_CASE("bids: each single slip is blamed where it is, with its cause, and now
     }
     CHECK(keys_with(verdicts, Agreement::contradicts) == row.blamed);
     CHECK(keys_with(verdicts, Agreement::ask) == "");
-    CHECK_MESSAGE(of(verdicts, row.blamed).likely.find(row.cause) != std::string::npos,
-                  of(verdicts, row.blamed).likely);
+    const auto likely = units::spoken(of(verdicts, row.blamed).likely, units::System::metric);
+    CHECK_MESSAGE(likely.find(row.cause) != std::string::npos, likely);
   }
 }
 

@@ -2,6 +2,7 @@
 
 #include <algorithm>
 
+#include "dutygauge/units/mention.hpp"
 #include "parts.hpp"
 #include "wording.hpp"
 
@@ -126,7 +127,7 @@ FoundFouling found_fouling(Reading& reading, const Entry& entry) {
                   .kind = Kind::fouling_resistance,
                   .why = fmt::format("given without a spread: one standard deviation of {} is taken; write it "
                                      "as 0.0003 +- 0.00003 m2.K/W",
-                                     units::typed(found.sigma, Kind::fouling_resistance)),
+                                     units::mention(found.sigma, Kind::fouling_resistance)),
                   .look_in = "result of the readings"});
   return found;
 }

@@ -1,6 +1,7 @@
 #include <fmt/format.h>
 
 #include "dutygauge/rating/bypass.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "parts.hpp"
 #include "wording.hpp"
 
@@ -31,7 +32,8 @@ std::string move_limits(const Reading& reading, const std::string& key, Quantity
                         in_words(demand.limit, result.display)),
             "a share small enough for the limit of the service", "check the share and the limit"}});
     moved += fmt::format("; {} behind the mix asks for {} at the exchanger",
-                         in_words(demand.limit, result.display), in_words(*at_exchanger, result.display));
+                         units::mention(demand.limit, Kind::temperature),
+                         units::mention(*at_exchanger, Kind::temperature));
     demand.limit = *at_exchanger;
   }
   return moved;

@@ -1,6 +1,7 @@
 #include <fmt/format.h>
 
 #include "dutygauge/rating/scaled.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "parts.hpp"
 #include "wording.hpp"
 
@@ -19,10 +20,6 @@ Position position_of(const Document& document, const std::string& key) {
   return leaf == document.leaves.end() ? Position{1, 1} : leaf->second.value_at;
 }
 
-std::string in_metric(double value, Kind kind) {
-  return units::typed(value, kind, units::System::metric, 4);
-}
-
 std::string scaled_by(const char* exponent, const char* properties) {
   return fmt::format("; goes with flow^{} and {}", exponent, properties);
 }
@@ -37,8 +34,8 @@ void list(const rating::ScaledShell& shell, const Case& stated_case, Assumptions
                      .why = fmt::format(
                          "left of the sheet's u_dirty{}, {}, once tube film, wall and both foulings ({}) are "
                          "taken off{}",
-                         where, in_metric(stated_case.claims.u_dirty->value, Kind::film_coefficient),
-                         in_metric(r.sum() - r.shell_film, Kind::fouling_resistance),
+                         where, units::mention(stated_case.claims.u_dirty->value, Kind::film_coefficient),
+                         units::mention(r.sum() - r.shell_film, Kind::fouling_resistance),
                          scaled_by("0.6", "k^(2/3) cp^(1/3) mu^(-4/15)")),
                      .look_in = "bundle drawing, for the baffles"});
   if (!shell.drop) return;
@@ -46,8 +43,8 @@ void list(const rating::ScaledShell& shell, const Case& stated_case, Assumptions
                      .value = shell.drop->value,
                      .kind = Kind::pressure_difference,
                      .why = fmt::format("the sheet's shell_side_pressure_drop{}, {}{}", where,
-                                        in_metric(stated_case.claims.shell_side_pressure_drop->value,
-                                                  Kind::pressure_difference),
+                                        units::mention(stated_case.claims.shell_side_pressure_drop->value,
+                                                       Kind::pressure_difference),
                                         scaled_by("1.8", "mu^0.2/rho")),
                      .look_in = "bundle drawing, for the baffles"});
 }

@@ -28,9 +28,10 @@ std::string against(double other, double ours) {
   return fmt::format("{:.0f} % {}", 100.0 * std::abs(fraction), fraction < 0.0 ? "lower" : "higher");
 }
 
-// Which of two shell-side drops to believe, where they lie far apart.
-std::string drop_to_believe(double kern, double ours) {
+// Which of two shell-side drops to believe, where they lie far apart. A page of several cases has no room for it.
+std::string drop_to_believe(double kern, double ours, bool has_room) {
   constexpr double far_apart = 1.5;
+  if (!has_room) return "";
   if (kern <= far_apart * ours && ours <= far_apart * kern) return "";
   return " Believe the drop by Bell-Delaware: Kern's has no leakage and no by-pass in it.";
 }
@@ -169,7 +170,7 @@ void how_sure(Page& page, const Result& result) {
                           against(other.local.shell_film.coefficient, ours.local.shell_film.coefficient),
                           against(other.duty, ours.duty),
                           against(other.shell_drop.total(), ours.shell_drop.total()),
-                          drop_to_believe(other.shell_drop.total(), ours.shell_drop.total()),
+                          drop_to_believe(other.shell_drop.total(), ours.shell_drop.total(), result.cases.size() < 2),
                           same_answer(assessment)));
     name.clear();
   }
