@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <limits>
+#include <utility>
 
 namespace dutygauge::field {
 namespace {
@@ -134,16 +135,17 @@ std::optional<Channels> predict(const Plant& plant, const Channels& reading, dou
 /// covariance I + qq', q the shared error over the scatter.
 template <class Misses>
 void add_independent(const Misses& misses, Residuals& residuals) {
-  double square = 0.0, along = 0.0;
+  double square = 0.0, along = 0.0, owed = 0.0;
   for (const auto& miss : misses) {
     const double q = miss.shared / miss.scatter;
     square += q * q;
+    owed += std::pow(miss.owed / miss.scatter, 2);
     along += q * miss.value / miss.scatter;
   }
   const double share = square > 0.0 ? (1.0 - 1.0 / std::sqrt(1.0 + square)) * along / square : 0.0;
   for (const auto& miss : misses)
     residuals.values.push_back(miss.value / miss.scatter - share * miss.shared / miss.scatter);
-  residuals.log_determinant += std::log1p(square);
+  residuals.log_determinant += std::log1p(owed);
 }
 
 double Residuals::chi_square() const {
@@ -214,8 +216,8 @@ double Comparison::model_spread(const Observed& day, Channel channel) const {
   return std::sqrt(std::pow(day.shared[i], 2) + (variance_[i] + exponent * exponent) * scale * scale);
 }
 
-/// Standard uncertainty, relative, of what the parts' deposit does to a drop.
-double Comparison::deposit_spread(std::span<const Part> parts, Channel channel) const {
+/// What the parts' deposit does to a drop, as a logarithm.
+double Comparison::deposit_rise(std::span<const Part> parts, Channel channel) const {
   const DepositOnDrops& rule = plant_->deposit_on_drops;
   double change = 0.0;
   for (const Part& part : parts) {
@@ -227,23 +229,46 @@ double Comparison::deposit_spread(std::span<const Part> parts, Channel channel) 
                          deposit_on_tube_drop(rule, exchanger, fouling_before_));
     }
   }
-  return rule.spread * std::abs(change);
+  return change;
+}
+
+/// Whether a drop came out lower than it would be without what the parts' deposit does to it.
+bool Comparison::is_lower_than_clean(const std::vector<Channels>& expected, Channel channel,
+                                     double rise) const {
+  const std::size_t i = index_of(channel);
+  double above = 0.0;
+  for (std::size_t d = 0; d < after_.size(); ++d)
+    if (const double ratio = after_[d].value[i] / expected[d][i]; std::isfinite(ratio) && ratio > 0.0)
+      above += std::log(ratio) + rise;
+  return above < 0.0;
 }
 
 std::optional<Comparison::Misses> Comparison::misses(std::span<const Part> parts) const {
-  Misses result;
+  std::vector<Channels> expected;
   for (const Observed& day : after_) {
     const auto predicted = predict(*plant_, day.value, fouling_before_, parts);
     if (!predicted) return {};
-    const Channels expected = carried_over(*predicted);
-    for (std::size_t k = 0; k < observables.size(); ++k) {
-      const std::size_t i = index_of(observables[k]);
-      if (!std::isfinite(day.value[i]) || !std::isfinite(expected[i])) continue;
-      const double scale = is_drop(observables[k]) ? day.value[i] : 1.0;
-      const double shared =
-          std::hypot(model_spread(day, observables[k]), deposit_spread(parts, observables[k]) * scale);
-      result[k].push_back(
-          {day.value[i] - expected[i], std::max(day.scatter[i], std::sqrt(scatter_[i]) * scale), shared});
+    expected.push_back(carried_over(*predicted));
+  }
+  Misses result;
+  for (std::size_t k = 0; k < observables.size(); ++k) {
+    const Channel channel = observables[k];
+    const std::size_t i = index_of(channel);
+    double rise = deposit_rise(parts, channel), taken_off = 0.0;
+    // However little a deposit narrows, it opens nothing: no rise at the least, and that is sure. Having
+    // foretold one is still owed.
+    if (rise > 0.0 && plant_->deposit_on_drops.spread > 0.0 && is_lower_than_clean(expected, channel, rise))
+      taken_off = std::exchange(rise, 0.0);
+    for (std::size_t d = 0; d < after_.size(); ++d) {
+      const Observed& day = after_[d];
+      const double known = expected[d][i] * std::exp(-taken_off);
+      if (!std::isfinite(day.value[i]) || !std::isfinite(known)) continue;
+      const double scale = is_drop(channel) ? day.value[i] : 1.0;
+      const double model = model_spread(day, channel), spread = plant_->deposit_on_drops.spread * scale;
+      result[k].push_back({.value = day.value[i] - known,
+                           .scatter = std::max(day.scatter[i], std::sqrt(scatter_[i]) * scale),
+                           .shared = std::hypot(model, spread * std::abs(rise)),
+                           .owed = std::hypot(model, spread * (std::abs(rise) + taken_off))});
     }
   }
   return result;

@@ -54,12 +54,14 @@ class Comparison {
  private:
   struct Miss {
     double value, scatter, shared;  ///< observed - expected; standard uncertainties
+    double owed;                    ///< shared one of the prediction before it was bounded
   };
   using Misses = std::array<std::vector<Miss>, observables.size()>;
   std::optional<Misses> misses(std::span<const Part> parts) const;
   Channels carried_over(const Channels& predicted) const;
   double model_spread(const Observed& day, Channel channel) const;
-  double deposit_spread(std::span<const Part> parts, Channel channel) const;
+  double deposit_rise(std::span<const Part> parts, Channel channel) const;
+  bool is_lower_than_clean(const std::vector<Channels>& expected, Channel channel, double rise) const;
 
   const Plant* plant_;
   std::vector<Observed> after_;

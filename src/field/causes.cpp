@@ -7,6 +7,7 @@
 #include <cmath>
 #include <functional>
 #include <limits>
+#include <map>
 
 #include "ailing.hpp"
 #include "balance.hpp"
@@ -87,6 +88,17 @@ Part fitted(const Comparison& days, Part part) {
   return part;
 }
 
+/// What a part alone does to the last day's outlets [K].
+double effect_of(const Comparison& days, const Part& part) {
+  const auto with = days.last_day({&part, 1}), without = days.last_day({});
+  if (!with || !without) return 0.0;
+  double sum = 0.0;
+  for (const Channel channel : {Channel::hot_out, Channel::cold_out})
+    if (const double moved = (*with)[index_of(channel)] - (*without)[index_of(channel)]; std::isfinite(moved))
+      sum += std::abs(moved);
+  return sum;
+}
+
 Explanation explained(const Comparison& days, std::vector<Part> parts) {
   Explanation e;
   const auto residuals = days.residuals(parts), unchanged = days.residuals({});
@@ -96,6 +108,7 @@ Explanation explained(const Comparison& days, std::vector<Part> parts) {
   e.bic = e.chi_square + magnitudes * std::log(static_cast<double>(days.count()));
   if (residuals && unchanged) e.bic += residuals->log_determinant - unchanged->log_determinant;
   if (const auto shown = days.last_day(parts)) e.predicted = *shown;
+  for (const Part& part : parts) e.effects.push_back(effect_of(days, part));
   e.parts = std::move(parts);
   return e;
 }
@@ -314,16 +327,33 @@ std::string_view name_of(const Part& part, const Channels& seen) {
 }
 
 std::vector<NamedWeight> weights_of(const Ranking& ranking, const Channels& seen) {
-  std::vector<NamedWeight> weights;
-  for (const Explanation& e : ranking.pairs.empty() ? ranking.singles : ranking.pairs) {
-    std::string name(e.parts.empty() ? name_of({}, seen) : name_of(e.parts.front(), seen));
-    for (std::size_t i = 1; i < e.parts.size(); ++i) name += " and " + std::string(name_of(e.parts[i], seen));
-    const auto same = std::ranges::find(weights, name, &NamedWeight::name);
-    if (same == weights.end())
-      weights.push_back({std::move(name), e.weight});
-    else
-      same->weight += e.weight;
+  const auto& explanations = ranking.pairs.empty() ? ranking.singles : ranking.pairs;
+  const auto has_instrument = [](const Explanation& e) {
+    return std::ranges::any_of(e.parts, [](const Part& part) { return part.cause == Cause::instrument; });
+  };
+  // By kind of explanation: all with an instrument beside the same other cause are one.
+  std::map<std::string, int> alike;
+  const auto kind_of = [&](const Explanation& e) {
+    std::string kind;
+    for (const Part& part : e.parts) kind += std::string(name_of(part, seen)) + "|";
+    return kind;
+  };
+  for (const Explanation& e : explanations)
+    if (has_instrument(e)) ++alike[kind_of(e)];
+  std::map<std::string, double> by_name;
+  double sum = 0.0;
+  for (const Explanation& e : explanations) {
+    const double weight = has_instrument(e) ? e.weight / alike[kind_of(e)] : e.weight;
+    sum += weight;
+    if (e.parts.empty()) by_name["none"] += weight;
+    double effects = 0.0;
+    for (const double effect : e.effects) effects += effect;
+    for (std::size_t i = 0; i < e.parts.size(); ++i)
+      by_name[std::string(name_of(e.parts[i], seen))] +=
+          weight * (effects > 0.0 ? e.effects[i] / effects : 1.0 / static_cast<double>(e.parts.size()));
   }
+  std::vector<NamedWeight> weights;
+  for (const auto& [name, weight] : by_name) weights.push_back({name, weight / sum});
   std::ranges::stable_sort(weights, std::ranges::greater{}, &NamedWeight::weight);
   return weights;
 }

@@ -116,31 +116,91 @@ Days to_rank(const Evidence& evidence, const std::vector<Fault>& faults) {
   return days;
 }
 
-/// From the first week since the last cleaning to the last week. Where the fouling stepped up in between what
-/// comes at once may be the cause, too.
+/// The greatest rise of the fouling that came at once since the last cleaning.
+struct Rise {
+  double since = 0;  ///< begin of the cycle [d]
+  std::optional<Event> at_once{};
+};
+
+Rise rise_of(const Events& events) {
+  Rise rise;
+  for (const Event& event : events) {
+    if (event.what == What::cleaning) rise = {.since = event.at};
+    if (event.what == What::cleaning || event.what == What::sensor_shift) continue;
+    const double more = event.fouling.value_or(0.0);
+    if (more > 0.0 && (!rise.at_once || more > *rise.at_once->fouling)) rise.at_once = event;
+  }
+  return rise;
+}
+
+std::vector<WeighedCause> rank_between(const Plant& plant, const Instruments& instruments,
+                                       std::span<const Day> before, std::span<const Day> after, Onset onset) {
+  const auto ranking = rank_over_days(plant, instruments, before, after, onset);
+  std::vector<WeighedCause> causes;
+  if (ranking)
+    for (const NamedWeight& named : weights_of(*ranking, after.back().value))
+      causes.push_back({named.name, named.weight});
+  return causes;
+}
+
+/// Both lists in one, each weight times the list's share; the greatest first.
+std::vector<WeighedCause> mixed(const std::vector<WeighedCause>& first, double share,
+                                const std::vector<WeighedCause>& second) {
+  std::vector<WeighedCause> all;
+  const auto add = [&all](const std::vector<WeighedCause>& list, double part) {
+    for (const WeighedCause& cause : list) {
+      const auto same = std::ranges::find(all, cause.name, &WeighedCause::name);
+      if (same == all.end())
+        all.push_back({cause.name, part * cause.weight});
+      else
+        same->weight += part * cause.weight;
+    }
+  };
+  add(first, second.empty() ? 1.0 : share);
+  add(second, first.empty() ? 1.0 : 1.0 - share);
+  std::ranges::stable_sort(all, std::ranges::greater{}, &WeighedCause::weight);
+  return all;
+}
+
+double median_fouling(std::span<const Day> days) {
+  std::vector<double> values;
+  for (const Day& day : days)
+    if (std::isfinite(day.apparent.fouling)) values.push_back(day.apparent.fouling);
+  if (values.empty()) return 0.0;
+  const auto middle = values.begin() + static_cast<std::ptrdiff_t>(values.size() / 2);
+  std::ranges::nth_element(values, middle);
+  return *middle;
+}
+
+/// What grew over some days: from their first week to their last.
+std::vector<WeighedCause> rank_growth(const Plant& plant, const Instruments& instruments,
+                                      std::span<const Day> days) {
+  if (days.size() < 3 * week) return {};
+  return rank_between(plant, instruments, days.first(week), days.last(week), Onset::gradual);
+}
+
+/// Since the last cleaning. Where the fouling stepped up in between, what came at once and what grew are
+/// ranked by themselves, and weighed by their parts of the whole rise.
 std::vector<WeighedCause> rank(const Evidence& evidence, const Plant& plant, const Instruments& instruments,
                                const std::vector<Fault>& faults) {
   const Days days = to_rank(evidence, faults);
-  double since = 0.0;
-  Onset onset = Onset::gradual;
-  for (const Event& event :
-       events_of(evidence.hypotheses.front().days, evidence.drop_laws, evidence.logged, {})) {
-    if (event.what == What::cleaning) {
-      since = event.at;
-      onset = Onset::gradual;
-    } else if (event.fouling.value_or(0.0) > 0.0 && event.what != What::sensor_shift) {
-      onset = Onset::sudden;
-    }
-  }
-  const auto begin = std::ranges::find_if(days, [since](const Day& day) { return day.day > since; });
-  const std::span<const Day> cycle(begin, days.end());
+  const Rise rise = rise_of(
+      events_of(evidence.hypotheses.front().days, evidence.drop_laws, evidence.logged, {}));
+  const auto first_after = [&days](double at) {
+    return std::ranges::find_if(days, [at](const Day& day) { return day.day > at; });
+  };
+  const std::span<const Day> cycle(first_after(rise.since), days.end());
   if (cycle.size() < 3 * week) return {};
-  const auto ranking = rank_over_days(plant, instruments, cycle.first(week), cycle.last(week), onset);
-  std::vector<WeighedCause> causes;
-  if (ranking)
-    for (const NamedWeight& named : weights_of(*ranking, cycle.back().value))
-      causes.push_back({named.name, named.weight});
-  return causes;
+  if (!rise.at_once) return rank_growth(plant, instruments, cycle);
+  const std::span<const Day> after(first_after(rise.at_once->at), days.end());
+  const std::span<const Day> before = cycle.first(cycle.size() - after.size());
+  const auto growth = rank_growth(plant, instruments, before.size() > after.size() ? before : after);
+  if (before.size() < week || after.size() < week) return growth;
+  const auto step =
+      rank_between(plant, instruments, before.last(week), after.first(week), Onset::sudden);
+  const double whole = median_fouling(cycle.last(week)) - median_fouling(cycle.first(week));
+  const double share = whole > 0.0 ? std::clamp(*rise.at_once->fouling / whole, 0.0, 1.0) : 1.0;
+  return mixed(step, share, growth);
 }
 
 }  // namespace

@@ -40,6 +40,7 @@ struct Explanation {
   std::vector<Part> parts;  ///< none: nothing changed
   double chi_square = 0;    ///< of the observables' changes
   double p_value = 0;       ///< of a chi-square as large by chance
+  std::vector<double> effects{};  ///< of each part alone on the last day's outlets [K]
   double bic = 0;           ///< chi_square + parts ln(observables), and what a vaguer prediction owes
   double weight = 0;        ///< exp(-bic/2), normalised among explanations of as many parts or fewer
   Channels predicted{};     ///< what the last day would then show; NaN where the unit has no drop
@@ -107,7 +108,9 @@ std::optional<Ranking> rank_over_days(const Plant& plant, const Instruments& ins
 /// What a plant would call it. A by-pass has its own name only where that side's drop is read.
 std::string_view name_of(const Part& part, const Channels& observed);
 
-/// The weights of a ranking by name, the greatest first; a pair has both names. `observed` as above.
+/// The weights of a ranking by name, the greatest first. A pair's weight is divided by what each of
+/// the two does to the outlets. An instrument is one cause, however many there are: its weight is the mean of
+/// theirs. `observed` as above.
 struct NamedWeight {
   std::string name;
   double weight = 0;  ///< sum 1
