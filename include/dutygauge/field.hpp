@@ -59,6 +59,7 @@ struct Margin {
 /// Everything the analysis stands on.
 struct Evidence {
   std::int64_t start = 0;  ///< first reading [s] since 1970-01-01T00:00:00Z
+  int offset = 0;          ///< of the plant's standard time from UTC [s]: its dates are shown in it
   RowCounts rows = {};
   std::vector<Hypothesis> hypotheses;  ///< at least one; the first is the one used
   DropLaws drop_laws = {};
@@ -102,7 +103,7 @@ struct Outcome {
 
 /// Everything a page is made from.
 struct FieldResult {
-  std::int64_t start = 0;
+  std::int64_t start = 0;  ///< first reading, in the plant's standard time [s] since 1970-01-01
   RowCounts rows = {};
   Closure closure = {};
   Events events = {};

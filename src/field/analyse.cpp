@@ -216,7 +216,7 @@ Closure closure_of(const Days& days) {
 FieldResult analyse(const Evidence& evidence) {
   if (evidence.hypotheses.empty()) throw std::invalid_argument("field::analyse: no hypothesis");
   const Days& days = evidence.hypotheses.front().days;
-  FieldResult result{.start = evidence.start,
+  FieldResult result{.start = evidence.start + evidence.offset,
                      .rows = evidence.rows,
                      .closure = closure_of(evidence.as_read.empty() ? days : evidence.as_read),
                      .suspects = evidence.suspects,

@@ -34,6 +34,7 @@ DropLaws drop_laws_of(const rating::Problem& problem) {
 
 Evidence evidence_of(const rating::Problem& problem, const Mapping& mapping, const History& history) {
   Evidence evidence{.start = history.survey.start,
+                    .offset = mapping.clock.offset.value_or(0),
                     .rows = {.read = history.tally.rows, .used = history.tally[Drop::none]},
                     .hypotheses = {{"every instrument is right", history.days}},
                     .drop_laws = drop_laws_of(problem),
