@@ -6,6 +6,7 @@
 
 #include "dutygauge/uncertainty.hpp"
 #include "support.hpp"
+#include "water_cooler.hpp"
 
 // A rating tied to a reading, held against units whose truth is known: the same equations
 // with hidden factors on films and properties.
@@ -16,32 +17,8 @@ using namespace dutygauge::uncertainty;
 namespace {
 
 rating::Problem cooler() {
-  geometry::Description d;
-  d.shell_inside_diameter = 0.489;
-  d.tube_count = 208;
-  d.tube_passes = 2;
-  d.rear_head = 'S';
-  d.tube_outside_diameter = 0.01905;
-  d.tube_wall = 0.00211;
-  d.tube_length = 4.88;
-  d.tube_pitch = 0.0254;
-  d.tube_conductivity = 111.0;
-  d.baffle_spacing = 0.2;
-  rating::Problem problem;
+  auto problem = water_cooler(350.0);
   problem.methods.solution = rating::Solution::mean;
-  problem.exchanger = geometry::derive(d).value;
-  problem.shell_side = {.name = "warm water",
-                        .fluid = fluids::make_water(350.0, 5e5).fluid,
-                        .mass_flow = 20.0,
-                        .inlet_temperature = 350.0,
-                        .inlet_pressure = 5e5,
-                        .fouling_resistance = 2e-4};
-  problem.tube_side = {.name = "cooling water",
-                       .fluid = fluids::make_water(300.0, 5e5).fluid,
-                       .mass_flow = 25.0,
-                       .inlet_temperature = 300.0,
-                       .inlet_pressure = 5e5,
-                       .fouling_resistance = 3e-4};
   return problem;
 }
 

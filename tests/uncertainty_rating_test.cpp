@@ -8,6 +8,7 @@
 #include "dutygauge/uncertainty.hpp"
 #include "random_cases.hpp"
 #include "support.hpp"
+#include "water_cooler.hpp"
 
 // The spread of ratings; the mathematics alone is in uncertainty_test.cpp.
 
@@ -16,34 +17,8 @@ using namespace dutygauge::uncertainty;
 
 namespace {
 
-/// A water-to-water cooler that the methods rate without remark.
 rating::Problem cooler() {
-  geometry::Description d;
-  d.shell_inside_diameter = 0.489;
-  d.tube_count = 208;
-  d.tube_passes = 2;
-  d.rear_head = 'S';
-  d.tube_outside_diameter = 0.01905;
-  d.tube_wall = 0.00211;
-  d.tube_length = 4.88;
-  d.tube_pitch = 0.0254;
-  d.tube_conductivity = 111.0;
-  d.baffle_spacing = 0.2;
-  rating::Problem problem;
-  problem.exchanger = geometry::derive(d).value;
-  problem.shell_side = {.name = "warm water",
-                        .fluid = fluids::make_water(340.0, 5e5).fluid,
-                        .mass_flow = 20.0,
-                        .inlet_temperature = 340.0,
-                        .inlet_pressure = 5e5,
-                        .fouling_resistance = 2e-4};
-  problem.tube_side = {.name = "cooling water",
-                       .fluid = fluids::make_water(300.0, 5e5).fluid,
-                       .mass_flow = 25.0,
-                       .inlet_temperature = 300.0,
-                       .inlet_pressure = 5e5,
-                       .fouling_resistance = 3e-4};
-  return problem;
+  return water_cooler(340.0);
 }
 
 Predicate duty_above(double limit) {
