@@ -231,3 +231,20 @@ TEST_CASE("field: soon after a cleaning the growth before it is the best guess")
   CHECK((!alone->lost.late ||
          *alone->lost.late - *alone->lost.early > 5.0 * (*seen->lost.late - *seen->lost.early)));
 }
+
+TEST_CASE("field: what came at once does not lose the service before it came") {
+  // 1e-6 a day from zero; 1e-4 at day 150: 2e-4 is passed on that day, not on day 100, and 3e-4 on day 200.
+  Trend series;
+  for (int day = 0; day <= 300; ++day)
+    series.push_back({.time = double(day), .value = 1e-6 * day + (day > 150 ? 1e-4 : 0.0), .sigma = 1e-7});
+  const Events events = {{.at = 150.5, .what = What::plugging, .fouling = 1e-4}};
+  const auto cycles = cycles_of(series, events);
+  REQUIRE(cycles.size() == 1);
+  const auto at_step = forecast(cycles, {2e-4, 1e-9});
+  REQUIRE(at_step->lost.middle.has_value());
+  CHECK(*at_step->lost.middle == doctest::Approx(150.5).epsilon(0.001));
+  const auto later = forecast(cycles, {3e-4, 1e-9});
+  CHECK(*later->lost.middle == doctest::Approx(200.0).epsilon(0.01));
+  const auto before = forecast(cycles, {1e-4, 1e-9});
+  CHECK(*before->lost.middle == doctest::Approx(100.0).epsilon(0.01));
+}

@@ -5,6 +5,7 @@
 
 #include "case_io_good.hpp"
 #include "case_io_refused.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "dutygauge/explore.hpp"
 #include "dutygauge/rating/scaled.hpp"
 #include "support.hpp"
@@ -126,7 +127,7 @@ TEST_CASE("scaled: what the shell side is taken from is listed, and is no claim 
   };
   const auto law = assumed("streams.shell_side.film_law.value");
   REQUIRE(law != one.assumed.end());
-  CHECK(law->why.find("352 W/m2.K") != std::string::npos);
+  CHECK(units::spoken(law->why, units::System::metric).find("352 W/m2.K") != std::string::npos);
   CHECK(law->why.find("case design") != std::string::npos);
   CHECK(assumed("streams.shell_side.pressure_drop_law.value") != one.assumed.end());
   const auto result = explore::rate(document(no_baffles()), {});

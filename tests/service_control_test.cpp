@@ -5,6 +5,7 @@
 
 #include "case_io_good.hpp"
 #include "case_io_refused.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "dutygauge/explore.hpp"
 #include "support.hpp"
 
@@ -93,7 +94,8 @@ TEST_CASE("bypass: limits behind the mix ask more of the exchanger, by the lever
   CHECK(before.service.demands.front().limit == whole.service.demands.front().limit);
   const auto said = std::ranges::find(behind.findings, "case.bypass", &Finding::id);
   REQUIRE(said != behind.findings.end());
-  CHECK(said->text.find("58 degC behind the mix asks for 55.5 degC at the exchanger") != std::string::npos);
+  const auto text = units::spoken(said->text, units::System::metric);
+  CHECK(text.find("58.0 degC behind the mix asks for 55.5 degC at the exchanger") != std::string::npos);
 }
 
 TEST_CASE("bypass: a share that no outlet can make up for, or without its sensor, is refused") {

@@ -22,9 +22,19 @@ struct Surfaces {
 
 Surfaces surfaces_of(const Exchanger& exchanger) {
   const auto& d = exchanger.as_described;
+  if (!exchanger.tubes_drawn)
+    return {.effective = exchanger.area,
+            .gross = exchanger.area,
+            .gross_with_bends = exchanger.area,
+            .shells = exchanger.shells_in_series * exchanger.shells_in_parallel,
+            .banks = exchanger.shells_in_parallel,
+            .u_tubes = false,
+            .open_fraction = 1.0,
+            .sheet_slack = 0.0,
+            .inside = 1.0};
   const int shells = exchanger.shells_in_series * exchanger.shells_in_parallel;
   // The outside surface of one metre of tube, fins and all.
-  const double outside = exchanger.tubes_drawn && exchanger.tubes_open > 0
+  const double outside = exchanger.tubes_open > 0
                              ? exchanger.area_per_shell / (exchanger.effective_length * exchanger.tubes_open)
                              : std::numbers::pi * d.tube_outside_diameter;
   const double per_length = outside * d.tube_count * shells;
@@ -84,6 +94,8 @@ void check_areas(Sheet& sheet) {
       sheet.area.push_back(
           {sheet.claims.area_gross->value * divisor, sheet.claims.area_gross->rounding * divisor});
   }
+  if (!sheet.problem().exchanger.tubes_drawn)
+    return leave_unchecked(sheet, "area.gross", sheet.claims.area_gross, no_drawing);
   Check gross{.key = "area.gross",
               .computed = with_and_without_plugs(s, s.gross, 0.0, divisor),
               .ground = Ground::geometry,

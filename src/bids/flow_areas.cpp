@@ -163,6 +163,11 @@ void check_nozzles(Sheet& sheet) {
 }  // namespace
 
 void check_flow_areas(Sheet& sheet) {
+  if (!sheet.problem().exchanger.tubes_drawn) {
+    leave_unchecked(sheet, "tube_count", sheet.claims.tube_count, no_drawing);
+    leave_unchecked(sheet, "tube_side_velocity", sheet.claims.tube_side_velocity, no_drawing);
+    return check_nozzles(sheet);
+  }
   check_count(sheet);
   check_velocity(sheet);
   check_nozzles(sheet);

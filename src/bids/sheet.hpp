@@ -69,6 +69,9 @@ std::string likely_cause(const Stated& stated, const std::vector<Cause>& causes,
 /// Adds the verdict on a claim, if it is stated, and returns what later checks may rest on.
 Numbers judge(Sheet& sheet, const std::optional<Stated>& stated, const Check& check);
 
+/// Why a claim about dimensions cannot be checked of a unit that is known by its area.
+inline constexpr const char* no_drawing = "the unit is known by its area, not by its tubes";
+
 /// A verdict that says why there is none.
 void leave_unchecked(Sheet& sheet, std::string_view key, const std::optional<Stated>& stated,
                      std::string why);

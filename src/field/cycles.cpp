@@ -65,10 +65,12 @@ Cycles cycles_of(const Trend& fouling, const Events& events) {
     if (cycles.empty()) cycles.emplace_back();
     for (; next < breaks.size() && point.time > breaks[next].at; ++next) {
       if (cycles.back().points.empty()) continue;
-      if (breaks[next].cleaning)
+      if (breaks[next].cleaning) {
         cycles.emplace_back();
-      else
-        for (TrendPoint& before : cycles.back().points) before.value += breaks[next].jump;
+        continue;
+      }
+      cycles.back().lifts.push_back({breaks[next].at, breaks[next].jump});
+      for (TrendPoint& before : cycles.back().points) before.value += breaks[next].jump;
     }
     cycles.back().points.push_back(point);
   }
@@ -88,7 +90,7 @@ std::optional<Forecast> forecast(const Cycles& cycles, const Allowed& allowed,
   const bool lean = present.size() < enough_points && cycles.size() > 1;
   const Cycle* before = lean ? &cycles[cycles.size() - 2] : nullptr;
   if (!before || !before->choice || before->points.size() < 2 * enough_points)
-    return forecast(present, allowed, options);
+    return forecast(present, allowed, {options.courses, options.seed, cycles.back().lifts});
   auto result = forecast(borrowed(*before, present), allowed, options);
   if (!result) return {};
   result->as_of = present.back().time;

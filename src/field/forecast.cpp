@@ -127,6 +127,20 @@ std::optional<double> quantile(const std::vector<double>& sorted, double p) {
   return std::isfinite(sorted[rank]) ? std::optional(sorted[rank]) : std::nullopt;
 }
 
+/// The first day on which the law, less what came at once only later, reaches the level.
+std::optional<double> lost_with(const std::vector<Lift>& lifts, const Law& law, double allowed) {
+  double to_come = 0.0, since = -std::numeric_limits<double>::infinity();
+  for (const Lift& lift : lifts) to_come += lift.jump;
+  for (const Lift& lift : lifts) {
+    const auto day = law.reaches(allowed + to_come);
+    if (day && *day < lift.at) return std::max(*day, since);
+    since = lift.at;
+    to_come -= lift.jump;
+  }
+  const auto day = law.reaches(allowed);
+  return day ? std::optional(std::max(*day, since)) : std::nullopt;
+}
+
 LossDays days_of(const std::vector<Course>& courses) {
   std::vector<double> days;
   for (const Course& course : courses)
@@ -151,7 +165,7 @@ std::optional<Forecast> forecast(const Trend& cycle, const Allowed& allowed, con
   for (int i = 0; i < options.courses; ++i) {
     Course course{.law = draws.law(),
                   .allowed = allowed.fouling + allowed.standard_uncertainty * draws.normal()};
-    course.lost = course.law.reaches(course.allowed);
+    course.lost = lost_with(options.lifts, course.law, course.allowed);
     if (course.lost && *course.lost > result.as_of + horizon) course.lost.reset();
     result.courses.push_back(course);
   }

@@ -11,6 +11,7 @@ namespace dutygauge::field {
 /// The days between two resets, with the law they follow.
 struct Cycle {
   Trend points;
+  std::vector<Lift> lifts = {};  ///< steps taken out of the points
   std::optional<Choice> choice = {};  ///< empty: too short
   /// What was left of the deposit that the cycle before ended with [-]; empty for the first.
   std::optional<double> residue = {};

@@ -38,9 +38,16 @@ struct Forecast {
   double lost_by(double day) const;
 };
 
+/// A step that was taken out of a cycle: before it the fouling was lower by so much than its points say.
+struct Lift {
+  double at = 0;    ///< [d]
+  double jump = 0;  ///< [m2.K/W]
+};
+
 struct ForecastOptions {
   int courses = 4000;
   std::uint64_t seed = 20210101;  ///< the same courses every run
+  std::vector<Lift> lifts = {};   ///< by time, all within the cycle
 };
 
 /// The days on which the service is lost, from the readings of one cycle, cleaning to now.
