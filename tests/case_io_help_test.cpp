@@ -86,3 +86,17 @@ TEST_CASE("case_io: a key is explained by its full name, its end, or as not read
   CHECK(!explain("exchanger.tubes.lenght").has_value());
   CHECK(!explain("").has_value());
 }
+
+TEST_CASE("case_io: the starter case in US units is the metric one, to the digits it is typed with") {
+  const Case metric = built(dutygauge::case_io::starter_case());
+  const Case us = built(dutygauge::case_io::starter_case(dutygauge::units::System::us));
+  CHECK(us.display == dutygauge::units::System::us);
+  const auto text = dutygauge::case_io::starter_case(dutygauge::units::System::us);
+  CHECK(text.find("outside_diameter: 0.75 in") != std::string::npos);
+  CHECK(text.find("\"Fluid quantity, total\"") != std::string::npos);
+  const auto near = [](double a, double b) { return std::abs(a / b - 1.0) < 1e-3; };
+  CHECK(near(us.problem.shell_side.mass_flow, metric.problem.shell_side.mass_flow));
+  CHECK(near(us.problem.tube_side.mass_flow, metric.problem.tube_side.mass_flow));
+  CHECK(near(us.problem.exchanger.area, metric.problem.exchanger.area));
+  CHECK(near(us.problem.shell_side.inlet_temperature, metric.problem.shell_side.inlet_temperature));
+}

@@ -81,7 +81,8 @@ std::vector<double> numbers_of(const Case& a_case) {
                                  exchanger.shell_side.tube_to_baffle,
                                  exchanger.shell_side.bundle_to_shell,
                                  exchanger.shell_side.nozzle_out_area,
-                                 exchanger.wall_conductivity.at(320.0),
+                                 exchanger.tubes_drawn ? exchanger.wall_conductivity.at(320.0)
+                                                       : exchanger.layer_resistance,
                                  factors.tube_film,
                                  factors.shell_film};
   for (const auto* stream : {&shell, &tube}) {

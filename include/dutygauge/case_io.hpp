@@ -158,8 +158,9 @@ fluids::Made read_fluid_spec(std::string_view spec, double temperature, double p
 /// The JSON Schema (draft-07) of a case, from the field table.
 std::string schema();
 
-/// A commented starter case that rates as it stands, from the field table.
-std::string starter_case();
+/// A commented starter case that rates as it stands, from the field table: in metric or US
+/// units, with what sheets usually call a value.
+std::string starter_case(units::System system = units::System::metric);
 
 /// What a case key means: one entry of the field table, for `explain` and help.
 struct FieldHelp {

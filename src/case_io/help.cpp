@@ -1,6 +1,7 @@
 #include <fmt/format.h>
 
 #include <algorithm>
+#include <iterator>
 
 #include "dutygauge/case_io.hpp"
 #include "dutygauge/case_io/keys.hpp"
@@ -47,16 +48,88 @@ std::string_view without_overlay(std::string_view key) {
   return dot == std::string_view::npos ? key : key.substr(dot + 1);
 }
 
+/// What sheets usually call a value: words of the trade, common practice, no source.
+struct Caption {
+  std::string_view key, caption;
+};
+constexpr Caption captions[] = {
+    {"tag", "Item No."},
+    {"exchanger.tema", "Type"},
+    {"exchanger.shells.in_series", "Connected in series"},
+    {"exchanger.shells.in_parallel", "Connected in parallel"},
+    {"exchanger.shell.inside_diameter", "Shell I.D."},
+    {"exchanger.tubes.count", "Tube No."},
+    {"exchanger.tubes.passes", "No. of passes"},
+    {"exchanger.tubes.outside_diameter", "O.D."},
+    {"exchanger.tubes.wall", "Thk., avg. or min."},
+    {"exchanger.tubes.length", "Length"},
+    {"exchanger.tubes.pitch", "Pitch"},
+    {"exchanger.tubes.material", "Tube material"},
+    {"exchanger.baffles.cut", "Baffle cut, % of diameter or area"},
+    {"exchanger.baffles.spacing", "Spacing, c/c"},
+    {"exchanger.baffles.inlet_spacing", "Inlet spacing"},
+    {"exchanger.sealing_strip_pairs", "Seal strips"},
+    {"streams.shell_side.flow", "Fluid quantity, total"},
+    {"streams.tube_side.flow", "Fluid quantity, total"},
+    {"streams.shell_side.inlet.temperature", "Temperature, in"},
+    {"streams.tube_side.inlet.temperature", "Temperature, in"},
+    {"streams.shell_side.inlet.pressure", "Inlet pressure"},
+    {"streams.tube_side.inlet.pressure", "Inlet pressure"},
+    {"streams.shell_side.fouling", "Fouling resistance"},
+    {"streams.tube_side.fouling", "Fouling resistance"},
+    {"streams.shell_side.allowable_pressure_drop", "Pressure drop, allowable"},
+    {"streams.tube_side.allowable_pressure_drop", "Pressure drop, allowable"},
+    {"claims.duty", "Heat exchanged"},
+    {"claims.area.effective", "Surface, effective"},
+    {"claims.u_service", "Transfer rate, service"},
+    {"claims.u_dirty", "Transfer rate, dirty"},
+    {"claims.u_clean", "Transfer rate, clean"},
+    {"claims.mtd", "MTD, corrected"},
+};
+
+std::string help_of(const Field& field) {
+  const auto found = std::ranges::find(captions, std::string_view(field.key), &Caption::key);
+  if (found == std::end(captions)) return std::string(field.help);
+  return fmt::format("\"{}\": {}", found->caption, field.help);
+}
+
+/// The example in US units, where it is one quantity with a unit; else as it stands.
+std::string in_us_units(const Field& field) {
+  constexpr int digits = 4;
+  const std::string example(field.example);
+  const auto is_plain = [](const units::Value& value) { return !value.low && !value.standard_deviation; };
+  if (field.form == Form::flow) {
+    const auto read = units::read_flow(example);
+    const auto* flow = std::get_if<units::Flow>(&read);
+    if (!flow || !is_plain(flow->amount)) return example;
+    if (flow->basis == units::FlowBasis::mass)
+      return units::typed(flow->amount.si, units::Kind::mass_flow, units::System::us, digits);
+    return units::typed(flow->amount.si, units::Kind::volume_flow, units::System::us, digits) + " at inlet";
+  }
+  const bool is_length = field.form == Form::wall || field.form == Form::bore;
+  if ((field.form != Form::quantity && !is_length) || field.kind == units::Kind::ratio) return example;
+  const auto read = units::read(example, field.kind);
+  const auto* value = std::get_if<units::Value>(&read);
+  constexpr double fine = 1e-4;  // [m] roughness is given in micrometres everywhere
+  if (value && field.kind == units::Kind::length && value->si < fine) return example;
+  return value && is_plain(*value) ? units::typed(value->si, field.kind, units::System::us, digits) : example;
+}
+
+std::string example_in(const Field& field, units::System system) {
+  if (system != units::System::us) return std::string(field.example);
+  return field.key == "display" ? "us" : in_us_units(field);
+}
+
 /// "  key: example", a comment where it may be left out, and what it means.
-std::string starter_line(const Field& field, bool commented) {
+std::string starter_line(const Field& field, bool commented, units::System system) {
   std::string line = std::string(2 * depth(field.key), ' ');
   if (commented) line += "# ";
   const auto name = last_segment(field.key);
   line += fmt::format("{}:", name == "?" ? name_of_any(field.key) : name);
-  if (field.form != Form::block) line += " " + field.example;
+  if (field.form != Form::block) line += " " + example_in(field, system);
   if (field.help.empty()) return line + "\n";
   if (line.size() > comment_column) return line + "\n";
-  return fmt::format("{:<{}}# {}\n", line, comment_column, field.help);
+  return fmt::format("{:<{}}# {}\n", line, comment_column, help_of(field));
 }
 
 /// Whether the row, or a block above it, is a comment in the starter case.
@@ -115,13 +188,13 @@ std::string kind_of(const Field& field) {
 
 }  // namespace
 
-std::string starter_case() {
+std::string starter_case(units::System system) {
   std::string text =
       "# A case for dutygauge. Replace every value by your own; lines that begin with '#' may be left out.\n";
   const FieldTable& table = case_fields();
   for (const Field& field : table.all())
     if (!is_of_a_fluid(field.key) && !is_list_item(field.key) && !is_of_another_channel(field.key))
-      text += starter_line(field, is_commented(table, field.key));
+      text += starter_line(field, is_commented(table, field.key), system);
   return text;
 }
 

@@ -71,8 +71,10 @@ constexpr std::string_view explain_examples[] = {
 constexpr Option explain_options[] = {{"json", "", "", "one JSON object"}, out_option, force_option};
 
 constexpr std::string_view new_examples[] = {
-    "dutygauge new > cooler.yaml         a case to start from, with every key explained",
-    "dutygauge new | dutygauge rate -    it rates as it stands"};
+    "dutygauge new > cooler.yaml                   a case to start from, with every key explained",
+    "dutygauge new --from us | dutygauge rate -    for a sheet in US units; it rates as it stands"};
+constexpr Option new_options[] = {
+    {"from", "", "SYSTEM", "units of the sheet you copy from: metric or us"}, out_option, force_option};
 
 constexpr std::string_view schema_examples[] = {
     "dutygauge schema > case.schema.json     for an editor that checks YAML while you type",
@@ -157,7 +159,7 @@ constexpr Command table[] = {
      "ID is what stands in brackets behind a finding. Of a KEY or an ID the last part will do: where several "
      "end so, they are listed.",
      run_explain},
-    {"new", "print a commented case to start from", "[OPTION]...", new_examples, result_options, "", run_new},
+    {"new", "print a commented case to start from", "[OPTION]...", new_examples, new_options, "", run_new},
     {"schema", "print the JSON Schema of a case file", "[OPTION]...", schema_examples, result_options, "",
      run_schema}};
 

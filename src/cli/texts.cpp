@@ -17,7 +17,10 @@ void expect_no_argument(const Call& call) {
 
 int run_new(const Call& call, Streams streams) {
   expect_no_argument(call);
-  deliver(call, case_io::starter_case(), streams.out);
+  const std::string from = call.value("from").value_or("metric");
+  if (from != "us" && from != "metric")
+    throw CallError(fmt::format("--from: '{}' is no system of units; expected us or metric", from));
+  deliver(call, case_io::starter_case(from == "us" ? units::System::us : units::System::metric), streams.out);
   return done;
 }
 
