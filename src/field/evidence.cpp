@@ -43,9 +43,10 @@ Evidence evidence_of(const rating::Problem& problem, const Mapping& mapping, con
   for (std::size_t i = 1; i < drop_count; ++i)
     if (const auto count = history.tally.rows_by[i]; count > 0)
       evidence.rows.dropped.emplace_back(name(static_cast<Drop>(i)), count);
-  // What was done before the first reading leaves no step in it.
+  // What was done before the first reading leaves no step in it, nor what is still to come.
+  const double end = history.days.empty() ? 0.0 : history.days.back().day + 1.0;
   for (const Done& event : mapping.events)
-    if (event.when.to >= evidence.start)
+    if (event.when.to >= evidence.start && days_since(evidence.start, event.when.from) <= end)
       evidence.logged.push_back({days_since(evidence.start, event.when.from),
                                  days_since(evidence.start, event.when.to), what_of(event.kind)});
   return evidence;
