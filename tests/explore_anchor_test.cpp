@@ -149,3 +149,26 @@ TEST_CASE("anchor: a reading that cannot be is refused with its key") {
   CHECK(mistakes_of(with_anchor(neither, "flow: 560 gpm, ", "")).find("neither flow was read") !=
         std::string::npos);
 }
+
+TEST_CASE("anchor: a reading of next to no duty ends in a result, not in a fault of ours") {
+  const auto lean = support::read_text(SOURCE_DIR "/cases/lean-solvent-cooler.yaml");
+  const char* readings[] = {
+      "anchor: {shell_side: {flow: 108 t/h, inlet: 61 degC, outlet: 60 degC}, tube_side: {flow: 215 m3/h at inlet, "
+      "inlet: 28 degC, outlet: 28.5 degC}}\n",
+      "anchor: {shell_side: {flow: 1 t/h, inlet: 61 degC, outlet: 28.1 degC}, tube_side: {flow: 215 m3/h at inlet, "
+      "inlet: 28 degC, outlet: 28.1 degC}}\n"};
+  for (const char* reading : readings) {
+    CAPTURE(reading);
+    const auto result = explore::rate(case_io::read_document(lean + reading, "x"));
+    CHECK(nlohmann::json::parse(report::json(result))["verdict"].is_object());
+  }
+}
+
+TEST_CASE("anchor: a unit may do its service at design fouling and miss it today") {
+  const auto lean = support::read_text(SOURCE_DIR "/cases/lean-solvent-cooler.yaml");
+  const auto result = explore::rate(
+      case_io::read_document(lean + "anchor: {fouling: 0.00329 +- 0.00003 m2.K/W}\n", "x"));
+  CHECK(*result.assessment.verdict.met);
+  REQUIRE(result.cases[0].today.has_value());
+  CHECK_FALSE(*result.cases[0].today->assessment.verdict.met);
+}

@@ -236,7 +236,7 @@ TEST_CASE("field: a balance that never closed leaves either side right") {
 TEST_CASE("field: with a flow missing all year the rest still says how dirty it is") {
   const auto result = unit("A").with([](Day& day) { day.value[index_of(Channel::hot_flow)] = std::nan(""); });
   CHECK_FALSE(result.closure.median);
-  CHECK(result.closure.verdict == "not tested: a flow is missing");
+  CHECK(result.closure.verdict == "not tested: a flow or a temperature is missing");
   REQUIRE(result.used().fouling);
   CHECK(std::abs(result.used().fouling->now - 3.2636e-4) < 1.5e-5);
   CHECK(result.suspects.empty());

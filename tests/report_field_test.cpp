@@ -88,7 +88,7 @@ TEST_CASE("report: what is not known is absent from the page") {
   }
   CHECK(has(page, "no trend found; anything above"));
   CHECK(has(page, "per month would have been seen"));
-  CHECK(has(page, "heat balance not tested: a flow is missing"));
+  CHECK(has(page, "heat balance not tested: a flow or a temperature is missing"));
   const auto json = nlohmann::json::parse(report::json(about, result));
   CHECK(json["closure"]["median"].is_null());
   CHECK(json["lost_on"].is_null());

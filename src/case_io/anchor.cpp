@@ -143,6 +143,7 @@ std::optional<AnchorReading> anchor_of(Reading& reading, const rating::Stream& s
     found.taken = taken;
     return AnchorReading{std::move(found), {}};
   }
+  if (reading.has("anchor.fouling")) return {};  // at fault, and said so
   for (const char* side : {"anchor.shell_side", "anchor.tube_side"})
     if (!reading.has(side)) {
       reading.note("anchor", fmt::format("{} is missing", side),

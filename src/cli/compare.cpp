@@ -14,7 +14,7 @@ struct Given {
   std::optional<report::Compared> recorded;
 };
 
-Given given(const Call& call, const std::string& path) {
+Given given(const std::string& path) {
   const std::string text = case_io::read_text(path);
   try {
     if (auto recorded = report::recorded(text)) return {{}, std::move(recorded)};
@@ -22,7 +22,17 @@ Given given(const Call& call, const std::string& path) {
     throw case_io::InputError(
         path, {{{}, "", error.what(), "a case, or what rate --json wrote of one file", "rate it again"}});
   }
-  return {operating_case(call, case_io::read_document(text, path)), {}};
+  return {case_io::read_document(text, path), {}};
+}
+
+/// The case asked for; beside a recorded result the one that was recorded, where the file has it.
+void take_operating_case(const Call& call, Given& one, const Given& other) {
+  if (!one.document) return;
+  const auto names = case_io::operating_cases(*one.document);
+  const bool as_recorded = !call.value("case") && other.recorded &&
+                           std::ranges::find(names, other.recorded->operating_case) != names.end();
+  one.document = as_recorded ? case_io::overlaid(*one.document, other.recorded->operating_case)
+                             : operating_case(call, *one.document);
 }
 
 }  // namespace
@@ -32,7 +42,9 @@ int run_compare(const Call& call, Streams streams) {
     throw CallError("compare takes two cases or results: compare A.yaml B.yaml");
   if (std::ranges::count(call.arguments, "-") > 1)
     throw CallError("standard input (-) can be read only once");
-  const Given a = given(call, call.arguments.front()), b = given(call, call.arguments.back());
+  Given a = given(call.arguments.front()), b = given(call.arguments.back());
+  take_operating_case(call, a, b);
+  take_operating_case(call, b, a);
   const auto side = [](const Given& one) {
     return one.recorded ? *one.recorded : explore::compared(*one.document);
   };

@@ -1,4 +1,4 @@
-#include <fmt/core.h>
+#include <fmt/format.h>
 
 #include <algorithm>
 #include <nlohmann/json.hpp>
@@ -37,8 +37,25 @@ Json json_of(const FindingHelp& finding) {
           {"source", sources::citation(finding.source)}};
 }
 
+/// Names of the keys directly below a block.
+std::vector<std::string> below(std::string_view block) {
+  std::vector<std::string> names;
+  const std::string start = std::string(block) + ".";
+  for (const std::string& key : case_io::all_keys()) {
+    if (!key.starts_with(start)) continue;
+    std::string name = key.substr(start.size());
+    if (name.starts_with("#.")) name.erase(0, 2);
+    if (name != "#" && name.find('.') == std::string::npos) names.push_back(std::move(name));
+  }
+  return names;
+}
+
 std::string page_of(const case_io::FieldHelp& key) {
-  return fmt::format("{}\n  {}\n  kind: {}\n  expected: {}\n", key.key, key.help, key.kind, key.expected);
+  std::string page =
+      fmt::format("{}\n  {}\n  kind: {}\n  expected: {}\n", key.key, key.help, key.kind, key.expected);
+  if (const auto names = below(key.key); !names.empty())
+    page += wrapped("  keys: ", fmt::format("{}", fmt::join(names, ", ")));
+  return page;
 }
 
 Json json_of(const case_io::FieldHelp& key) {

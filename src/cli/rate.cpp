@@ -77,7 +77,8 @@ int status_of(const report::Result& result) {
   const bool broken =
       std::ranges::find(result.findings, Severity::must, &Finding::severity) != result.findings.end();
   const bool missed = std::ranges::any_of(result.cases, [](const report::RatedCase& one) {
-    return !one.design_fouling.verdict.met.value_or(true);
+    const bool today = !one.today || one.today->assessment.verdict.met.value_or(true);
+    return !one.design_fouling.verdict.met.value_or(true) || !today;
   });
   return broken || missed ? not_met : done;
 }

@@ -200,7 +200,8 @@ Closure closure_of(const Days& days) {
       values.push_back(day.apparent.closure);
       uncertainties.push_back(day.apparent.closure_uncertainty);
     }
-  if (values.empty()) return {.verdict = "not tested: a flow is missing"};
+  if (days.empty()) return {.verdict = "not tested: no day could be used"};
+  if (values.empty()) return {.verdict = "not tested: a flow or a temperature is missing"};
   // A median of many days has lost the scatter of the readings; their constant errors stay.
   const double median = median_of(values), both = median_of(uncertainties), scatter = 1.4826 * or_zero(moves);
   const double u = std::sqrt(std::max(both * both - scatter * scatter, 0.25 * both * both));

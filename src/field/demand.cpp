@@ -10,6 +10,7 @@
 namespace dutygauge::field {
 namespace {
 
+constexpr std::size_t fewest_days = 3;  // that say how dirty a unit is
 constexpr double seconds_per_day = 86400.0;
 constexpr double most_fouling = 0.05;  // [m2.K/W]: beyond it nothing is left to lose
 constexpr std::size_t table_points = 60;
@@ -67,7 +68,7 @@ std::optional<double> fouling_today(const Days& days) {
   std::vector<double> values;
   for (std::size_t i = days.size(); i > 0 && values.size() < latest_days; --i)
     if (std::isfinite(days[i - 1].apparent.fouling)) values.push_back(days[i - 1].apparent.fouling);
-  if (values.empty()) return {};
+  if (values.size() < fewest_days) return {};
   return std::max(median_of(values), 0.0);
 }
 
@@ -141,8 +142,12 @@ void ask(Evidence& evidence, const Plant& plant, const service::Service& service
     if (margin) evidence.margins.push_back({"at the service's conditions, as dirty as today", *margin});
   }
   Plan& plan = evidence.plan;
-  if (planned.next_stop)
-    plan.next_stop = static_cast<double>(*planned.next_stop - evidence.start) / seconds_per_day;
+  const Days& days = evidence.hypotheses.front().days;
+  if (planned.next_stop && !days.empty()) {
+    const double stop = static_cast<double>(*planned.next_stop - evidence.start) / seconds_per_day;
+    plan.stop_has_passed = stop <= days.back().day;
+    if (!plan.stop_has_passed) plan.next_stop = stop;
+  }
   if (planned.recovery_low || planned.recovery_high) {
     const double low = planned.recovery_low.value_or(*planned.recovery_high);
     plan.residue = 1.0 - 0.5 * (low + planned.recovery_high.value_or(low));

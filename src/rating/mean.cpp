@@ -58,8 +58,10 @@ Rating rate_mean(const Problem& problem) {
   bool walls_found = true;
   const auto residual = [&](double duty) {
     const Trial trial = follow(unit, duty, {});
-    walls_found = walls_found && trial.local.converged;
-    return excess(unit, trial, duty);
+    // Resistances may be drawn below zero; a sum below zero is no exchanger.
+    const bool is_one = trial.ntu > 0.0;
+    walls_found = walls_found && trial.local.converged && is_one;
+    return is_one ? excess(unit, trial, duty) : std::nan("");
   };
   std::optional<double> duty = numerics::find_root(residual, {0.0, limit.duty}, 1e-12 * limit.duty);
   // With a very large surface the root is the limit itself, to rounding.

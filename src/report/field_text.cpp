@@ -1,5 +1,7 @@
 #include <fmt/core.h>
 
+#include <utility>
+
 #include <algorithm>
 
 #include "field_words.hpp"
@@ -71,12 +73,14 @@ void options(Page& page, const FieldResult& result) {
 std::string text(const CaseName& about, const FieldResult& result, const field::History* record) {
   Page page;
   top(page, about, result);
+  bool with_options = false;
   for (const Fact& said : facts_of(about, result)) {
     if (said.name == "WHAT IT IS" || said.name == "EVENTS") hypotheses(page, about, result);
-    if (said.name == "DATA") options(page, result);
+    if (said.name == "DATA" && !std::exchange(with_options, true)) options(page, result);
     fact(page, said);
     if (said.name == "ANSWER") page.blank();
   }
+  if (!with_options) options(page, result);
   if (record != nullptr) {
     page.blank();
     const auto lines = record_lines(*record);

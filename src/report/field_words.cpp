@@ -237,6 +237,23 @@ std::vector<std::string> events_in_words(const CaseName& about, const FieldResul
   return lines;
 }
 
+/// What to look at where most rows could not be used; empty elsewhere.
+std::string most_dropped(const FieldResult& result) {
+  const auto& dropped = result.rows.dropped;
+  const auto most = std::ranges::max_element(dropped, {}, [](const auto& reason) { return reason.second; });
+  if (most == dropped.end() || 2 * most->second < result.rows.read) return "";
+  const std::string_view reason = most->first;
+  const std::string look =
+      reason == "backward"     ? "sort the file by time, the oldest row first"
+      : reason == "off_line"   ? "see that flows and inlets have their own columns and units: hot and cold are "
+                                 "by inlet temperature"
+      : reason == "impossible" ? "see that no column is swapped and every unit is right: these readings cannot "
+                                 "be of this unit"
+      : reason == "incomplete" ? "a column that is needed is mostly empty"
+                               : "look at the rows with --csv: the reason stands beside each";
+  return fmt::format("{} of {} rows are {}: {}", most->second, result.rows.read, reason, look);
+}
+
 std::vector<std::string> next_of(const FieldResult& result) {
   std::vector<std::string> tasks;
   for (const field::Doubt& suspect : result.suspects) {
@@ -244,8 +261,11 @@ std::vector<std::string> next_of(const FieldResult& result) {
     for (const field::Channel channel : suspect.channels) names.emplace_back(field::name(channel));
     if (!names.empty()) tasks.push_back(fmt::format("check {} against another instrument", listed(names)));
   }
+  if (result.plan.stop_has_passed)
+    tasks.emplace_back("state the next stop in plan: the one given lies before the last reading");
+  if (const auto most = most_dropped(result); !most.empty()) tasks.push_back(most);
   const auto& closure = result.closure;
-  if (!closure.median) tasks.emplace_back("read the missing flow for a day: it tests the heat balance");
+  if (!closure.median && !result.days.empty()) tasks.emplace_back("read the missing flow for a day: it tests the heat balance");
   if (!result.causes.empty() && result.causes.front().weight <= 0.9)
     tasks.emplace_back(reads_drops(result)
                            ? "look inside at the next stop: the readings do not part the causes"

@@ -44,6 +44,7 @@ Compared compared_of(const Json& result) {
                          .title = about.at("title").get<std::string>(),
                          .tag = about.at("tag").get<std::string>(),
                          .input_sha256 = result.at("input_sha256").get<std::string>()}};
+  one.operating_case = result.at("operating_case").get<std::string>();
   for (const Json& input : result.at("inputs")) {
     const std::string origin = input.at("origin").get<std::string>();
     one.inputs[input.at("key").get<std::string>()] =

@@ -57,6 +57,8 @@ std::optional<rating::Problem> tied(const Question& question, std::span<const do
     if (source.common && source.varied != Varied::film_with_flow) apply(source, deviates[i], there);
   }
   const auto duties = duties_of(there, reading, question.anchor->shell_weight);
+  // Within its error a small change of temperature may have been none: then no resistance explains it.
+  if (!(duties.weighted > 0.0)) return {};
   there = at_reading(std::move(there), reading, duties);
   there.methods.solution = rating::Solution::mean;
   const auto needed = rating::needed_for(there, duties.weighted).value;

@@ -45,6 +45,7 @@ struct Economics {
 struct Plan {
   double horizon = 365;                  ///< looked ahead [d]
   std::optional<double> next_stop = {};  ///< [d] since the first reading; later than now
+  bool stop_has_passed = false;          ///< the stop that was stated lies before the last reading
   double accepted_risk = 0.05;           ///< of losing the service [-]
   double residue = 0;                    ///< share of the deposit a cleaning leaves [-]
   std::optional<Economics> economics = {};

@@ -93,6 +93,7 @@ struct InputChange {
 /// One of two that are compared: a case as rated, or the recorded result of one.
 struct Compared {
   CaseName about;
+  std::string operating_case = {};                 ///< that it is; empty where not said
   std::map<std::string, std::string> inputs = {};  ///< as typed, by key
   std::optional<Running> running = {};
   std::string no_result = {}, verdict = {};
