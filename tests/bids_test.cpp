@@ -4,8 +4,8 @@
 #include <filesystem>
 
 #include "claims_support.hpp"
-#include "dutygauge/units/mention.hpp"
 #include "dutygauge/rating/scaled.hpp"
+#include "dutygauge/units/mention.hpp"
 
 using namespace dutygauge;
 using namespace claims_support;
@@ -258,10 +258,10 @@ TEST_CASE("bids: our own rating of every case, printed to three digits, is a sou
     // A drop our own is scaled from says nothing against itself.
     const bool scaled = rating::is_scaled(a_case.problem);
     const bool drawn = a_case.problem.exchanger.tubes_drawn;
-    CHECK(keys_with(verdicts, Agreement::not_checked) ==
-          (scaled   ? "shell_side_pressure_drop"
-           : !drawn ? "area.gross tube_side_velocity tube_count"
-                    : ""));
+    CHECK(keys_with(verdicts, Agreement::not_checked) == (scaled ? "shell_side_pressure_drop"
+                                                          : !drawn
+                                                              ? "area.gross tube_side_velocity tube_count"
+                                                              : ""));
   }
 }
 

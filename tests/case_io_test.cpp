@@ -65,26 +65,26 @@ Document rewritten(Document document, units::System system) {
 /// Numbers that hold a whole problem, in a fixed order.
 std::vector<double> numbers_of(const Case& a_case) {
   const auto& [exchanger, shell, tube, methods, factors] = a_case.problem;
-  std::vector<double> numbers = {exchanger.area,
-                                 exchanger.effective_length,
-                                 exchanger.tube_side.inside_diameter,
-                                 exchanger.tube_side.flow_area,
-                                 exchanger.tube_side.friction_length,
-                                 exchanger.tube_side.roughness,
-                                 exchanger.tube_side.nozzle_in_area,
-                                 exchanger.shell_side.inside_diameter,
-                                 exchanger.shell_side.pitch,
-                                 exchanger.shell_side.baffle_cut,
-                                 exchanger.shell_side.central_spacing,
-                                 exchanger.shell_side.inlet_spacing,
-                                 exchanger.shell_side.outlet_spacing,
-                                 exchanger.shell_side.tube_to_baffle,
-                                 exchanger.shell_side.bundle_to_shell,
-                                 exchanger.shell_side.nozzle_out_area,
-                                 exchanger.tubes_drawn ? exchanger.wall_conductivity.at(320.0)
-                                                       : exchanger.layer_resistance,
-                                 factors.tube_film,
-                                 factors.shell_film};
+  std::vector<double> numbers = {
+      exchanger.area,
+      exchanger.effective_length,
+      exchanger.tube_side.inside_diameter,
+      exchanger.tube_side.flow_area,
+      exchanger.tube_side.friction_length,
+      exchanger.tube_side.roughness,
+      exchanger.tube_side.nozzle_in_area,
+      exchanger.shell_side.inside_diameter,
+      exchanger.shell_side.pitch,
+      exchanger.shell_side.baffle_cut,
+      exchanger.shell_side.central_spacing,
+      exchanger.shell_side.inlet_spacing,
+      exchanger.shell_side.outlet_spacing,
+      exchanger.shell_side.tube_to_baffle,
+      exchanger.shell_side.bundle_to_shell,
+      exchanger.shell_side.nozzle_out_area,
+      exchanger.tubes_drawn ? exchanger.wall_conductivity.at(320.0) : exchanger.layer_resistance,
+      factors.tube_film,
+      factors.shell_film};
   for (const auto* stream : {&shell, &tube}) {
     const auto state = fluids::state(stream->fluid, stream->inlet_temperature, stream->inlet_pressure);
     for (const double value :

@@ -343,9 +343,9 @@ TEST_CASE("cli: explain knows findings, last parts of names, and what a misspell
   CHECK(Json::parse(run({"explain", "spacing", "--json"}).out)["names"].size() == 2);
   CHECK(run({"explain", "pitch"}).out == run({"explain", "exchanger.tubes.pitch"}).out);
   CHECK(Json::parse(run({"explain", "exchanger.tubes.pitch", "--json"}).out)["kind"] == "a length");
-  for (const auto& [typed, meant] : {std::pair("rating.mean_mislead", "rating.mean_misleads"),
-                                     std::pair("exchanger.tubes.lenght", "exchanger.tubes.length"),
-                                     std::pair("spaceing", "spacing")}) {
+  for (const auto& [typed, meant] :
+       {std::pair("rating.mean_mislead", "rating.mean_misleads"),
+        std::pair("exchanger.tubes.lenght", "exchanger.tubes.length"), std::pair("spaceing", "spacing")}) {
     const auto refused = run({"explain", typed});
     CHECK(refused.status == Status::input_at_fault);
     CHECK(contains(refused.err, std::string("did you mean '") + meant + "'?"));

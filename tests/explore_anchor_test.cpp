@@ -57,7 +57,8 @@ TEST_CASE("anchor: every operating case is rated as the unit is today") {
   for (const auto& [name, one] : json["operating_cases"].items()) {
     CAPTURE(name);
     const auto& today = one["states"]["today"];
-    CHECK(today["thermal"]["duty_W"].get<double>() < one["states"]["clean"]["thermal"]["duty_W"].get<double>());
+    CHECK(today["thermal"]["duty_W"].get<double>() <
+          one["states"]["clean"]["thermal"]["duty_W"].get<double>());
     CHECK(today["verdict"]["probability"].is_number());
     CHECK(today["change_since_reading"]["duty_W"]["sigma"].get<double>() > 0.0);
     // Tied to a reading, it is much surer than by the methods alone.
@@ -87,8 +88,7 @@ TEST_CASE("anchor: duties that do not agree leave no state today, and a must") {
 }
 
 TEST_CASE("anchor: instruments left out are assumed and listed") {
-  const auto document =
-      with_anchor(good_anchor, "  instruments: {temperature: 0.9 degF, flow: 3 %}\n", "");
+  const auto document = with_anchor(good_anchor, "  instruments: {temperature: 0.9 degF, flow: 3 %}\n", "");
   const auto result = explore::rate(document);
   for (const char* key : {"anchor.instruments.temperature", "anchor.instruments.flow"})
     CHECK(std::ranges::find(result.assumed, key, &Assumption::key) != result.assumed.end());
@@ -126,8 +126,10 @@ TEST_CASE("anchor: a reading that cannot be is refused with its key") {
     std::string what, by, expected;
   };
   const Row rows[] = {
-      {"outlet: 104.5 degF", "outlet: 170 degF", "anchor.shell_side.outlet: the hot stream was read to go from"},
-      {"outlet: 95.2 degF", "outlet: 80 degF", "anchor.tube_side.outlet: the cold stream was read to go from"},
+      {"outlet: 104.5 degF", "outlet: 170 degF",
+       "anchor.shell_side.outlet: the hot stream was read to go from"},
+      {"outlet: 95.2 degF", "outlet: 80 degF",
+       "anchor.tube_side.outlet: the cold stream was read to go from"},
       {"inlet: 164 degF", "inlet: 60 degF", "anchor.tube_side.inlet: the shell side was read to enter at"},
       {"outlet: 104.5 degF", "outlet: 82 degF", "anchor.shell_side.outlet: "},
       {"flow: 560 gpm", "flow: from_duty", "anchor.tube_side.flow: from_duty is no reading"},
@@ -153,9 +155,11 @@ TEST_CASE("anchor: a reading that cannot be is refused with its key") {
 TEST_CASE("anchor: a reading of next to no duty ends in a result, not in a fault of ours") {
   const auto lean = support::read_text(SOURCE_DIR "/cases/lean-solvent-cooler.yaml");
   const char* readings[] = {
-      "anchor: {shell_side: {flow: 108 t/h, inlet: 61 degC, outlet: 60 degC}, tube_side: {flow: 215 m3/h at inlet, "
+      "anchor: {shell_side: {flow: 108 t/h, inlet: 61 degC, outlet: 60 degC}, tube_side: {flow: 215 m3/h at "
+      "inlet, "
       "inlet: 28 degC, outlet: 28.5 degC}}\n",
-      "anchor: {shell_side: {flow: 1 t/h, inlet: 61 degC, outlet: 28.1 degC}, tube_side: {flow: 215 m3/h at inlet, "
+      "anchor: {shell_side: {flow: 1 t/h, inlet: 61 degC, outlet: 28.1 degC}, tube_side: {flow: 215 m3/h at "
+      "inlet, "
       "inlet: 28 degC, outlet: 28.1 degC}}\n"};
   for (const char* reading : readings) {
     CAPTURE(reading);
@@ -166,8 +170,8 @@ TEST_CASE("anchor: a reading of next to no duty ends in a result, not in a fault
 
 TEST_CASE("anchor: a unit may do its service at design fouling and miss it today") {
   const auto lean = support::read_text(SOURCE_DIR "/cases/lean-solvent-cooler.yaml");
-  const auto result = explore::rate(
-      case_io::read_document(lean + "anchor: {fouling: 0.00329 +- 0.00003 m2.K/W}\n", "x"));
+  const auto result =
+      explore::rate(case_io::read_document(lean + "anchor: {fouling: 0.00329 +- 0.00003 m2.K/W}\n", "x"));
   CHECK(*result.assessment.verdict.met);
   REQUIRE(result.cases[0].today.has_value());
   CHECK_FALSE(*result.cases[0].today->assessment.verdict.met);

@@ -165,3 +165,8 @@ TEST_CASE("cli: the status is 1 if any operating case misses, whichever governs"
   CHECK(cli::run({"rate", naphtha}, out, err) == cli::not_met);
   CHECK(err.str().empty());
 }
+
+TEST_CASE("explore: what is to be said of both streams alike is said once") {
+  const auto result = explore::rate(case_io::read_file(SOURCE_DIR "/cases/stacked-crude-preheater.yaml"));
+  CHECK(std::ranges::count(result.findings, "fluids.phase_not_checked", &Finding::id) == 1);
+}

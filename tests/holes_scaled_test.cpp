@@ -5,9 +5,9 @@
 
 #include "case_io_good.hpp"
 #include "case_io_refused.hpp"
-#include "dutygauge/units/mention.hpp"
 #include "dutygauge/explore.hpp"
 #include "dutygauge/rating/scaled.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "support.hpp"
 
 // A sheet without baffle data: film and drop on the tubes from what the sheet states of one case.

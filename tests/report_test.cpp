@@ -162,13 +162,15 @@ TEST_CASE("report: the JSON object is one line with its keys in a fixed order") 
   const std::string line = report::json(invented_result());
   CHECK(line.find('\n') == std::string::npos);
   const auto object = Json::parse(line);
-  CHECK(keys_of(object) ==
-        std::vector<std::string>{"dutygauge",      "schema_version", "input_sha256",    "case",
-                                 "operating_case", "present_since", "verdict",        "thermal",         "resistances_m2K_W",
-                                 "tube_side",      "shell_side",     "margins",         "spread", "control",
-                                 "solutions",      "states",         "operating_cases", "anchor", "assumed",
-                                 "levers",         "findings",       "claims",          "inputs",
-                                 "between_shells", "profile"});
+  CHECK(keys_of(object) == std::vector<std::string>{"dutygauge", "schema_version",  "input_sha256",
+                                                    "case",      "operating_case",  "present_since",
+                                                    "verdict",   "thermal",         "resistances_m2K_W",
+                                                    "tube_side", "shell_side",      "margins",
+                                                    "spread",    "control",         "solutions",
+                                                    "states",    "operating_cases", "anchor",
+                                                    "assumed",   "levers",          "findings",
+                                                    "claims",    "inputs",          "between_shells",
+                                                    "profile"});
   CHECK(keys_of(object["thermal"]) ==
         std::vector<std::string>{"duty_W", "duty_ntu_W", "duty_lmtd_W", "shell_side_outlet_degC",
                                  "tube_side_outlet_degC", "effectiveness", "ntu", "capacity_ratio", "lmtd_K",

@@ -5,8 +5,8 @@
 
 #include "case_io_good.hpp"
 #include "case_io_refused.hpp"
-#include "dutygauge/units/mention.hpp"
 #include "dutygauge/explore.hpp"
+#include "dutygauge/units/mention.hpp"
 #include "support.hpp"
 
 // A unit held at exactly its duty, and a stream of which a part goes round it.

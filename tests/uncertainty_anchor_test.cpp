@@ -78,7 +78,8 @@ TEST_CASE("anchor: a shell film 20 % off costs the absolute rating kelvins and t
     REQUIRE(anchored.value.has_value());
     const double true_outlet = rating::rate(with_more_flow(truth, 1.15)).outcome->shell_outlet;
     const double absolute = rating::rate(with_more_flow(unit, 1.15)).outcome->shell_outlet;
-    const double tied = rating::rate(today(*anchored.value, with_more_flow(unit, 1.15))).outcome->shell_outlet;
+    const double tied =
+        rating::rate(today(*anchored.value, with_more_flow(unit, 1.15))).outcome->shell_outlet;
     CHECK(std::abs(absolute - true_outlet) > 1.0);
     CHECK(std::abs(tied - true_outlet) < 0.3);
     const auto spread = propagate(question_of(*anchored.value, with_more_flow(unit, 1.15)));

@@ -11,10 +11,10 @@
 namespace dutygauge::case_io {
 namespace {
 
-using units::Kind;
 using uncertainty::ReadStream;
+using units::Kind;
 
-constexpr double usual_record = 0.2;  // of a fouling found from a year's readings, without a word on it
+constexpr double usual_record = 0.2;   // of a fouling found from a year's readings, without a word on it
 constexpr double least_spread = 1e-5;  // [m2.K/W]
 
 std::string in_words(double temperature) {
@@ -122,13 +122,14 @@ FoundFouling found_fouling(Reading& reading, const Entry& entry) {
     return found;
   }
   found.sigma = std::max(usual_record * entry.value.si, least_spread);
-  reading.assume({.key = key,
-                  .value = entry.value.si,
-                  .kind = Kind::fouling_resistance,
-                  .why = fmt::format("given without a spread: one standard deviation of {} is taken; write it "
-                                     "as 0.0003 +- 0.00003 m2.K/W",
-                                     units::mention(found.sigma, Kind::fouling_resistance)),
-                  .look_in = "result of the readings"});
+  reading.assume(
+      {.key = key,
+       .value = entry.value.si,
+       .kind = Kind::fouling_resistance,
+       .why = fmt::format("given without a spread: one standard deviation of {} is taken; write it "
+                          "as 0.0003 +- 0.00003 m2.K/W",
+                          units::mention(found.sigma, Kind::fouling_resistance)),
+       .look_in = "result of the readings"});
   return found;
 }
 

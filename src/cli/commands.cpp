@@ -136,11 +136,10 @@ constexpr Command table[] = {
      compare_examples, compare_options, "", run_compare},
     {"field", "say what a plant's readings tell of a unit in service", "[OPTION]... CASE READINGS...",
      field_examples, field_options,
-     "READINGS are CSV files of flows and temperatures, in any order but with the oldest row first in each, or - for standard input. Headers such "
-     "as "
-     "hot_in[degC] are read as they stand; others are named in the case, under 'readings'. Each row is "
-     "screened, balanced and held against the clean unit: the page says what was read, what was left out and "
-     "why.",
+     "READINGS are CSV files of flows and temperatures, in any order but with the oldest row first in each, "
+     "or - for standard input. Headers such as hot_in[degC] are read as they stand; others are named in the "
+     "case, under 'readings'. Each row is screened, balanced and held against the clean unit: the page says "
+     "what was read, what was left out and why.",
      run_field},
     {"fluid", "show a fluid's properties", "[OPTION]... SPEC", fluid_examples, fluid_options,
      "SPEC is what stands under 'fluid:' in a case, in YAML flow style; in quotes where it holds blanks. "

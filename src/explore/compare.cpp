@@ -46,7 +46,8 @@ std::optional<uncertainty::Spreads> spread_between(const service::Assessment& a,
 
 report::Compared compared(const case_io::Document& document, const Point& point) {
   const case_io::Case a_case = case_io::build(document);
-  report::Compared one{.about = name_of(a_case), .inputs = texts_of(document, a_case), .no_result = point.why};
+  report::Compared one{
+      .about = name_of(a_case), .inputs = texts_of(document, a_case), .no_result = point.why};
   if (!point.assessment) return one;
   one.running = running(*point.assessment);
   one.verdict = point.assessment->verdict.text;

@@ -11,8 +11,8 @@ namespace {
 uncertainty::Predicate meets(const service::Assessment& assessment) {
   if (assessment.service.demands.empty()) return {};
   return [&demands = assessment.service.demands](const rating::Outcome& sample) {
-    return std::ranges::all_of(
-        demands, [&](const service::Demand& demand) { return service::holds(demand, sample); });
+    return std::ranges::all_of(demands,
+                               [&](const service::Demand& demand) { return service::holds(demand, sample); });
   };
 }
 

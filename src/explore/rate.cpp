@@ -63,9 +63,17 @@ bool is_same(const Finding& a, const Finding& b) {
   return a.id == b.id && a.severity == b.severity && (a.severity == Severity::note || a.text == b.text);
 }
 
+/// The same to the letter: both streams are of one kind.
+bool is_repeated(const Finding& a, const Finding& b) {
+  return a.id == b.id && a.text == b.text && a.value == b.value && a.limit == b.limit;
+}
+
 /// Those of the governing case, and what only other cases have to say, with their names.
 Findings all_findings(const std::vector<report::RatedCase>& cases, std::size_t governing) {
-  Findings all = cases[governing].findings;
+  Findings all;
+  for (const Finding& finding : cases[governing].findings)
+    if (std::ranges::none_of(all, [&](const Finding& other) { return is_repeated(other, finding); }))
+      all.push_back(finding);
   for (const auto& one : cases) {
     const Findings so_far = all;
     for (Finding finding : one.findings) {
@@ -108,8 +116,9 @@ std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorR
                                             Findings& findings) {
   if (!read) return {};
   const auto* found = std::get_if<case_io::FoundFouling>(&read->reading);
-  auto anchor = found ? uncertainty::anchor_to_fouling(read->unit, found->value, found->sigma)
-                      : uncertainty::anchor_to(read->unit, std::get<uncertainty::SteadyReading>(read->reading));
+  auto anchor = found
+                    ? uncertainty::anchor_to_fouling(read->unit, found->value, found->sigma)
+                    : uncertainty::anchor_to(read->unit, std::get<uncertainty::SteadyReading>(read->reading));
   if (found && anchor.value) anchor.value->reading.taken = found->taken;
   findings.insert(findings.end(), anchor.findings.begin(), anchor.findings.end());
   if (!anchor.value) return {};
@@ -119,8 +128,8 @@ std::optional<report::Anchored> anchored_to(const std::optional<case_io::AnchorR
 }
 
 report::Today rated_today(const report::Anchored& anchored, const case_io::Case& a_case) {
-  report::Today today{.assessment = service::assess(uncertainty::today(anchored.anchor, a_case.problem),
-                                                    service_of(a_case))};
+  report::Today today{
+      .assessment = service::assess(uncertainty::today(anchored.anchor, a_case.problem), service_of(a_case))};
   if (a_case.control) today.held = held(today.assessment, *a_case.control);
   return today;
 }

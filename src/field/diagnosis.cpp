@@ -184,8 +184,8 @@ std::vector<WeighedCause> rank_growth(const Plant& plant, const Instruments& ins
 std::vector<WeighedCause> rank(const Evidence& evidence, const Plant& plant, const Instruments& instruments,
                                const std::vector<Fault>& faults) {
   const Days days = to_rank(evidence, faults);
-  const Rise rise = rise_of(
-      events_of(evidence.hypotheses.front().days, evidence.drop_laws, evidence.logged, {}));
+  const Rise rise =
+      rise_of(events_of(evidence.hypotheses.front().days, evidence.drop_laws, evidence.logged, {}));
   const auto first_after = [&days](double at) {
     return std::ranges::find_if(days, [at](const Day& day) { return day.day > at; });
   };
@@ -196,8 +196,7 @@ std::vector<WeighedCause> rank(const Evidence& evidence, const Plant& plant, con
   const std::span<const Day> before = cycle.first(cycle.size() - after.size());
   const auto growth = rank_growth(plant, instruments, before.size() > after.size() ? before : after);
   if (before.size() < week || after.size() < week) return growth;
-  const auto step =
-      rank_between(plant, instruments, before.last(week), after.first(week), Onset::sudden);
+  const auto step = rank_between(plant, instruments, before.last(week), after.first(week), Onset::sudden);
   const double whole = median_fouling(cycle.last(week)) - median_fouling(cycle.first(week));
   const double share = whole > 0.0 ? std::clamp(*rise.at_once->fouling / whole, 0.0, 1.0) : 1.0;
   return mixed(step, share, growth);

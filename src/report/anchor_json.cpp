@@ -51,9 +51,9 @@ Json anchor_json(const std::optional<Anchored>& anchored) {
           {"verdict", word_of(anchor.closing)},
           {"resistance_m2K_W", anchor.resistance},
           {"film_factor", anchor.film_factor},
-          {"film_side", !multiplied                                     ? Json(nullptr)
+          {"film_side", !multiplied                                    ? Json(nullptr)
                         : anchor.film_side == uncertainty::Side::shell ? Json("shell_side")
-                                                                        : Json("tube_side")},
+                                                                       : Json("tube_side")},
           {"shell_side_outlet_degC", celsius(anchored->outcome.shell_outlet)},
           {"tube_side_outlet_degC", celsius(anchored->outcome.tube_outlet)}};
 }

@@ -107,12 +107,14 @@ void going_in(Page& page, const Comparison& comparison) {
 
 void coming_out(Page& page, const Comparison& comparison) {
   const Figures figures(comparison.before.about.display);
-  std::vector<std::vector<std::string>> rows = {{"COMING OUT", "A", "B", "", "B less A", comparison.spread ? "in 9 cases of 10" : ""}};
+  std::vector<std::vector<std::string>> rows = {
+      {"COMING OUT", "A", "B", "", "B less A", comparison.spread ? "in 9 cases of 10" : ""}};
   for (const Line& line : lines(comparison))
     if (line.before || line.after)
       rows.push_back({"  " + line.label, shown(line.before, line.kind, figures),
                       shown(line.after, line.kind, figures),
-                      line.kind == Kind::ratio ? "%" : figures.unit(line.kind), difference(line, figures), how_sure(line, figures)});
+                      line.kind == Kind::ratio ? "%" : figures.unit(line.kind), difference(line, figures),
+                      how_sure(line, figures)});
   page.table(rows, {Align::left, Align::right, Align::right, Align::left, Align::left, Align::left}, 0);
 }
 

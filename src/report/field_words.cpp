@@ -244,11 +244,12 @@ std::string most_dropped(const FieldResult& result) {
   if (most == dropped.end() || 2 * most->second < result.rows.read) return "";
   const std::string_view reason = most->first;
   const std::string look =
-      reason == "backward"     ? "sort the file by time, the oldest row first"
-      : reason == "off_line"   ? "see that flows and inlets have their own columns and units: hot and cold are "
-                                 "by inlet temperature"
-      : reason == "impossible" ? "see that no column is swapped and every unit is right: these readings cannot "
-                                 "be of this unit"
+      reason == "backward"   ? "sort the file by time, the oldest row first"
+      : reason == "off_line" ? "see that flows and inlets have their own columns and units: hot and cold are "
+                               "by inlet temperature"
+      : reason == "impossible"
+          ? "see that no column is swapped and every unit is right: these readings cannot "
+            "be of this unit"
       : reason == "incomplete" ? "a column that is needed is mostly empty"
                                : "look at the rows with --csv: the reason stands beside each";
   return fmt::format("{} of {} rows are {}: {}", most->second, result.rows.read, reason, look);
@@ -265,7 +266,8 @@ std::vector<std::string> next_of(const FieldResult& result) {
     tasks.emplace_back("state the next stop in plan: the one given lies before the last reading");
   if (const auto most = most_dropped(result); !most.empty()) tasks.push_back(most);
   const auto& closure = result.closure;
-  if (!closure.median && !result.days.empty()) tasks.emplace_back("read the missing flow for a day: it tests the heat balance");
+  if (!closure.median && !result.days.empty())
+    tasks.emplace_back("read the missing flow for a day: it tests the heat balance");
   if (!result.causes.empty() && result.causes.front().weight <= 0.9)
     tasks.emplace_back(reads_drops(result)
                            ? "look inside at the next stop: the readings do not part the causes"

@@ -37,7 +37,8 @@ std::string where_it_comes_from(const uncertainty::Result& spread) {
   std::vector<std::string> parts;
   for (const auto& share : spread.shares)
     if (parts.size() < most_sources && share[Output::duty] >= least_share)
-      parts.push_back(fmt::format("{} ({:.0f} %)", share.name == share.key ? "the " + plain_words(share.key) : share.name,
+      parts.push_back(fmt::format("{} ({:.0f} %)",
+                                  share.name == share.key ? "the " + plain_words(share.key) : share.name,
                                   100.0 * share[Output::duty]));
   if (parts.empty()) return "";
   return fmt::format("What is open about the duty comes from {}.", listed(parts));
@@ -64,8 +65,8 @@ std::vector<std::string> spread_in_words(const Result& result) {
     parts.push_back(drop(result, Side::shell, outcome.shell_drop.total()));
     parts.push_back(drop(result, Side::tube, outcome.tube_drop.total()));
   }
-  std::vector<std::string> said{
-      fmt::format("{}n 9 cases of 10: {}.", result.anchored ? "At design fouling, i" : "I", fmt::join(parts, ", "))};
+  std::vector<std::string> said{fmt::format(
+      "{}n 9 cases of 10: {}.", result.anchored ? "At design fouling, i" : "I", fmt::join(parts, ", "))};
   for (std::string sentence : {where_it_comes_from(spread), failures(spread)})
     if (!sentence.empty()) said.push_back(std::move(sentence));
   return said;

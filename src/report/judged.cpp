@@ -28,7 +28,8 @@ std::string against(double other, double ours) {
   return fmt::format("{:.0f} % {}", 100.0 * std::abs(fraction), fraction < 0.0 ? "lower" : "higher");
 }
 
-// Which of two shell-side drops to believe, where they lie far apart. A page of several cases has no room for it.
+// Which of two shell-side drops to believe, where they lie far apart. A page of several cases has no room for
+// it.
 std::string drop_to_believe(double kern, double ours, bool has_room) {
   constexpr double far_apart = 1.5;
   if (!has_room) return "";
@@ -165,13 +166,13 @@ void how_sure(Page& page, const Result& result) {
     const auto& ours = *assessment.rating.outcome;
     const auto& other = *assessment.second_opinion;
     page.section(
-        name, fmt::format("Kern's method, a second one for the shell, puts the film {}, the duty {} and the "
-                          "pressure drop {}.{}{}",
-                          against(other.local.shell_film.coefficient, ours.local.shell_film.coefficient),
-                          against(other.duty, ours.duty),
-                          against(other.shell_drop.total(), ours.shell_drop.total()),
-                          drop_to_believe(other.shell_drop.total(), ours.shell_drop.total(), result.cases.size() < 2),
-                          same_answer(assessment)));
+        name, fmt::format(
+                  "Kern's method, a second one for the shell, puts the film {}, the duty {} and the "
+                  "pressure drop {}.{}{}",
+                  against(other.local.shell_film.coefficient, ours.local.shell_film.coefficient),
+                  against(other.duty, ours.duty), against(other.shell_drop.total(), ours.shell_drop.total()),
+                  drop_to_believe(other.shell_drop.total(), ours.shell_drop.total(), result.cases.size() < 2),
+                  same_answer(assessment)));
     name.clear();
   }
   if (remarks > 0)

@@ -52,13 +52,13 @@ std::string change_of(const RatedCase& one, const Result& result, Side side, con
   const auto& then = *one.today->assessment.rating.outcome;
   const auto& now = result.anchored->outcome;
   const bool shell = side == Side::shell;
-  const double change =
-      shell ? then.shell_outlet - now.shell_outlet : then.tube_outlet - now.tube_outlet;
+  const double change = shell ? then.shell_outlet - now.shell_outlet : then.tube_outlet - now.tube_outlet;
   const auto output = static_cast<std::size_t>(shell ? Output::shell_outlet : Output::tube_outlet);
   std::string text = figures.difference(change);
   if (one.today->change) {
     const auto& spread = (*one.today->change)[output];
-    text += fmt::format(" (+-{})", figures.number(0.5 * (spread.high - spread.low), Kind::temperature_difference, 2));
+    text += fmt::format(" (+-{})",
+                        figures.number(0.5 * (spread.high - spread.low), Kind::temperature_difference, 2));
   }
   std::string name = one.name;
   std::ranges::replace(name, '_', ' ');
@@ -78,8 +78,8 @@ std::vector<std::string> today_in_words(const Result& result) {
           ? fmt::format("Today is the unit with the fouling that its record{} has shown, {} +- {}.", when,
                         figures.number(anchored.anchor.resistance, Kind::fouling_resistance, 3),
                         figures.with_unit(anchored.anchor.resistance_sigma, Kind::fouling_resistance))
-          : fmt::format("Today is the unit of the reading{}: {}; {}.", when, in_words(anchored.anchor.closing),
-                        explained(anchored, figures))};
+          : fmt::format("Today is the unit of the reading{}: {}; {}.", when,
+                        in_words(anchored.anchor.closing), explained(anchored, figures))};
   const Side side = followed(result);
   const bool shell = side == Side::shell;
   std::vector<std::string> changes;
@@ -88,9 +88,9 @@ std::vector<std::string> today_in_words(const Result& result) {
       changes.push_back(change_of(one, result, side, figures));
   if (!changes.empty())
     said.push_back(fmt::format(
-        "From there to then, {} outlet, which was {}: {}.",
-        stream_name(result.assessment.problem, side),
-        figures.with_unit(shell ? anchored.outcome.shell_outlet : anchored.outcome.tube_outlet, Kind::temperature),
+        "From there to then, {} outlet, which was {}: {}.", stream_name(result.assessment.problem, side),
+        figures.with_unit(shell ? anchored.outcome.shell_outlet : anchored.outcome.tube_outlet,
+                          Kind::temperature),
         listed(changes)));
   return said;
 }

@@ -57,42 +57,46 @@ void weigh_duties(const std::vector<Source>& sources, Anchor& anchor) {
 
 Finding balance_fault(const Anchor& anchor) {
   const bool broken = anchor.closing == Closing::does_not_close;
-  return {.id = "anchor.heat_balance",
-          .severity = broken ? Severity::must : Severity::should,
-          .text = fmt::format(
-              "heat balance fault in the anchor: the shell side's duty {{value}} and the tube side's {{limit}} "
-              "as read differ by {:.1f} %, {} the {:.1f} % that the instruments and heat capacities explain; a "
-              "meter or a thermometer is wrong, {}",
-              100.0 * std::abs(anchor.closure), broken ? "more than three times" : "more than twice",
-              100.0 * anchor.closure_sigma,
-              broken ? "so nothing is said of today; find it before judging the exchanger by this reading"
-                     : "or the moment was not steady; take another reading before relying on it"),
-          .ground = Ground::arithmetic,
-          .value = anchor.shell_duty.value_or(0.0),
-          .limit = anchor.tube_duty.value_or(0.0),
-          .kind = units::Kind::power};
+  return {
+      .id = "anchor.heat_balance",
+      .severity = broken ? Severity::must : Severity::should,
+      .text = fmt::format(
+          "heat balance fault in the anchor: the shell side's duty {{value}} and the tube side's {{limit}} "
+          "as read differ by {:.1f} %, {} the {:.1f} % that the instruments and heat capacities explain; a "
+          "meter or a thermometer is wrong, {}",
+          100.0 * std::abs(anchor.closure), broken ? "more than three times" : "more than twice",
+          100.0 * anchor.closure_sigma,
+          broken ? "so nothing is said of today; find it before judging the exchanger by this reading"
+                 : "or the moment was not steady; take another reading before relying on it"),
+      .ground = Ground::arithmetic,
+      .value = anchor.shell_duty.value_or(0.0),
+      .limit = anchor.tube_duty.value_or(0.0),
+      .kind = units::Kind::power};
 }
 
 Finding unexplained(const Anchor& anchor) {
-  return {.id = "anchor.unexplained",
-          .severity = Severity::must,
-          .text = "the duty read for the anchor, {value}, is more than this unit could exchange between these two "
-                  "streams with any film: a flow, a temperature or the drawing is wrong; check the reading and "
-                  "which stream is in the tubes",
-          .ground = Ground::arithmetic,
-          .value = anchor.duty,
-          .limit = rating::duty_limit(anchor.at_reading).duty,
-          .kind = units::Kind::power};
+  return {
+      .id = "anchor.unexplained",
+      .severity = Severity::must,
+      .text =
+          "the duty read for the anchor, {value}, is more than this unit could exchange between these two "
+          "streams with any film: a flow, a temperature or the drawing is wrong; check the reading and "
+          "which stream is in the tubes",
+      .ground = Ground::arithmetic,
+      .value = anchor.duty,
+      .limit = rating::duty_limit(anchor.at_reading).duty,
+      .kind = units::Kind::power};
 }
 
 Finding better_than_clean(const Anchor& anchor) {
   const bool shell = anchor.film_side == Side::shell;
   return {.id = "anchor.better_than_clean",
           .severity = Severity::note,
-          .text = fmt::format("the unit exchanges more than these methods give it without any deposit: its {} film, "
-                              "the one known less well, is taken {{value}} times as high; what is on the tubes "
-                              "cannot be told from this reading",
-                              shell ? "shell-side" : "tube-side"),
+          .text = fmt::format(
+              "the unit exchanges more than these methods give it without any deposit: its {} film, "
+              "the one known less well, is taken {{value}} times as high; what is on the tubes "
+              "cannot be told from this reading",
+              shell ? "shell-side" : "tube-side"),
           .ground = Ground::method,
           .value = anchor.film_factor,
           .limit = 1.0};
@@ -168,7 +172,8 @@ rating::Problem at_reading(rating::Problem problem, const SteadyReading& reading
     stream.inlet_temperature = read.inlet;
     stream.mass_flow = read.mass_flow.value_or(1.0);
     if (read.mass_flow) return;
-    const double of_one_kilogram = std::abs(rating::duty_to_reach(stream, read.outlet, read.inlet > read.outlet));
+    const double of_one_kilogram =
+        std::abs(rating::duty_to_reach(stream, read.outlet, read.inlet > read.outlet));
     stream.mass_flow = duties.weighted / of_one_kilogram;
   };
   put(problem.shell_side, reading.shell_side);
@@ -187,7 +192,8 @@ rating::Problem with_resistance(rating::Problem problem, const rating::Problem& 
 }
 
 Checked<std::optional<Anchor>> anchor_to(const rating::Problem& unit, const SteadyReading& reading) {
-  Anchor anchor{.reading = reading, .unit = at_reading(unit, reading, duties_of(unit, reading, 0.5)), .at_reading = {}};
+  Anchor anchor{
+      .reading = reading, .unit = at_reading(unit, reading, duties_of(unit, reading, 0.5)), .at_reading = {}};
   anchor.at_reading = with_resistance(anchor.unit, unit, 0.0);
   const auto clean = rating::rate(anchor.at_reading);
   if (!clean.outcome) return {{}, {unexplained(anchor)}, {}};
@@ -207,8 +213,8 @@ Checked<std::optional<Anchor>> anchor_to_fouling(const rating::Problem& unit, do
     return {{},
             {{.id = "anchor.no_result",
               .severity = Severity::must,
-              .text = "with the fouling given for today, {value}, the unit has no result: " + rated.no_result +
-                      "; check the fouling, and the flows and inlets of the case",
+              .text = "with the fouling given for today, {value}, the unit has no result: " +
+                      rated.no_result + "; check the fouling, and the flows and inlets of the case",
               .ground = Ground::arithmetic,
               .value = fouling,
               .kind = units::Kind::fouling_resistance}},

@@ -26,7 +26,8 @@ rating::Outcome carried(const Question& question, const Sample& mean, Sample sam
                                         base.shell_side, by_means.shell_outlet, nominal.shell_outlet);
   outcome.tube_outlet = carried_outlet(outcome.tube_outlet, sample.problem.tube_side.inlet_temperature,
                                        base.tube_side, by_means.tube_outlet, nominal.tube_outlet);
-  outcome.shell_drop = outcome.shell_drop.times(ratio(nominal.shell_drop.total(), by_means.shell_drop.total()));
+  outcome.shell_drop =
+      outcome.shell_drop.times(ratio(nominal.shell_drop.total(), by_means.shell_drop.total()));
   outcome.tube_drop = outcome.tube_drop.times(ratio(nominal.tube_drop.total(), by_means.tube_drop.total()));
   return std::move(outcome);
 }
